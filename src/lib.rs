@@ -1,0 +1,9 @@
+//! Plans groundwater well fields before anything is drilled.
+//!
+//! Data goes one way: plan → outline → green → field → findings → layers.
+//! `site` is the problem as physics sees it and knows nothing of the others.
+
+pub mod field;
+pub mod green;
+pub mod outline;
+pub mod site;

@@ -1,0 +1,120 @@
+//! The shapes of aquifer that have a name, each in its own canonical frame.
+
+use std::ops::Range;
+
+/// What an edge of the outline does to the head.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Kind {
+    /// The head is given: a river. Images change sign.
+    FixedHead,
+    /// No flow crosses: a barrier. Images keep their sign.
+    NoFlow,
+}
+
+/// The edges across one axis of an axis-parallel outline.
+///
+/// The six products of two such sets are the plane, half-plane, strip,
+/// quarter-plane, half-strip and box.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Axis {
+    /// No edge: the coordinate runs from −∞ to ∞.
+    Open,
+    /// One edge at 0; the aquifer lies at positive coordinates.
+    OneEdge(Kind),
+    /// Edges at 0 and at `width_m`, the aquifer between them.
+    TwoEdges {
+        /// Distance of the two edges, metres, > 0.
+        width_m: f64,
+        /// The kinds of the edge at 0 and of the edge at `width_m`.
+        kinds: [Kind; 2],
+    },
+}
+
+/// A shape in its canonical frame (stretched, moved and turned).
+///
+/// The canonical sides come in this order: x low, x high, y low, y high, as
+/// far as they exist; a wedge has arg z = 0, then arg z = angle; a disk has
+/// its circle.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Shape {
+    /// An axis-parallel outline: the product of two mirror sets. An axis with
+    /// fewer edges never comes first: a half-plane has its edge on x = 0, a
+    /// half-strip its two long sides at x = 0 and x = width and its base on
+    /// y = 0.
+    Axes {
+        /// Edges across the x axis.
+        x: Axis,
+        /// Edges across the y axis.
+        y: Axis,
+    },
+    /// 0 < arg z < `angle_rad`, apex at 0.
+    Wedge {
+        /// Opening angle, 0 < angle ≤ 2π, not π/2 or π (those are products).
+        angle_rad: f64,
+        /// The kinds of the sides at arg z = 0 and arg z = angle.
+        kinds: [Kind; 2],
+    },
+    /// abs z < `radius_m` inside a river.
+    Disk {
+        /// Radius, metres.
+        radius_m: f64,
+    },
+    /// abs z > `radius_m` around a lake.
+    DiskExterior {
+        /// Radius, metres.
+        radius_m: f64,
+    },
+}
+
+impl Shape {
+    /// The name a person knows the shape by.
+    pub fn name(&self) -> &'static str {
+        use Axis::{OneEdge, Open, TwoEdges};
+        match self {
+            Self::Axes { x, y } => match (x, y) {
+                (Open, Open) => "open plane",
+                (OneEdge(_), Open) | (Open, OneEdge(_)) => "half-plane",
+                (TwoEdges { .. }, Open) | (Open, TwoEdges { .. }) => "strip",
+                (OneEdge(_), OneEdge(_)) => "quarter-plane",
+                (TwoEdges { .. }, OneEdge(_)) | (OneEdge(_), TwoEdges { .. }) => "half-strip",
+                (TwoEdges { .. }, TwoEdges { .. }) => "box",
+            },
+            Self::Wedge { .. } => "wedge",
+            Self::Disk { .. } => "disk",
+            Self::DiskExterior { .. } => "plane around a lake",
+        }
+    }
+
+    /// The kinds of the canonical sides, in their order.
+    pub fn side_kinds(&self) -> Vec<Kind> {
+        match *self {
+            Self::Axes { x, y } => [x, y]
+                .iter()
+                .flat_map(|axis| match *axis {
+                    Axis::Open => vec![],
+                    Axis::OneEdge(kind) => vec![kind],
+                    Axis::TwoEdges { kinds, .. } => kinds.to_vec(),
+                })
+                .collect(),
+            Self::Wedge { kinds, .. } => kinds.to_vec(),
+            Self::Disk { .. } | Self::DiskExterior { .. } => vec![Kind::FixedHead],
+        }
+    }
+}
+
+/// A piece of a canonical side that one river or barrier of the site makes.
+///
+/// Positions along a side: y on a side across x, x on a side across y, the
+/// distance from the apex on a wedge; on a circle the arc angle, 0 to 2π.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Piece {
+    /// Index in `Site::edges`.
+    pub edge: usize,
+    /// Where the piece lies along its side; infinite where the side is.
+    pub along: Range<f64>,
+    /// The stage at position a along the side is `stage_m + slope · a`;
+    /// zero on a barrier.
+    pub stage_m: f64,
+    /// Rise of the stage along the side; zero where it is constant.
+    pub stage_slope: f64,
+}
