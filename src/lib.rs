@@ -4,6 +4,7 @@
 //! `site` is the problem as physics sees it and knows nothing of the others.
 
 pub mod field;
+pub mod findings;
 pub mod green;
 pub mod outline;
 pub mod site;
