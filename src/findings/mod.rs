@@ -5,10 +5,13 @@ mod boundary;
 mod flag;
 mod interference;
 mod neighbour;
+mod oddities;
+mod outside;
 mod remedy;
 mod roof;
 mod rules;
 mod solution;
+mod survey;
 mod well;
 mod window;
 mod worst;
@@ -17,12 +20,38 @@ pub use boundary::{Balance, BoundaryFinding};
 pub use flag::{Cause, Flag, FlagCode, Measure, Who};
 pub use interference::InterferenceMatrix;
 pub use neighbour::{NeighbourFinding, Worst};
+pub use oddities::{Oddity, oddities};
+pub use outside::edge_between;
 pub use remedy::{CommonFactor, NewRate, Rates, Remedy};
 pub use roof::RoofFinding;
 pub use solution::Solution;
+pub use survey::{Drawdowns, Heads, Survey, SurveyError, SurveyedAquifer};
 pub use well::{WellFinding, interference_share};
 pub use window::{MOST_NODES, MapWindow};
 pub use worst::{Peak, RateChange, worst_point};
+
+/// What is found without a map: wells and neighbours.
+pub struct WellsAndNeighbours {
+    /// The wells, in the plan's order.
+    pub wells: Vec<WellFinding>,
+    /// Who draws down whom.
+    pub interference: InterferenceMatrix,
+    /// The neighbours, in the plan's order.
+    pub neighbours: Vec<NeighbourFinding>,
+}
+
+impl WellsAndNeighbours {
+    /// Works them out.
+    pub fn of(solution: &Solution) -> Self {
+        let neighbours = neighbour::all(solution);
+        let interference = InterferenceMatrix::of(solution, &neighbours);
+        Self {
+            wells: well::all(solution, &interference),
+            interference,
+            neighbours,
+        }
+    }
+}
 
 /// Everything found of a solved site.
 pub struct Findings {
@@ -43,15 +72,19 @@ pub struct Findings {
 }
 
 impl Findings {
-    /// Works everything out; `window` is the map on which the area below the
-    /// roof is measured.
-    pub fn of(solution: &Solution, window: &MapWindow) -> Self {
-        let neighbours = neighbour::all(solution);
-        let interference = InterferenceMatrix::of(solution, &neighbours);
-        let wells = well::all(solution, &interference);
+    /// Works everything out; the area below the roof is measured on the map.
+    ///
+    /// # Errors
+    /// Where the contour of the roof cannot be drawn.
+    pub fn of(solution: &Solution, survey: &Survey<'_>) -> Result<Self, SurveyError> {
+        let WellsAndNeighbours {
+            wells,
+            interference,
+            neighbours,
+        } = WellsAndNeighbours::of(solution);
         let boundaries = boundary::all(solution);
         let balances = boundary::balances(solution, &boundaries);
-        let roof = roof::finding(solution, &wells, window);
+        let roof = roof::finding(solution, &wells, survey)?;
         let flags = rules::flags(&rules::Judged {
             solution,
             matrix: &interference,
@@ -59,7 +92,7 @@ impl Findings {
             neighbours: &neighbours,
             roof: roof.as_ref(),
         });
-        Self {
+        Ok(Self {
             wells,
             interference,
             neighbours,
@@ -67,7 +100,7 @@ impl Findings {
             balances,
             roof,
             flags,
-        }
+        })
     }
 
     /// The flags of one well, most severe first.

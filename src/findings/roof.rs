@@ -9,7 +9,7 @@
 use super::flag::Cause;
 use super::neighbour::largest;
 use super::remedy::{CommonFactor, NewRate, Rates, Remedy, largest_factor};
-use super::{MapWindow, Solution, WellFinding};
+use super::{Solution, Survey, SurveyError, WellFinding};
 use crate::site::Point;
 
 /// Heads against the roof, on the map.
@@ -34,44 +34,48 @@ struct Low {
     drawdown_m: f64,
 }
 
+impl Low {
+    fn head_m(&self) -> f64 {
+        self.ambient_m - self.drawdown_m
+    }
+}
+
 /// Measures the map against the roof; none where the plan gives no roof.
 pub fn finding(
     solution: &Solution,
     wells: &[WellFinding],
-    window: &MapWindow,
-) -> Option<RoofFinding> {
-    let roof_m = solution.site().aquifer.roof?.si();
-    let lows = lows(solution, wells, window, roof_m);
+    survey: &Survey<'_>,
+) -> Result<Option<RoofFinding>, SurveyError> {
+    let Some(roof) = solution.site().aquifer.roof else {
+        return Ok(None);
+    };
+    let roof_m = roof.si();
+    let lows = lows(solution, wells, survey, roof_m);
     let lowest = lows.iter().reduce(|a, b| {
-        if b.ambient_m - b.drawdown_m < a.ambient_m - a.drawdown_m {
+        if b.head_m() < a.head_m() {
             b
         } else {
             a
         }
     });
-    let Some(lowest) = lowest else {
-        return Some(RoofFinding {
-            roof_m,
-            area_m2: 0.0,
-            lowest_m: None,
-            cause: None,
-            remedy: Remedy {
-                alone: None,
-                together: None,
-            },
-        });
-    };
-    let cause = cause_at(solution, lowest.at);
-    Some(RoofFinding {
-        roof_m,
-        area_m2: area_below(solution, window, roof_m),
-        lowest_m: Some(lowest.ambient_m - lowest.drawdown_m),
-        cause,
-        remedy: Remedy {
+    let cause = lowest.and_then(|lowest| cause_at(solution, lowest.at));
+    let remedy = match lowest {
+        Some(_) => Remedy {
             alone: cause.and_then(|cause| alone(solution, &lows, cause.well, roof_m)),
             together: together(&lows, roof_m),
         },
-    })
+        None => Remedy {
+            alone: None,
+            together: None,
+        },
+    };
+    Ok(Some(RoofFinding {
+        roof_m,
+        area_m2: survey.area_below_m2(roof_m)?,
+        lowest_m: lowest.map(Low::head_m),
+        cause,
+        remedy,
+    }))
 }
 
 /// The nodes and well rims below the roof.
@@ -100,12 +104,6 @@ fn lows(solution: &Solution, wells: &[WellFinding], window: &MapWindow, roof_m: 
             drawdown_m: finding.own_m + finding.interference_m,
         });
     on_grid.chain(at_wells).collect()
-}
-
-/// Area of the map where the head is below the roof, m².
-fn area_below(solution: &Solution, window: &MapWindow, roof_m: f64) -> f64 {
-    let _ = (solution, window, roof_m);
-    0.0
 }
 
 /// The well that draws a place down most.
