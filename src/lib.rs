@@ -3,6 +3,7 @@
 //! Data goes one way: plan → outline → green → field → findings → layers.
 //! `site` is the problem as physics sees it and knows nothing of the others.
 
+pub mod contours;
 pub mod field;
 pub mod green;
 pub mod outline;
