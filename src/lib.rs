@@ -6,4 +6,5 @@
 pub mod field;
 pub mod green;
 pub mod outline;
+pub mod plan;
 pub mod site;
