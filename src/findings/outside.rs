@@ -28,11 +28,11 @@ pub fn edge_between(solution: &Solution, place: Point) -> Option<usize> {
         max: around.max + grow,
     };
     let crossings = outline.sides.iter().enumerate().flat_map(|(side, pieces)| {
-        pieces.iter().filter_map(move |piece| {
-            let line = outline.piece_line(side, piece, around);
-            let along = line
+        pieces.iter().enumerate().filter_map(move |(index, piece)| {
+            let lines = outline.piece_lines(side, index, around);
+            let along = lines
                 .iter()
-                .zip(line.iter().skip(1))
+                .flat_map(|line| line.iter().zip(line.iter().skip(1)))
                 .filter_map(|(&a, &b)| crossing(from, place, a, b))
                 .min_by(f64::total_cmp)?;
             Some((along, piece.edge))

@@ -79,8 +79,10 @@ pub fn finding(
 }
 
 /// The nodes and well rims below the roof.
-fn lows(solution: &Solution, wells: &[WellFinding], window: &MapWindow, roof_m: f64) -> Vec<Low> {
-    let nodes: Vec<Point> = window.nodes().collect();
+fn lows(solution: &Solution, wells: &[WellFinding], survey: &Survey<'_>, roof_m: f64) -> Vec<Low> {
+    let window = &survey.window;
+    let may_be_low = survey.head_range_m().is_none_or(|[low_m, _]| low_m < roof_m);
+    let nodes: Vec<Point> = window.nodes().filter(|_| may_be_low).collect();
     let heads_m = solution.heads_m(&nodes);
     let on_grid = nodes
         .into_iter()

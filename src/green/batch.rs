@@ -59,9 +59,7 @@ pub(super) fn single<K: PairKernel>(kernel: &K, at: Complex64, pole: Complex64, 
         rim_m,
     };
     let prepared = kernel.prepare(&source, pole);
-    let terms = kernel
-        .terms(at, pole)
-        .map(|term| Lanes::splat(simd, term));
+    let terms = kernel.terms(at, pole).map(|term| Lanes::splat(simd, term));
     pair(kernel, &prepared, &terms).values()
 }
 
@@ -77,8 +75,8 @@ pub(super) fn superpose<K: PairKernel>(
     if sources.is_empty() {
         return;
     }
-    let reference = sources.iter().map(|source| source.pole).sum::<Complex64>()
-        / sources.len() as f64;
+    let reference =
+        sources.iter().map(|source| source.pole).sum::<Complex64>() / sources.len() as f64;
     let prepared = sources
         .iter()
         .map(|source| (source.strength_m, kernel.prepare(source, reference)))

@@ -92,25 +92,23 @@ impl PairKernel for Corner {
         let (a, b) = (x.constant(prepared.x), x.constant(prepared.y));
         let four = x.constant(4.0);
         let (dx, dy) = (x - a, y - b);
-        let well = dx.mul_add(dx, dy * dy);
-        let well = well.max(x.constant(prepared.rim_squared));
-        let across_x = four * a * x;
-        let river = |denominator, difference| Ratio {
+        let squared = dx.mul_add(dx, dy * dy);
+        let rim_squared = x.constant(prepared.rim_squared);
+        let well = |others, difference| Ratio::of_well(squared, rim_squared, others, difference);
+        let mirrored = |denominator, difference| Ratio {
             denominator,
             difference,
         };
-        if *self == Self::River {
-            return river(well, across_x);
-        }
-        let across_y = four * b * y;
-        let below = well + across_y;
+        let one = x.constant(1.0);
+        let (across_x, across_y) = (four * a * x, four * b * y);
         match self {
-            Self::River | Self::TwoRivers => {
-                river(well * (below + across_x), across_x * across_y)
+            Self::River => well(one, across_x),
+            Self::TwoRivers => well(squared + across_x + across_y, across_x * across_y),
+            Self::RiverThenBarrier => {
+                well(one, across_x).times(mirrored(squared + across_y, across_x))
             }
-            Self::RiverThenBarrier => river(well, across_x).times(river(below, across_x)),
             Self::BarrierThenRiver => {
-                river(well, across_y).times(river(well + across_x, across_y))
+                well(one, across_y).times(mirrored(squared + across_x, across_y))
             }
         }
     }

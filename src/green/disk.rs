@@ -69,11 +69,12 @@ impl PairKernel for Disk {
     fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
         let [x, y, power, ..] = *terms;
         let (dx, dy) = (x - x.constant(prepared.x), y - y.constant(prepared.y));
-        let well = dx.mul_add(dx, dy * dy);
-        Ratio {
-            denominator: well.max(x.constant(prepared.rim_squared)),
-            difference: power * power.constant(prepared.power),
-        }
+        Ratio::of_well(
+            dx.mul_add(dx, dy * dy),
+            x.constant(prepared.rim_squared),
+            x.constant(1.0),
+            power * power.constant(prepared.power),
+        )
     }
 }
 

@@ -24,9 +24,9 @@ use pulp::Simd;
 use super::batch::{self, PairKernel, TERMS};
 use super::lanes::Lanes;
 use super::logarithm::Ratio;
-use super::wedge::{argument_in_wedge, images_in_wedge};
+use super::wedge::images_in_wedge;
 use super::{Green, GreenError, Image, Source, mirrors};
-use crate::outline::{Axis, Kind, Shape};
+use crate::outline::{Axis, Kind, Shape, argument_in_wedge};
 
 /// More images than this for one well are refused.
 const MOST_IMAGES: f64 = 10_000.0;

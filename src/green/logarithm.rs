@@ -40,6 +40,23 @@ pub(super) struct Ratio<S: Simd> {
 }
 
 impl<S: Simd> Ratio<S> {
+    /// The ratio N/(w p) of a well: w is its (scaled) squared distance, which
+    /// counts as that of the rim inside the rim, while N stays as it is.
+    /// `difference` is N − w p for the true w; `others` is p.
+    #[inline(always)]
+    pub fn of_well(
+        squared: Lanes<S>,
+        rim_squared: Lanes<S>,
+        others: Lanes<S>,
+        difference: Lanes<S>,
+    ) -> Self {
+        let held = squared.max(rim_squared);
+        Self {
+            denominator: held * others,
+            difference: (squared - held).mul_add(others, difference),
+        }
+    }
+
     /// The product of two ratios.
     #[inline(always)]
     pub fn times(self, other: Self) -> Self {
@@ -59,8 +76,7 @@ impl<S: Simd> Ratio<S> {
         // (D + δ)d − D(d + ε) = δd − Dε
         Self {
             denominator: self.denominator * (other.denominator + other.difference),
-            difference: self.difference * other.denominator
-                - self.denominator * other.difference,
+            difference: self.difference * other.denominator - self.denominator * other.difference,
         }
     }
 
@@ -128,7 +144,7 @@ mod tests {
     fn the_logarithm_of_a_ratio_agrees_with_ln_1p_to_four_epsilon() {
         let mut worst: f64 = 0.0;
         for step in -1_000..6_000 {
-            let quotient = 1.013_f64.powi(step) ;
+            let quotient = 1.013_f64.powi(step);
             for denominator in [1.0, 1.999_999_9, 3.7e-9, 8.2e11] {
                 let difference = quotient * denominator;
                 let expected = (difference / denominator).ln_1p();
@@ -136,7 +152,10 @@ mod tests {
                 worst = worst.max(((got - expected) / expected).abs());
             }
         }
-        assert!(worst <= 4.0 * f64::EPSILON, "worst relative error {worst:e}");
+        assert!(
+            worst <= 4.0 * f64::EPSILON,
+            "worst relative error {worst:e}"
+        );
     }
 
     #[test]

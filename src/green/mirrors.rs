@@ -88,7 +88,11 @@ pub(super) fn period(width: f64, kinds: [Kind; 2]) -> f64 {
 
 /// The images in one period between two edges: two of like edges, four of
 /// unlike ones.
-pub(super) fn images_of_one_period(width: f64, kinds: [Kind; 2], coordinate: f64) -> Vec<AxisImage> {
+pub(super) fn images_of_one_period(
+    width: f64,
+    kinds: [Kind; 2],
+    coordinate: f64,
+) -> Vec<AxisImage> {
     let axis = Axis::TwoEdges {
         width_m: width,
         kinds,
@@ -110,9 +114,8 @@ pub(super) fn images_within(axis: Axis, coordinate: f64, reach: f64) -> Vec<Axis
         Axis::Open | Axis::OneEdge(_) => images_up_to(axis, coordinate, 1),
         Axis::TwoEdges { width_m, .. } => {
             let order = (reach / width_m).ceil() + 1.0;
-            let near = |image: &AxisImage| {
-                -image.position <= reach && image.position - width_m <= reach
-            };
+            let near =
+                |image: &AxisImage| -image.position <= reach && image.position - width_m <= reach;
             let images = images_up_to(axis, coordinate, order as u32);
             images.into_iter().filter(near).collect()
         }

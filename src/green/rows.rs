@@ -201,7 +201,16 @@ impl PairKernel for Rows {
         let (factor, power) = split_exponential(self.kappa * y);
         let sin = 2.0 * half_sin * half_cos;
         let cos = 1.0 - 2.0 * half_sin * half_sin;
-        [half_sin, half_cos, sin, cos, factor, factor.recip(), power, y]
+        [
+            half_sin,
+            half_cos,
+            sin,
+            cos,
+            factor,
+            factor.recip(),
+            power,
+            y,
+        ]
     }
 
     fn prepare(&self, source: &Source, reference: Complex64) -> Prepared {
@@ -245,10 +254,10 @@ impl PairKernel for Rows {
         let half_sine = half_sin * half_sin.constant(prepared.half_cos)
             - half_cos * half_cos.constant(prepared.half_sin);
         let (gap, twice) = (one - t, t + t);
-        let well = (twice + twice).mul_add(half_sine * half_sine, gap * gap);
-        let well = well.max(t * t.constant(prepared.rim));
+        let squared = (twice + twice).mul_add(half_sine * half_sine, gap * gap);
+        let rim_squared = t * t.constant(prepared.rim);
 
-        let own = self.row_ratio(t, &cosines, Some(well));
+        let own = self.row_ratio(t, &cosines, Some([squared, rim_squared]));
         prepared.mirrored.iter().fold(own, |product, row| {
             let t = fade(row, terms);
             let factor = self.row_ratio(t, &cosines, None);
@@ -301,37 +310,40 @@ impl Rows {
         }
     }
 
-    /// Images with sign −1 over images with sign +1 in one period of a row;
-    /// `well` is the factor of the well itself where it is the well's own row.
+    /// Images with sign −1 over images with sign +1 in one period of a row.
+    /// In the well's own row `well` holds the factor of the well itself, free
+    /// of cancellation, and that of its rim.
     #[inline(always)]
     fn row_ratio<S: Simd>(
         &self,
         t: Lanes<S>,
         cosines: &Cosines<S>,
-        well: Option<Lanes<S>>,
+        well: Option<[Lanes<S>; 2]>,
     ) -> Ratio<S> {
         use Kind::{FixedHead, NoFlow};
         let one = t.constant(1.0);
         let (sum, twice) = (t.mul_add(t, one), t + t);
-        let minus = well.unwrap_or_else(|| sum - twice * cosines.minus);
         let quadruple = || (twice + twice) * sum;
-        let ratio = |denominator, difference| Ratio {
-            denominator,
-            difference,
+        let ratio = |others: Lanes<S>, difference: Lanes<S>| match well {
+            Some([squared, rim_squared]) => {
+                Ratio::of_well(squared, rim_squared, others, difference)
+            }
+            None => Ratio {
+                denominator: (sum - twice * cosines.minus) * others,
+                difference,
+            },
         };
         match self.kinds {
-            [FixedHead, FixedHead] => ratio(minus, twice * cosines.difference),
+            [FixedHead, FixedHead] => ratio(one, twice * cosines.difference),
             [FixedHead, NoFlow] => ratio(
-                minus * twice.mul_add(cosines.plus, sum),
+                twice.mul_add(cosines.plus, sum),
                 quadruple() * cosines.difference,
             ),
-            [NoFlow, FixedHead] => ratio(
-                minus * (sum - twice * cosines.plus),
-                quadruple() * cosines.sum,
-            ),
+            [NoFlow, FixedHead] => ratio(sum - twice * cosines.plus, quadruple() * cosines.sum),
             [NoFlow, NoFlow] => {
-                let denominator = minus * (sum - twice * cosines.plus);
-                ratio(denominator, one - denominator)
+                let others = sum - twice * cosines.plus;
+                let minus = well.map_or(sum - twice * cosines.minus, |[squared, _]| squared);
+                ratio(others, one - minus * others)
             }
         }
     }

@@ -52,7 +52,10 @@ fn every_solvable_box_agrees_with_its_eigenfunction_series() {
         let got = green.value(point(), well());
         assert!((got - value).abs() < 2e-14, "{x:?} {y:?}: {got} {value}");
         let got = green.regular_part(well());
-        assert!((got - regular).abs() < 2e-14, "{x:?} {y:?}: {got} {regular}");
+        assert!(
+            (got - regular).abs() < 2e-14,
+            "{x:?} {y:?}: {got} {regular}"
+        );
     }
 }
 
@@ -76,13 +79,23 @@ fn cases() -> Vec<(Shape, Option<f64>)> {
             }
         }
     }
-    let edges = |axis: &Axis| Shape::Axes { x: *axis, y: Axis::Open }.side_kinds().len();
+    let edges = |axis: &Axis| {
+        Shape::Axes {
+            x: *axis,
+            y: Axis::Open,
+        }
+        .side_kinds()
+        .len()
+    };
     for x in &axes {
         for y in axes.iter().filter(|y| edges(y) <= edges(x)) {
             shapes.push(Shape::Axes { x: *x, y: *y });
         }
     }
-    shapes.into_iter().map(|shape| (shape, Some(40.0))).collect()
+    shapes
+        .into_iter()
+        .map(|shape| (shape, Some(40.0)))
+        .collect()
 }
 
 #[test]
@@ -90,7 +103,10 @@ fn green_functions_are_symmetric_and_positive() {
     for (shape, radius) in cases() {
         let green = of(&shape, radius).unwrap();
         let (there, back) = (green.value(point(), well()), green.value(well(), point()));
-        assert!((there - back).abs() < 1e-14 * (1.0 + there.abs()), "{shape:?}: {there} {back}");
+        assert!(
+            (there - back).abs() < 1e-14 * (1.0 + there.abs()),
+            "{shape:?}: {there} {back}"
+        );
         if shape.side_kinds().contains(&D) {
             assert!(there > 0.0, "{shape:?}: {there}");
         }
@@ -111,14 +127,22 @@ fn gradients_are_the_differences_of_values() {
             along(Complex64::new(0.0, STEP)),
         );
         let got = green.gradient(point(), well());
-        assert!((got - expected).norm() < 1e-9, "{shape:?}: {got} {expected}");
+        assert!(
+            (got - expected).norm() < 1e-9,
+            "{shape:?}: {got} {expected}"
+        );
     }
 }
 
 #[test]
 fn batches_agree_with_single_values_and_keep_the_rim() {
     let points: Vec<_> = (0..77)
-        .map(|step| Complex64::new(0.02 + 0.011 * f64::from(step), 0.3 + 0.007 * f64::from(step)))
+        .map(|step| {
+            Complex64::new(
+                0.02 + 0.011 * f64::from(step),
+                0.3 + 0.007 * f64::from(step),
+            )
+        })
         .chain([well(), well() + 1e-3])
         .collect();
     for (shape, radius) in cases() {
@@ -133,10 +157,12 @@ fn batches_agree_with_single_values_and_keep_the_rim() {
         green.superpose(&sources, &points, &mut sums);
         for (point, sum) in points.iter().zip(sums) {
             let expected = sources.iter().fold(1.0, |sum, source| {
-                sum + source.strength_m
-                    * green.value_outside_rim(*point, source.pole, source.rim_m)
+                sum + source.strength_m * green.value_outside_rim(*point, source.pole, source.rim_m)
             });
-            assert!((sum - expected).abs() < 1e-13, "{shape:?} {point}: {sum} {expected}");
+            assert!(
+                (sum - expected).abs() < 1e-13,
+                "{shape:?} {point}: {sum} {expected}"
+            );
         }
     }
 }
@@ -148,7 +174,14 @@ fn sides(shape: &Shape) -> Vec<Range<f64>> {
         Axis::OneEdge(_) => 0.0..f64::INFINITY,
         Axis::TwoEdges { width_m, .. } => 0.0..*width_m,
     };
-    let count = |axis: &Axis| Shape::Axes { x: *axis, y: Axis::Open }.side_kinds().len();
+    let count = |axis: &Axis| {
+        Shape::Axes {
+            x: *axis,
+            y: Axis::Open,
+        }
+        .side_kinds()
+        .len()
+    };
     match shape {
         Shape::Axes { x, y } => {
             let mut sides = vec![along(y); count(x)];
@@ -204,7 +237,10 @@ fn shares_are_the_integrals_of_the_gradient() {
                 })
                 .sum();
             let share = green.share(side, part, well());
-            assert!((share - flux).abs() < 1e-8, "{shape:?} {kind:?} {side}: {share} {flux}");
+            assert!(
+                (share - flux).abs() < 1e-8,
+                "{shape:?} {kind:?} {side}: {share} {flux}"
+            );
         }
     }
 }
@@ -215,14 +251,23 @@ fn place_of_side(shape: &Shape, side: usize) -> (Complex64, Complex64, Complex64
     match shape {
         Shape::Wedge { angle_rad, .. } => {
             let along = Complex64::from_polar(1.0, if side == 0 { 0.0 } else { *angle_rad });
-            (0.0 * one, along, if side == 0 { along * i } else { -along * i })
+            (
+                0.0 * one,
+                along,
+                if side == 0 { along * i } else { -along * i },
+            )
         }
         Shape::Axes { x, y } => {
             let width = |axis: &Axis| match axis {
                 Axis::TwoEdges { width_m, .. } => *width_m,
                 _ => 0.0,
             };
-            let across_x = Shape::Axes { x: *x, y: Axis::Open }.side_kinds().len();
+            let across_x = Shape::Axes {
+                x: *x,
+                y: Axis::Open,
+            }
+            .side_kinds()
+            .len();
             match side {
                 0 if across_x > 0 => (0.0 * one, i, one),
                 1 if across_x > 1 => (width(x) * one, i, -one),
@@ -252,7 +297,10 @@ fn a_wedge_that_divides_the_circle_equals_its_image_wells() {
             .map(|image| -image.sign * (z - image.at).norm().ln() / std::f64::consts::TAU)
             .sum();
         let got = wedge.value(z, pole);
-        assert!((got - sum).abs() < 1e-14, "{angle_degrees} {kinds:?}: {got} {sum}");
+        assert!(
+            (got - sum).abs() < 1e-14,
+            "{angle_degrees} {kinds:?}: {got} {sum}"
+        );
     }
 }
 
@@ -285,4 +333,18 @@ fn mirrored_places_of_nearest_images_carry_the_boundary_signs() {
         .map(|image| (image.at.re, image.sign, image.order))
         .collect();
     assert_eq!(seen, [(-3.0, -1.0, 1), (17.0, 1.0, 1), (23.0, -1.0, 2)]);
+}
+
+#[test]
+fn within_its_rim_a_well_keeps_the_value_of_its_regular_part() {
+    const RIM: f64 = 0.01;
+    for (shape, radius) in cases() {
+        let green = of(&shape, radius).unwrap();
+        let at_pole = green.value_outside_rim(well(), well(), RIM);
+        let expected = green.regular_part(well()) - RIM.ln() / std::f64::consts::TAU;
+        assert!(
+            (at_pole - expected).abs() < 1e-14,
+            "{shape:?}: {at_pole} {expected}"
+        );
+    }
 }

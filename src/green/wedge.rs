@@ -19,7 +19,7 @@ use super::lanes::Lanes;
 use super::logarithm::Ratio;
 use super::rows::{self, Rows};
 use super::{Green, Image, Source};
-use crate::outline::{Axis, Kind};
+use crate::outline::{Axis, Kind, argument_in_wedge};
 
 /// The Green's function of 0 < arg z < α.
 #[derive(Clone, Debug)]
@@ -42,26 +42,8 @@ impl Wedge {
 
     /// w = −i ln z; the apex, where w is infinite, counts as 1e-300 m away.
     fn map(&self, z: Complex64) -> Complex64 {
-        Complex64::new(
-            argument_in_wedge(z, self.angle),
-            -z.norm().max(1e-300).ln(),
-        )
+        Complex64::new(argument_in_wedge(z, self.angle), -z.norm().max(1e-300).ln())
     }
-}
-
-/// arg z between 0 and `angle`. Rounding may put a point of a side just
-/// outside; the cut lies opposite the wedge, so that it still counts as on it.
-pub(super) fn argument_in_wedge(z: Complex64, angle: f64) -> f64 {
-    let half = 0.5 * angle;
-    let from_axis = (z * Complex64::from_polar(1.0, -half)).arg();
-    let direct = z.arg();
-    let near_first_side = (0.0..0.25 * angle.min(PI)).contains(&direct);
-    let argument = if near_first_side {
-        direct
-    } else {
-        from_axis + half
-    };
-    argument.clamp(0.0, angle)
 }
 
 impl PairKernel for Wedge {

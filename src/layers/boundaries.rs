@@ -40,11 +40,13 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
     for field in planned.solution.fields() {
         let outline = field.outline();
         for (side, pieces) in outline.sides.iter().enumerate() {
-            for piece in pieces.iter().filter(|piece| piece.edge == edge) {
+            let of_edge = pieces.iter().enumerate().filter(|(_, piece)| piece.edge == edge);
+            for (piece, _) in of_edge {
                 bounds = true;
-                let line = outline.piece_line(side, piece, planned.survey.window.extent);
-                if line.len() > 1 && !lines.iter().any(|known| same_course(known, &line)) {
-                    lines.push(line);
+                for line in outline.piece_lines(side, piece, planned.survey.window.extent) {
+                    if line.len() > 1 && !lines.iter().any(|known| same_course(known, &line)) {
+                        lines.push(line);
+                    }
                 }
             }
         }
