@@ -111,7 +111,11 @@ impl<'a> Report<'a> {
         }
         line(
             "wells",
-            &format!("{}, and {} neighbours", site.wells.len(), site.neighbours.len()),
+            &format!(
+                "{}, and {} neighbours",
+                site.wells.len(),
+                site.neighbours.len()
+            ),
         );
         list(&mut text, "Notes", &self.notes);
         list(&mut text, "What looks wrong", &self.oddities);

@@ -8,8 +8,10 @@ use super::failure::Failure;
 
 /// What the command takes.
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example: completions for bash, for the current user:\n  \
-                        mirrorwell completions bash > ~/.local/share/bash-completion/completions/mirrorwell")]
+#[command(
+    after_help = "Example: completions for bash, for the current user:\n  \
+                        mirrorwell completions bash > ~/.local/share/bash-completion/completions/mirrorwell"
+)]
 pub struct Arguments {
     /// The shell to write for
     shell: Shell,

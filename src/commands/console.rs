@@ -96,6 +96,9 @@ mod tests {
         let lines = wrapped(&text, "- ", "  ");
         assert!(lines.lines().all(|line| line.chars().count() <= COLUMNS));
         assert!(lines.lines().skip(1).all(|line| line.starts_with("  word")));
-        assert_eq!(lines.split_whitespace().filter(|w| *w == "word").count(), 30);
+        assert_eq!(
+            lines.split_whitespace().filter(|w| *w == "word").count(),
+            30
+        );
     }
 }

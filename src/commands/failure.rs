@@ -36,7 +36,11 @@ impl Failure {
                 ExitCode::from(2)
             }
             Self::LimitsBroken(count) => {
-                let limits = if *count == 1 { "limit is" } else { "limits are" };
+                let limits = if *count == 1 {
+                    "limit is"
+                } else {
+                    "limits are"
+                };
                 console.error(&format!("{count} {limits} broken"));
                 ExitCode::from(3)
             }

@@ -13,10 +13,12 @@ use crate::site::{Place, Point};
 
 /// What the command takes.
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example: the head at one point of the built-in demo's grid:\n  \
+#[command(
+    after_help = "Example: the head at one point of the built-in demo's grid:\n  \
                         echo 412600,5361200 | mirrorwell heads --points -\n\n\
                         Columns in: x,y[,name], in the plan's coordinates; a heading is optional.\n\
-                        Columns out: name,x,y,head,drawdown,note, in the plan's units.")]
+                        Columns out: name,x,y,head,drawdown,note, in the plan's units."
+)]
 pub struct Arguments {
     #[command(flatten)]
     plan: PlanArgument,
@@ -49,7 +51,8 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
         Some(wanted) => at_points(&plan, &solution, wanted),
         None => at_wells_and_neighbours(&plan, &solution),
     };
-    let table = table(&rows, Units(plan.units)).map_err(|error| Failure::Refused(error.to_string()))?;
+    let table =
+        table(&rows, Units(plan.units)).map_err(|error| Failure::Refused(error.to_string()))?;
     Ok(console.result(&table)?)
 }
 
@@ -113,7 +116,10 @@ fn note_on(solution: &Solution, place: Point, head_m: f64) -> String {
         .iter()
         .find(|well| (well.at - place).norm() <= well.radius.si());
     within.map_or_else(String::new, |well| {
-        format!("within {}: the head at its rim, without well loss", well.name)
+        format!(
+            "within {}: the head at its rim, without well loss",
+            well.name
+        )
     })
 }
 

@@ -26,7 +26,9 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
             "Hydraulic conductivity, m/d: typical (lowest to highest published). A pumping\n\
              test at the site is worth more than any of these.\n\n",
         );
-        materials().iter().for_each(|material| text.push_str(&entry(material)));
+        materials()
+            .iter()
+            .for_each(|material| text.push_str(&entry(material)));
         text
     };
     Ok(console.result(&text)?)

@@ -34,8 +34,10 @@ use failure::Failure;
 /// or permitted; local permits and codes decide.
 #[derive(Debug, Parser)]
 #[command(name = "mirrorwell", version, max_term_width = 88)]
-#[command(after_help = "Example: plan the well field that is built in, then look at the files:\n  \
-                        mirrorwell run\n  ls mirrorwell-out")]
+#[command(
+    after_help = "Example: plan the well field that is built in, then look at the files:\n  \
+                        mirrorwell run\n  ls mirrorwell-out"
+)]
 pub struct Cli {
     #[command(subcommand)]
     command: Command,
@@ -90,7 +92,9 @@ fn dispatch(cli: &Cli, console: &Console) -> Result<(), Failure> {
         rayon::ThreadPoolBuilder::new()
             .num_threads(threads.get())
             .build_global()
-            .map_err(|error| Failure::Refused(format!("cannot start {threads} threads: {error}")))?;
+            .map_err(|error| {
+                Failure::Refused(format!("cannot start {threads} threads: {error}"))
+            })?;
     }
     match &cli.command {
         Command::Run(arguments) => run::run(arguments, console),

@@ -40,7 +40,10 @@ pub fn read(path: &Path) -> Result<Vec<NamedPoint>, Failure> {
     use std::io::Read;
     let mut bytes = Vec::new();
     let (name, read) = if path.as_os_str() == "-" {
-        ("standard input".into(), std::io::stdin().read_to_end(&mut bytes))
+        (
+            "standard input".into(),
+            std::io::stdin().read_to_end(&mut bytes),
+        )
     } else {
         let file = std::fs::File::open(path);
         (
@@ -106,11 +109,19 @@ fn first_line(record: &csv::StringRecord) -> Result<(Columns, bool), String> {
         y: 1,
         name: Some(2),
     };
-    let is_number = |index: usize| record.get(index).is_some_and(|cell| cell.parse::<f64>().is_ok());
+    let is_number = |index: usize| {
+        record
+            .get(index)
+            .is_some_and(|cell| cell.parse::<f64>().is_ok())
+    };
     if is_number(0) || is_number(1) {
         return Ok((plain, false));
     }
-    let find = |wanted: &str| record.iter().position(|cell| cell.eq_ignore_ascii_case(wanted));
+    let find = |wanted: &str| {
+        record
+            .iter()
+            .position(|cell| cell.eq_ignore_ascii_case(wanted))
+    };
     match (find("x"), find("y")) {
         (Some(x), Some(y)) => Ok((
             Columns {
@@ -209,7 +220,11 @@ mod tests {
     #[test]
     fn every_fault_is_reported_with_its_line() {
         let faults = parse("p.csv", b"x,y\n1,2\nnan,2\n1\n1,b\n").unwrap_err();
-        for fault in ["p.csv:3: x is \"nan\"", "p.csv:4: there is no y", "p.csv:5: y is \"b\""] {
+        for fault in [
+            "p.csv:3: x is \"nan\"",
+            "p.csv:4: there is no y",
+            "p.csv:5: y is \"b\"",
+        ] {
             assert!(faults.contains(fault), "{faults}");
         }
     }

@@ -13,8 +13,10 @@ use crate::plan::Plan;
 
 /// What the command takes.
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example: plan a well field, and stop a script when a limit is broken:\n  \
-                        mirrorwell run my-plan.toml --out my-layers --strict")]
+#[command(
+    after_help = "Example: plan a well field, and stop a script when a limit is broken:\n  \
+                        mirrorwell run my-plan.toml --out my-layers --strict"
+)]
 pub struct Arguments {
     #[command(flatten)]
     plan: PlanArgument,

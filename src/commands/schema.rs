@@ -5,8 +5,10 @@ use super::failure::Failure;
 
 /// What the command takes: nothing.
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example: let an editor check plans while they are written:\n  \
-                        mirrorwell schema > plan.schema.json")]
+#[command(
+    after_help = "Example: let an editor check plans while they are written:\n  \
+                        mirrorwell schema > plan.schema.json"
+)]
 pub struct Arguments {}
 
 /// Prints the JSON Schema of the plan file.

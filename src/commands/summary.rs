@@ -45,9 +45,17 @@ pub fn recognised(planned: &Planned<'_>) -> String {
             one_line(&field.outline().words(site)),
             field.method()
         );
-        text.push_str(&wrapped(&sentence, "", "  "));
+        text.push_str(&wrapped(&capitalised(&sentence), "", "  "));
     }
     text
+}
+
+/// A sentence with a capital at its head.
+fn capitalised(sentence: &str) -> String {
+    let mut characters = sentence.chars();
+    characters.next().map_or_else(String::new, |first| {
+        first.to_uppercase().chain(characters).collect()
+    })
 }
 
 /// What is pumped, injected and given by rivers.
@@ -121,7 +129,9 @@ fn wells(planned: &Planned<'_>) -> String {
     let words = Words::of(planned);
     let units = planned.units();
     let length = || units.length_ending().to_owned();
-    let heading = ["Well", "pumping", "level", "drawdown", "own", "others", "loss", "share"];
+    let heading = [
+        "Well", "pumping", "level", "drawdown", "own", "others", "loss", "share",
+    ];
     let unit_row = [
         String::new(),
         units.rate_words().to_owned(),
@@ -143,7 +153,9 @@ fn wells(planned: &Planned<'_>) -> String {
             words.bare_length(finding.own_m),
             words.bare_length(finding.interference_m),
             words.bare_length(finding.well_loss_m),
-            finding.interference_share.map_or_else(|| "–".into(), percent),
+            finding
+                .interference_share
+                .map_or_else(|| "–".into(), percent),
         ]);
     }
     printed(&table) + &left_out(wells.len(), MOST_ROWS, "wells.geojson")
@@ -172,7 +184,9 @@ fn neighbours(planned: &Planned<'_>) -> String {
                 || "outside".to_owned(),
                 |worst| words.bare_length(worst.drawdown_m),
             ),
-            finding.allowed_m.map_or_else(none, |m| words.bare_length(m)),
+            finding
+                .allowed_m
+                .map_or_else(none, |m| words.bare_length(m)),
             cause.as_ref().map_or_else(none, |(name, _)| name.clone()),
             cause.map_or_else(none, |(_, part_m)| words.bare_length(part_m)),
         ]);

@@ -51,13 +51,9 @@ pub fn finding(
     };
     let roof_m = roof.si();
     let lows = lows(solution, wells, survey, roof_m);
-    let lowest = lows.iter().reduce(|a, b| {
-        if b.head_m() < a.head_m() {
-            b
-        } else {
-            a
-        }
-    });
+    let lowest = lows
+        .iter()
+        .reduce(|a, b| if b.head_m() < a.head_m() { b } else { a });
     let cause = lowest.and_then(|lowest| cause_at(solution, lowest.at));
     let remedy = match lowest {
         Some(_) => Remedy {
@@ -81,7 +77,9 @@ pub fn finding(
 /// The nodes and well rims below the roof.
 fn lows(solution: &Solution, wells: &[WellFinding], survey: &Survey<'_>, roof_m: f64) -> Vec<Low> {
     let window = &survey.window;
-    let may_be_low = survey.head_range_m().is_none_or(|[low_m, _]| low_m < roof_m);
+    let may_be_low = survey
+        .head_range_m()
+        .is_none_or(|[low_m, _]| low_m < roof_m);
     let nodes: Vec<Point> = window.nodes().filter(|_| may_be_low).collect();
     let heads_m = solution.heads_m(&nodes);
     let on_grid = nodes

@@ -93,7 +93,11 @@ impl<'a> Survey<'a> {
 
     /// Smallest and largest drawdown at a node, metres; none without nodes.
     pub fn drawdown_range_m(&self) -> Option<[f64; 2]> {
-        range(self.aquifers.iter().flat_map(|aquifer| &aquifer.drawdowns_m))
+        range(
+            self.aquifers
+                .iter()
+                .flat_map(|aquifer| &aquifer.drawdowns_m),
+        )
     }
 
     /// Area of the map where the head is below a level, m².

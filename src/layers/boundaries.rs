@@ -40,7 +40,10 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
     for field in planned.solution.fields() {
         let outline = field.outline();
         for (side, pieces) in outline.sides.iter().enumerate() {
-            let of_edge = pieces.iter().enumerate().filter(|(_, piece)| piece.edge == edge);
+            let of_edge = pieces
+                .iter()
+                .enumerate()
+                .filter(|(_, piece)| piece.edge == edge);
             for (piece, _) in of_edge {
                 bounds = true;
                 for line in outline.piece_lines(side, piece, planned.survey.window.extent) {
@@ -54,7 +57,12 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
     if bounds {
         joined(lines)
     } else {
-        planned.solution.site().edges.get(edge).map_or(vec![], as_given)
+        planned
+            .solution
+            .site()
+            .edges
+            .get(edge)
+            .map_or(vec![], as_given)
     }
 }
 

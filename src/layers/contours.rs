@@ -26,7 +26,11 @@ impl Levels {
     /// # Errors
     /// When the interval gives too many levels; the refusal names one that
     /// works.
-    pub fn of(survey: &Survey<'_>, units: Units, interval: Option<Length>) -> Result<Self, Refusal> {
+    pub fn of(
+        survey: &Survey<'_>,
+        units: Units,
+        interval: Option<Length>,
+    ) -> Result<Self, Refusal> {
         let levels = |range: Option<[f64; 2]>| {
             let Some([low_m, high_m]) = range else {
                 return Ok(vec![]);
@@ -107,7 +111,10 @@ pub fn all_head_lines(planned: &Planned<'_>) -> Result<Vec<ContourLine>, LayerEr
 
 /// The bands of drawdown, aquifer by aquifer, from the lowest up.
 pub fn all_drawdown_bands(planned: &Planned<'_>) -> Result<Vec<Band>, LayerError> {
-    Ok(drawdown_cuts(planned)?.iter().flat_map(Cuts::bands).collect())
+    Ok(drawdown_cuts(planned)?
+        .iter()
+        .flat_map(Cuts::bands)
+        .collect())
 }
 
 /// Where the drawdown's levels cut the triangles of each aquifer.

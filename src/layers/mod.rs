@@ -68,7 +68,9 @@ pub fn notes(plan: &Plan, solution: &Solution) -> Vec<String> {
 #[derive(Debug, thiserror::Error)]
 pub enum LayerError {
     /// A place has no longitude and latitude.
-    #[error("the point {x_m} m east and {y_m} m north of the site's origin has no longitude and latitude: {reason}")]
+    #[error(
+        "the point {x_m} m east and {y_m} m north of the site's origin has no longitude and latitude: {reason}"
+    )]
     Projection {
         /// East of the site's origin, metres.
         x_m: f64,
@@ -122,7 +124,9 @@ pub const OUTPUTS: [(&str, Maker); 9] = [
     ("boundaries.geojson", |p| json(&boundaries::layer(p)?)),
     ("image_wells.geojson", |p| json(&image_wells::layer(p)?)),
     ("interference.csv", interference_csv::table),
-    ("findings.json", |p| pretty_json(&findings_json::document(p))),
+    ("findings.json", |p| {
+        pretty_json(&findings_json::document(p))
+    }),
 ];
 
 /// Makes every output.

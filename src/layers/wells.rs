@@ -20,7 +20,10 @@ pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
             .length("own_drawdown", finding.own_m)
             .length("interference", finding.interference_m)
             .length("well_loss", finding.well_loss_m)
-            .with("flags", flag_codes(planned, Who::Well(finding.well)).join(", "));
+            .with(
+                "flags",
+                flag_codes(planned, Who::Well(finding.well)).join(", "),
+            );
         layer.add_point(well.at, properties)?;
     }
     Ok(layer.finish())

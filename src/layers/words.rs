@@ -32,7 +32,11 @@ impl<'a> Words<'a> {
 
     /// A length, to the centimetre or hundredth of a foot: "1.25 m".
     pub fn length(&self, metres: f64) -> String {
-        format!("{} {}", self.bare_length(metres), self.units.length_ending())
+        format!(
+            "{} {}",
+            self.bare_length(metres),
+            self.units.length_ending()
+        )
     }
 
     /// A length without its unit.
@@ -68,7 +72,11 @@ impl<'a> Words<'a> {
     pub fn area(&self, m2: f64) -> String {
         let area = self.units.area(m2);
         let decimals = usize::from(area < 10.0);
-        format!("{} {}", grouped(&fixed(area, decimals)), self.units.area_words())
+        format!(
+            "{} {}",
+            grouped(&fixed(area, decimals)),
+            self.units.area_words()
+        )
     }
 
     /// The name of a well.
@@ -156,7 +164,11 @@ impl<'a> Words<'a> {
             } => format!(
                 "other wells cause {} of its {}, {}, more than the accepted {}",
                 percent(share),
-                if interference_m < 0.0 { "rise" } else { "drawdown" },
+                if interference_m < 0.0 {
+                    "rise"
+                } else {
+                    "drawdown"
+                },
                 self.length(interference_m.abs()),
                 percent(limit)
             ),
@@ -249,7 +261,9 @@ fn percent_down(share: f64) -> String {
 /// A number with a fixed count of decimals; never "-0.00".
 pub fn fixed(value: f64, decimals: usize) -> String {
     let text = format!("{value:.decimals$}");
-    let is_zero = text.bytes().all(|byte| !byte.is_ascii_digit() || byte == b'0');
+    let is_zero = text
+        .bytes()
+        .all(|byte| !byte.is_ascii_digit() || byte == b'0');
     match text.strip_prefix('-') {
         Some(digits) if is_zero => digits.to_owned(),
         Some(digits) => format!("−{digits}"),

@@ -89,18 +89,16 @@ fn stage(
 }
 
 /// Puts a finished folder in the target's place.
-fn take_place(
-    staged: tempfile::TempDir,
-    target: &Path,
-    exists: bool,
-) -> Result<(), WriteError> {
+fn take_place(staged: tempfile::TempDir, target: &Path, exists: bool) -> Result<(), WriteError> {
     if !exists {
         fs::rename(staged.path(), target).map_err(failed("make", target))?;
         // Its path is gone; there is nothing left to remove.
         let _ = staged.keep();
     } else if exchange(staged.path(), target).is_ok() {
         // What is staged now are the last run's files.
-        staged.close().map_err(failed("remove the last files of", target))?;
+        staged
+            .close()
+            .map_err(failed("remove the last files of", target))?;
     } else {
         move_files(staged.path(), target)?;
     }
