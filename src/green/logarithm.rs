@@ -40,6 +40,15 @@ pub(super) struct Ratio<S: Simd> {
 }
 
 impl<S: Simd> Ratio<S> {
+    /// The ratio N/D of images alone.
+    #[inline(always)]
+    pub fn of_image(denominator: Lanes<S>, difference: Lanes<S>) -> Self {
+        Self {
+            denominator,
+            difference,
+        }
+    }
+
     /// The ratio N/(w p) of a well: w is its (scaled) squared distance, which
     /// counts as that of the rim inside the rim, while N stays as it is.
     /// `difference` is N − w p for the true w; `others` is p.
@@ -131,12 +140,10 @@ pub fn ln_lanes<S: Simd>(simd: S, values: S::f64s) -> S::f64s {
 #[inline(always)]
 fn artanh_doubled<S: Simd>(s: Lanes<S>) -> Lanes<S> {
     let v = s * s;
-    let [first, rest @ ..] = ARTANH;
-    let polynomial = rest
-        .iter()
-        .rev()
-        .fold(s.constant(0.0), |sum, &c| sum.mul_add(v, sum.constant(c)))
-        .mul_add(v, v.constant(first));
+    let mut polynomial = s.constant(0.0);
+    for &coefficient in ARTANH.iter().rev() {
+        polynomial = polynomial.mul_add(v, v.constant(coefficient));
+    }
     (s * v).mul_add(polynomial, s + s)
 }
 
