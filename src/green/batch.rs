@@ -166,10 +166,16 @@ fn fill<K: PairKernel>(
 }
 
 /// The lanes of one group of a block's columns.
+///
+/// Written as a loop: a closure would not be compiled for the processor's
+/// vector set.
 #[inline(always)]
 fn group<S: Simd>(simd: S, columns: &[[f64; BLOCK]; TERMS], index: usize) -> [Lanes<S>; TERMS] {
-    columns.each_ref().map(|column| {
-        let lanes = S::as_simd_f64s(column).0.get(index).copied();
-        Lanes::new(simd, lanes.unwrap_or_else(|| simd.splat_f64s(0.0)))
-    })
+    let mut terms = [Lanes::splat(simd, 0.0); TERMS];
+    for (term, column) in terms.iter_mut().zip(columns) {
+        if let Some(lanes) = S::as_simd_f64s(column).0.get(index) {
+            *term = Lanes::new(simd, *lanes);
+        }
+    }
+    terms
 }

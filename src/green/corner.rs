@@ -94,22 +94,18 @@ impl PairKernel for Corner {
         let (dx, dy) = (x - a, y - b);
         let squared = dx.mul_add(dx, dy * dy);
         let rim_squared = x.constant(prepared.rim_squared);
-        let well = |others, difference| Ratio::of_well(squared, rim_squared, others, difference);
-        let mirrored = |denominator, difference| Ratio {
-            denominator,
-            difference,
-        };
         let one = x.constant(1.0);
         let (across_x, across_y) = (four * a * x, four * b * y);
         match self {
-            Self::River => well(one, across_x),
-            Self::TwoRivers => well(squared + across_x + across_y, across_x * across_y),
-            Self::RiverThenBarrier => {
-                well(one, across_x).times(mirrored(squared + across_y, across_x))
+            Self::River => Ratio::of_well(squared, rim_squared, one, across_x),
+            Self::TwoRivers => {
+                let diagonal = squared + across_x + across_y;
+                Ratio::of_well(squared, rim_squared, diagonal, across_x * across_y)
             }
-            Self::BarrierThenRiver => {
-                well(one, across_y).times(mirrored(squared + across_x, across_y))
-            }
+            Self::RiverThenBarrier => Ratio::of_well(squared, rim_squared, one, across_x)
+                .times(Ratio::of_image(squared + across_y, across_x)),
+            Self::BarrierThenRiver => Ratio::of_well(squared, rim_squared, one, across_y)
+                .times(Ratio::of_image(squared + across_x, across_y)),
         }
     }
 }

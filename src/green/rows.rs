@@ -257,16 +257,20 @@ impl PairKernel for Rows {
         let squared = (twice + twice).mul_add(half_sine * half_sine, gap * gap);
         let rim_squared = t * t.constant(prepared.rim);
 
-        let own = self.row_ratio(t, &cosines, Some([squared, rim_squared]));
-        prepared.mirrored.iter().fold(own, |product, row| {
+        let (others, difference) = self.other_images(t, &cosines, squared);
+        let mut product = Ratio::of_well(squared, rim_squared, others, difference);
+        for row in &prepared.mirrored {
             let t = fade(row, terms);
-            let factor = self.row_ratio(t, &cosines, None);
-            if row.sign > 0.0 {
+            let nearest = t.mul_add(t, one) - (t + t) * cosines.minus;
+            let (others, difference) = self.other_images(t, &cosines, nearest);
+            let factor = Ratio::of_image(nearest * others, difference);
+            product = if row.sign > 0.0 {
                 product.times(factor)
             } else {
                 product.over(factor)
-            }
-        })
+            };
+        }
+        product
     }
 
     #[inline(always)]
@@ -310,40 +314,32 @@ impl Rows {
         }
     }
 
-    /// Images with sign −1 over images with sign +1 in one period of a row.
-    /// In the well's own row `well` holds the factor of the well itself, free
-    /// of cancellation, and that of its rim.
+    /// One period of a row is N/(w p): images of sign −1 over those of sign +1,
+    /// of which w = 1 − 2t cos κ(x − x₀) + t² is the first. Returns p and
+    /// N − w p, the latter free of cancellation.
     #[inline(always)]
-    fn row_ratio<S: Simd>(
+    fn other_images<S: Simd>(
         &self,
         t: Lanes<S>,
         cosines: &Cosines<S>,
-        well: Option<[Lanes<S>; 2]>,
-    ) -> Ratio<S> {
+        first: Lanes<S>,
+    ) -> (Lanes<S>, Lanes<S>) {
         use Kind::{FixedHead, NoFlow};
         let one = t.constant(1.0);
         let (sum, twice) = (t.mul_add(t, one), t + t);
-        let quadruple = || (twice + twice) * sum;
-        let ratio = |others: Lanes<S>, difference: Lanes<S>| match well {
-            Some([squared, rim_squared]) => {
-                Ratio::of_well(squared, rim_squared, others, difference)
-            }
-            None => Ratio {
-                denominator: (sum - twice * cosines.minus) * others,
-                difference,
-            },
-        };
         match self.kinds {
-            [FixedHead, FixedHead] => ratio(one, twice * cosines.difference),
-            [FixedHead, NoFlow] => ratio(
+            [FixedHead, FixedHead] => (one, twice * cosines.difference),
+            [FixedHead, NoFlow] => (
                 twice.mul_add(cosines.plus, sum),
-                quadruple() * cosines.difference,
+                (twice + twice) * sum * cosines.difference,
             ),
-            [NoFlow, FixedHead] => ratio(sum - twice * cosines.plus, quadruple() * cosines.sum),
+            [NoFlow, FixedHead] => (
+                sum - twice * cosines.plus,
+                (twice + twice) * sum * cosines.sum,
+            ),
             [NoFlow, NoFlow] => {
                 let others = sum - twice * cosines.plus;
-                let minus = well.map_or(sum - twice * cosines.minus, |[squared, _]| squared);
-                ratio(others, one - minus * others)
+                (others, one - first * others)
             }
         }
     }
