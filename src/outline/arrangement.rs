@@ -68,7 +68,9 @@ impl Arrangement {
             // Arriving against `here`, the leftmost way on is the one before
             // it counterclockwise.
             let before = star.iter().cycle().skip(star.len().saturating_sub(1));
-            star.iter().zip(before).map(|(here, before)| (here ^ 1, *before))
+            star.iter()
+                .zip(before)
+                .map(|(here, before)| (here ^ 1, *before))
         });
         let following = self.to_infinity.iter().cycle().skip(1);
         let at_infinity = self
@@ -163,7 +165,12 @@ impl Nodes {
 fn pieces(strokes: &[Stroke], nodes: &mut Nodes) -> Vec<HalfEdge> {
     let mut cuts: Vec<Vec<(f64, usize)>> = strokes
         .iter()
-        .map(|stroke| stroke.tips().map(|(along, at)| (along, nodes.at(at))).collect())
+        .map(|stroke| {
+            stroke
+                .tips()
+                .map(|(along, at)| (along, nodes.at(at)))
+                .collect()
+        })
         .collect();
     for (index, first) in strokes.iter().enumerate() {
         for (other, second) in strokes.iter().enumerate().skip(index + 1) {
@@ -237,8 +244,14 @@ fn to_infinity(scene: &Scene, strokes: &[Stroke], halves: &[HalfEdge]) -> Vec<(f
         headings.entry(stroke.heading).or_insert(stroke.direction);
     }
     let mut rays: Vec<(f64, f64, usize)> = Vec::new();
-    for (number, half) in halves.iter().enumerate().filter(|(_, half)| half.to.is_none()) {
-        let axis = headings.get(&half.stroke.heading).unwrap_or(&half.direction);
+    for (number, half) in halves
+        .iter()
+        .enumerate()
+        .filter(|(_, half)| half.to.is_none())
+    {
+        let axis = headings
+            .get(&half.stroke.heading)
+            .unwrap_or(&half.direction);
         let direction = *axis * axis.dot(&half.direction).signum();
         let line = Stroke {
             from: scene.centre,
@@ -249,7 +262,9 @@ fn to_infinity(scene: &Scene, strokes: &[Stroke], halves: &[HalfEdge]) -> Vec<(f
         rays.push((angle(direction), line.offset(near_centre), number));
     }
     rays.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.total_cmp(&b.1)));
-    rays.into_iter().map(|(angle, _, number)| (angle, number)).collect()
+    rays.into_iter()
+        .map(|(angle, _, number)| (angle, number))
+        .collect()
 }
 
 /// Angle of a vector from the x axis, −π to π.

@@ -56,7 +56,11 @@ impl Side {
 
     /// The lowest number among its edges.
     pub fn lowest_edge(&self) -> usize {
-        self.bits.iter().map(|bit| bit.edge).min().unwrap_or(usize::MAX)
+        self.bits
+            .iter()
+            .map(|bit| bit.edge)
+            .min()
+            .unwrap_or(usize::MAX)
     }
 }
 

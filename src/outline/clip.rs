@@ -41,7 +41,10 @@ impl Outline {
     pub fn piece_line(&self, side: usize, piece: usize, extent: Extent) -> Vec<Point> {
         let lines = self.piece_lines(side, piece, extent);
         let length = |line: &Vec<Point>| -> f64 {
-            line.iter().zip(line.iter().skip(1)).map(|(a, b)| (b - a).norm()).sum()
+            line.iter()
+                .zip(line.iter().skip(1))
+                .map(|(a, b)| (b - a).norm())
+                .sum()
         };
         lines
             .into_iter()
@@ -65,7 +68,10 @@ impl Outline {
                         .collect(),
                 }
             }
-            _ => self.straight_piece(side, piece, extent).into_iter().collect(),
+            _ => self
+                .straight_piece(side, piece, extent)
+                .into_iter()
+                .collect(),
         }
     }
 

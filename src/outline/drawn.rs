@@ -62,7 +62,12 @@ fn crossing_itself(
     let contact = touching.first()?;
     let of_edge = |stroke: &&Stroke| stroke.edge == one.edge;
     let whole: f64 = strokes.iter().filter(of_edge).map(|s| s.length_m).sum();
-    let before: f64 = strokes.iter().take(first).filter(of_edge).map(|s| s.length_m).sum();
+    let before: f64 = strokes
+        .iter()
+        .take(first)
+        .filter(of_edge)
+        .map(|s| s.length_m)
+        .sum();
     let follows = second == first + 1;
     let closes = before == 0.0 && strokes.get(second + 1).is_none_or(|s| s.edge != one.edge);
     let slack = 2.0 * super::stroke::tolerance_at(contact.at);

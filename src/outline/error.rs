@@ -96,7 +96,9 @@ pub enum OutlineError {
         distance: String,
     },
     /// A well whose rim crosses an edge.
-    #[error("the rim of {well} crosses {edge}: it lies {distance} away, within its radius of {radius}")]
+    #[error(
+        "the rim of {well} crosses {edge}: it lies {distance} away, within its radius of {radius}"
+    )]
     RimCrossesEdge {
         /// The well.
         well: Named,
@@ -108,7 +110,9 @@ pub enum OutlineError {
         radius: String,
     },
     /// A neighbour no well can reach.
-    #[error("{neighbour} lies on the other bank of {edge}, where the plan has no well: the wells cannot lower its head")]
+    #[error(
+        "{neighbour} lies on the other bank of {edge}, where the plan has no well: the wells cannot lower its head"
+    )]
     OtherBank {
         /// The neighbour.
         neighbour: Named,
@@ -116,7 +120,9 @@ pub enum OutlineError {
         edge: Named,
     },
     /// An area in two aquifers.
-    #[error("{neighbour} lies in several aquifers: that of {first} and that of {second}, with {edge} between them")]
+    #[error(
+        "{neighbour} lies in several aquifers: that of {first} and that of {second}, with {edge} between them"
+    )]
     AcrossAquifers {
         /// The neighbour.
         neighbour: Named,

@@ -124,7 +124,9 @@ fn resolve(event: &Event, lengths: &mut [f64]) {
     let parties = || event.rays.iter().flatten();
     let comes = |&&(ray, distance): &&(usize, f64)| {
         let slack = TOUCH_M.max(1e-10 * distance);
-        lengths.get(ray).is_some_and(|&length| distance <= length + slack)
+        lengths
+            .get(ray)
+            .is_some_and(|&length| distance <= length + slack)
     };
     if parties().filter(comes).count() < parties().count() {
         return;

@@ -41,7 +41,9 @@ impl<'a> Faces<'a> {
                 }
             })
             .collect();
-        let face_of = (0..around.len()).map(|cycle| root(&around, cycle)).collect();
+        let face_of = (0..around.len())
+            .map(|cycle| root(&around, cycle))
+            .collect();
         Self {
             site,
             scene,
@@ -53,7 +55,9 @@ impl<'a> Faces<'a> {
     /// The loops of a face: the one around it, if there is one, and islands.
     pub fn loops(&self, face: usize) -> (Option<usize>, Vec<usize>) {
         let of_face = self.face_of.iter().enumerate();
-        let loops = of_face.filter(|(_, of)| **of == face).map(|(cycle, _)| cycle);
+        let loops = of_face
+            .filter(|(_, of)| **of == face)
+            .map(|(cycle, _)| cycle);
         let islands = loops.filter(|cycle| *cycle != face).collect();
         ((face != EVERYWHERE).then_some(face), islands)
     }
@@ -79,13 +83,18 @@ impl<'a> Faces<'a> {
             None => 2 * pair + usize::from(half.stroke.offset(stretched) < 0.0),
         };
         let cycle = self.arrangement.halves.get(number).map(|half| half.cycle);
-        cycle.and_then(|cycle| self.face_of.get(cycle)).map_or(EVERYWHERE, |face| *face)
+        cycle
+            .and_then(|cycle| self.face_of.get(cycle))
+            .map_or(EVERYWHERE, |face| *face)
     }
 
     /// The place of a piece that is nearest to a place, and its node if it is
     /// the tip of the piece.
     fn foot(&self, half: &HalfEdge, place: Point) -> (Option<usize>, Point) {
-        let from = self.arrangement.place(half.from).unwrap_or(half.stroke.from);
+        let from = self
+            .arrangement
+            .place(half.from)
+            .unwrap_or(half.stroke.from);
         let line = Stroke {
             from,
             length_m: f64::INFINITY,
@@ -163,14 +172,23 @@ fn loop_around(arrangement: &Arrangement, island: usize) -> usize {
     let outermost = arrangement
         .cycle(island)
         .filter_map(|half| arrangement.place(half.from))
-        .max_by(|a, b| direction.dot(&a.coords).total_cmp(&direction.dot(&b.coords)));
+        .max_by(|a, b| {
+            direction
+                .dot(&a.coords)
+                .total_cmp(&direction.dot(&b.coords))
+        });
     let Some(start) = outermost else {
         return EVERYWHERE;
     };
     let met = arrangement
         .halves
         .iter()
-        .filter_map(|half| Some((distance_to_crossing(arrangement, half, start, direction)?, half)))
+        .filter_map(|half| {
+            Some((
+                distance_to_crossing(arrangement, half, start, direction)?,
+                half,
+            ))
+        })
         .min_by(|a, b| a.0.total_cmp(&b.0));
     match met {
         Some((_, half)) => half.cycle,
@@ -212,6 +230,8 @@ fn loop_at_infinity(arrangement: &Arrangement, direction: Vector) -> usize {
     let toward = angle(direction);
     let rays = &arrangement.to_infinity;
     let before = rays.iter().rev().find(|(angle, _)| *angle <= toward);
-    let half = before.or(rays.last()).and_then(|(_, number)| arrangement.halves.get(*number));
+    let half = before
+        .or(rays.last())
+        .and_then(|(_, number)| arrangement.halves.get(*number));
     half.map_or(EVERYWHERE, |half| half.cycle)
 }

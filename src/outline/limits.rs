@@ -56,7 +56,10 @@ pub(super) fn wild_numbers(site: &Site) -> Vec<OutlineError> {
         .filter(is_wild)
         .map(|(part, _)| OutlineError::WildCoordinate { part })
         .collect();
-    let ratio = site.aquifer.anisotropy.map_or(1.0, |anisotropy| anisotropy.ratio);
+    let ratio = site
+        .aquifer
+        .anisotropy
+        .map_or(1.0, |anisotropy| anisotropy.ratio);
     if !(ratio.is_finite() && ratio >= 1.0) {
         errors.push(OutlineError::WildAnisotropy { ratio });
     }

@@ -1,14 +1,16 @@
 //! Words for edges, wells, neighbours, lengths and angles.
 
 use super::error::Named;
-use crate::site::{EdgeKind, Site, Subject};
+use crate::site::{EdgeKind, EdgeShape, Site, Subject};
 
-/// "river Ostra", "barrier granite edge"; by number where it has no name.
+/// "river Ostra", "barrier granite edge", "Round lake"; by number where it has
+/// no name.
 pub(super) fn edge(site: &Site, index: usize) -> Named {
     let words = site.edges.get(index).map_or_else(String::new, |edge| {
-        let kind = match edge.kind {
-            EdgeKind::River { .. } => "river",
-            EdgeKind::Barrier => "barrier",
+        let kind = match (&edge.kind, &edge.shape) {
+            (EdgeKind::River { .. }, EdgeShape::Line(_)) => "river",
+            (EdgeKind::River { .. }, EdgeShape::Circle { .. }) => "lake",
+            (EdgeKind::Barrier, _) => "barrier",
         };
         joined(kind, &edge.name, index)
     });
@@ -36,9 +38,12 @@ pub(super) fn neighbour(site: &Site, index: usize) -> Named {
     }
 }
 
+/// The kind before the name, unless the name says it already.
 fn joined(kind: &str, name: &str, index: usize) -> String {
     if name.is_empty() {
         format!("{kind} number {}", index + 1)
+    } else if name.to_lowercase().contains(kind) {
+        name.to_owned()
     } else {
         format!("{kind} {name}")
     }

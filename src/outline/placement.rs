@@ -79,13 +79,20 @@ impl<'a> Edges<'a> {
             .iter()
             .filter(|stroke| stroke.role != Role::Chord)
             .map(|stroke| (stroke.distance(place), stroke.edge));
-        let of_circles = self.site.edges.iter().enumerate().filter_map(|(index, edge)| {
-            let EdgeShape::Circle { centre, radius } = &edge.shape else {
-                return None;
-            };
-            Some((((place - centre).norm() - radius.si()).abs(), index))
-        });
-        of_strokes.chain(of_circles).min_by(|a, b| a.0.total_cmp(&b.0))
+        let of_circles = self
+            .site
+            .edges
+            .iter()
+            .enumerate()
+            .filter_map(|(index, edge)| {
+                let EdgeShape::Circle { centre, radius } = &edge.shape else {
+                    return None;
+                };
+                Some((((place - centre).norm() - radius.si()).abs(), index))
+            });
+        of_strokes
+            .chain(of_circles)
+            .min_by(|a, b| a.0.total_cmp(&b.0))
     }
 
     /// Where the way from one place to another meets edges: the share of the
@@ -103,7 +110,9 @@ impl<'a> Edges<'a> {
             .iter()
             .flat_map(|stroke| {
                 let touching = contacts(&way, stroke);
-                touching.into_iter().map(|contact| (contact.on_first, stroke.edge))
+                touching
+                    .into_iter()
+                    .map(|contact| (contact.on_first, stroke.edge))
             })
             .map(|(along, edge)| (along / way.length_m, edge))
             .collect();
@@ -170,7 +179,10 @@ impl Placement<'_> {
                 Place::Area(corners) => self.group_of_area(index, corners),
             };
             match placed {
-                Ok(group) => of_groups.get_mut(group).into_iter().for_each(|of| of.push(index)),
+                Ok(group) => of_groups
+                    .get_mut(group)
+                    .into_iter()
+                    .for_each(|of| of.push(index)),
                 Err(error) => self.errors.push(error),
             }
         }
@@ -201,7 +213,11 @@ impl Placement<'_> {
         let mut places = Vec::new();
         for (from, to) in corners.iter().zip(corners.iter().cycle().skip(1)) {
             let met = self.edges.met_between(*from, *to);
-            let shares = || std::iter::once(0.0).chain(met.iter().map(|at| at.0)).chain([1.0]);
+            let shares = || {
+                std::iter::once(0.0)
+                    .chain(met.iter().map(|at| at.0))
+                    .chain([1.0])
+            };
             let middles = shares().zip(shares().skip(1)).map(|(a, b)| 0.5 * (a + b));
             places.push(*from);
             places.extend(middles.map(|share| from + (to - from) * share));
@@ -210,7 +226,11 @@ impl Placement<'_> {
         places.extend(wells.filter(|well| lies_inside(*well, corners)));
         let groups: BTreeSet<usize> = places
             .iter()
-            .filter(|place| self.edges.nearest(**place).is_none_or(|near| near.0 > TOUCH_M))
+            .filter(|place| {
+                self.edges
+                    .nearest(**place)
+                    .is_none_or(|near| near.0 > TOUCH_M)
+            })
             .filter_map(|place| self.group(self.faces.holding(*place)))
             .collect();
         let mut groups = groups.into_iter();

@@ -71,7 +71,11 @@ fn circle(context: Context<'_>, edge: usize, inside: bool) -> Result<Outline, Ve
     if boundary::kind_of(site, edge) == Kind::NoFlow {
         return Err(vec![refuse::round_barrier(context, edge, inside)]);
     }
-    if site.aquifer.anisotropy.is_some_and(|anisotropy| anisotropy.ratio != 1.0) {
+    if site
+        .aquifer
+        .anisotropy
+        .is_some_and(|anisotropy| anisotropy.ratio != 1.0)
+    {
         return Err(vec![refuse::ellipse(context, edge)]);
     }
     let radius_m = radius.si();
@@ -125,9 +129,7 @@ fn straight(context: Context<'_>, sides: &[Side]) -> Result<Outline, Vec<Outline
     }
     let named = match sides {
         [side] if is_line(side) => Some(half_plane(context, side)),
-        [first, second] if is_line(first) && is_line(second) => {
-            Some(strip(context, first, second))
-        }
+        [first, second] if is_line(first) && is_line(second) => Some(strip(context, first, second)),
         [first, second] if comes_in(first) && goes_out(second) => {
             Some(corner(context, first, second))
         }
@@ -178,8 +180,13 @@ fn unit(z: Complex64) -> Complex64 {
 
 /// The mean of the wells' places, stretched.
 fn centre_of_wells(context: Context<'_>) -> Complex64 {
-    let places = context.wells.iter().filter_map(|&well| context.site.wells.get(well));
-    let sum: Complex64 = places.map(|well| place(context.scene.stretch.apply(well.at))).sum();
+    let places = context
+        .wells
+        .iter()
+        .filter_map(|&well| context.site.wells.get(well));
+    let sum: Complex64 = places
+        .map(|well| place(context.scene.stretch.apply(well.at)))
+        .sum();
     sum / context.wells.len().max(1) as f64
 }
 
@@ -259,8 +266,8 @@ fn strip<'a>(context: Context<'_>, first: &'a Side, second: &'a Side) -> Named<'
 fn corner<'a>(context: Context<'_>, first: &'a Side, second: &'a Side) -> Named<'a> {
     let (inward, outward) = (-number(first.direction), number(second.direction));
     let square = unit(outward - inward * Complex64::I);
-    let is_square = runs_along(context, first, -square * Complex64::I)
-        && runs_along(context, second, square);
+    let is_square =
+        runs_along(context, first, -square * Complex64::I) && runs_along(context, second, square);
     let limits = [0.0, f64::INFINITY];
     let kinds = [second.kind, first.kind];
     if is_square {
@@ -290,7 +297,11 @@ fn corner<'a>(context: Context<'_>, first: &'a Side, second: &'a Side) -> Named<
     let turned = inward * outward.conj();
     let angle = turned.arg().rem_euclid(std::f64::consts::TAU);
     // Two banks of one half-line.
-    let angle_rad = if angle == 0.0 { std::f64::consts::TAU } else { angle };
+    let angle_rad = if angle == 0.0 {
+        std::f64::consts::TAU
+    } else {
+        angle
+    };
     let apex = first.to().map_or(Complex64::ZERO, place);
     Named {
         shape: Shape::Wedge { angle_rad, kinds },
@@ -416,7 +427,11 @@ fn finish(context: Context<'_>, named: &Named<'_>) -> Outline {
         origin: named.origin * named.turn,
         turn: named.turn,
     };
-    let sides = named.sides.iter().map(|placed| pieces(&frame, placed)).collect();
+    let sides = named
+        .sides
+        .iter()
+        .map(|placed| pieces(&frame, placed))
+        .collect();
     Outline {
         frame,
         shape: named.shape,

@@ -37,7 +37,9 @@ fn refusal(
         outline,
         why,
         remedy,
-        others: others.map(|&other| names::edge(context.site, other)).collect(),
+        others: others
+            .map(|&other| names::edge(context.site, other))
+            .collect(),
     }
 }
 
@@ -135,7 +137,11 @@ pub(super) fn straight(context: Context<'_>, sides: &[Side]) -> OutlineError {
     }
     let angles = corner_angles(sides);
     let is_open = sides.iter().any(|side| side.to().is_none());
-    let closed = if is_open { "an aquifer" } else { "a closed aquifer" };
+    let closed = if is_open {
+        "an aquifer"
+    } else {
+        "a closed aquifer"
+    };
     let corners = match angles.len() {
         1 => "1 corner".to_owned(),
         count => format!("{count} corners"),
@@ -151,7 +157,11 @@ pub(super) fn straight(context: Context<'_>, sides: &[Side]) -> OutlineError {
         } else {
             "its corners measure"
         };
-        format!("{corners} {}{}", names::listed(&measured), not_parallel(context, sides))
+        format!(
+            "{corners} {}{}",
+            names::listed(&measured),
+            not_parallel(context, sides)
+        )
     });
     refusal(
         context,
@@ -203,8 +213,8 @@ fn corner_angles(sides: &[Side]) -> Vec<f64> {
         .zip(following)
         .filter(|(side, _)| side.to().is_some())
         .map(|(side, next)| {
-            let turn = cross(side.direction, next.direction)
-                .atan2(side.direction.dot(&next.direction));
+            let turn =
+                cross(side.direction, next.direction).atan2(side.direction.dot(&next.direction));
             (PI - turn).rem_euclid(TAU)
         })
         .collect()
@@ -214,7 +224,10 @@ fn corner_angles(sides: &[Side]) -> Vec<f64> {
 /// at the corner furthest from a right angle, else the one with most sides.
 fn breaking_edge(sides: &[Side], angles: &[f64]) -> usize {
     let after = sides.iter().cycle().skip(1);
-    let corners = sides.iter().zip(after).filter(|(side, _)| side.to().is_some());
+    let corners = sides
+        .iter()
+        .zip(after)
+        .filter(|(side, _)| side.to().is_some());
     let worst = corners
         .zip(angles)
         .map(|(sides, angle)| (sides, (angle - PI / 2.0).abs()))

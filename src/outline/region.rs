@@ -45,7 +45,9 @@ impl Outline {
             return (self.frame.to_canonical(point).norm() - radius_m).abs();
         }
         let line = self.side_line(side);
-        let along = line.nearest(self, point).clamp(piece.along.start, piece.along.end);
+        let along = line
+            .nearest(self, point)
+            .clamp(piece.along.start, piece.along.end);
         (self.frame.to_site(line.at(along)) - point).norm()
     }
 

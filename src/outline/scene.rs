@@ -253,7 +253,10 @@ fn chords(site: &Site, index: usize, stretch: &Stretch) -> Vec<Stroke> {
     }
     let corner = |step: usize| {
         let (sin, cos) = (std::f64::consts::TAU * (step % CHORDS) as f64 / CHORDS as f64).sin_cos();
-        stretch.apply(Point::new(centre.x + radius_m * cos, centre.y + radius_m * sin))
+        stretch.apply(Point::new(
+            centre.x + radius_m * cos,
+            centre.y + radius_m * sin,
+        ))
     };
     (0..CHORDS)
         .map(|step| Stroke::between(index, Role::Chord, (0, 0), [corner(step), corner(step + 1)]))

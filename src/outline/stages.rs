@@ -90,7 +90,10 @@ fn on_piece(
         });
     }
     let known = at_positions(side, piece.edge, points, levels, frame);
-    let highest = known.iter().map(|at| at.1).fold(f64::NEG_INFINITY, f64::max);
+    let highest = known
+        .iter()
+        .map(|at| at.1)
+        .fold(f64::NEG_INFINITY, f64::max);
     let lowest = known.iter().map(|at| at.1).fold(f64::INFINITY, f64::min);
     let mean_m = known.iter().map(|at| at.1).sum::<f64>() / known.len().max(1) as f64;
     if highest - lowest <= SAME_STAGE_M {

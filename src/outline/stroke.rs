@@ -104,10 +104,18 @@ impl Stroke {
     fn span(&self, axis: usize) -> (f64, f64) {
         let start = self.from.coords.get(axis).copied().unwrap_or(0.0);
         let slope = self.direction.get(axis).copied().unwrap_or(0.0);
-        let reach = if slope == 0.0 { 0.0 } else { slope * self.length_m };
+        let reach = if slope == 0.0 {
+            0.0
+        } else {
+            slope * self.length_m
+        };
         let margin = 2.0 * tolerance_at(self.from);
         let far = start + reach;
-        let far_margin = if far.is_finite() { 1e-10 * far.abs() } else { 0.0 };
+        let far_margin = if far.is_finite() {
+            1e-10 * far.abs()
+        } else {
+            0.0
+        };
         let margin = margin + far_margin;
         (start.min(far) - margin, start.max(far) + margin)
     }

@@ -11,12 +11,7 @@ const SAGITTA_M: f64 = 0.5e-3;
 /// The corners of a rectangle, counterclockwise from the south-west.
 pub(super) fn corners(extent: Extent) -> [Point; 4] {
     let Extent { min, max } = extent;
-    [
-        min,
-        Point::new(max.x, min.y),
-        max,
-        Point::new(min.x, max.y),
-    ]
+    [min, Point::new(max.x, min.y), max, Point::new(min.x, max.y)]
 }
 
 /// The range of t within `limits` where start + step · t lies in a rectangle.
@@ -71,7 +66,11 @@ pub(super) fn arcs(extent: Extent, centre: Point, radius_m: f64) -> Arcs {
         let half_chord = half_chord_squared.sqrt();
         for other in [-half_chord, half_chord] {
             if other >= low && other <= high {
-                let (x, y) = if across_x { (place, other) } else { (other, place) };
+                let (x, y) = if across_x {
+                    (place, other)
+                } else {
+                    (other, place)
+                };
                 crossings.push(y.atan2(x).rem_euclid(TAU));
             }
         }
@@ -82,7 +81,11 @@ pub(super) fn arcs(extent: Extent, centre: Point, radius_m: f64) -> Arcs {
         place.x >= min.x && place.x <= max.x && place.y >= min.y && place.y <= max.y
     };
     let Some(first) = crossings.first().copied() else {
-        return if holds(0.0) { Arcs::Whole } else { Arcs::Parts(Vec::new()) };
+        return if holds(0.0) {
+            Arcs::Whole
+        } else {
+            Arcs::Parts(Vec::new())
+        };
     };
     let following = crossings.iter().skip(1).copied().chain([first + TAU]);
     let parts = crossings.iter().copied().zip(following);

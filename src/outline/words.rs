@@ -50,7 +50,10 @@ impl Outline {
                 format!("{name} of {} between {sides}", names::angle(angle_rad))
             }
             Shape::Disk { radius_m } => {
-                format!("{name} of radius {} inside {sides}", names::length(radius_m))
+                format!(
+                    "{name} of radius {} inside {sides}",
+                    names::length(radius_m)
+                )
             }
             Shape::DiskExterior { radius_m } => {
                 let radius = names::length(radius_m);
