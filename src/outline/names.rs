@@ -80,7 +80,7 @@ fn grouped(value: f64) -> String {
 pub(super) fn angle(radians: f64) -> String {
     let degrees = radians.to_degrees();
     let away = (degrees - (degrees / 90.0).round() * 90.0).abs();
-    let digits = if away < 1e-9 || away >= 0.5 {
+    let digits = if !(1e-9..0.5).contains(&away) {
         1
     } else {
         ((-away.log10()).ceil().max(0.0) as usize + 1).clamp(1, 9)

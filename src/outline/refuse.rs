@@ -192,8 +192,7 @@ fn remedy(context: Context<'_>, sides: &[Side], is_open: bool) -> String {
 /// How far the long sides of an open outline with three sides are from
 /// parallel.
 fn not_parallel(context: Context<'_>, sides: &[Side]) -> String {
-    let (&[ref first, _, ref last], true) = (sides, sides.iter().any(|side| side.to().is_none()))
-    else {
+    let ([first, _, last], true) = (sides, sides.iter().any(|side| side.to().is_none())) else {
         return String::new();
     };
     let turn = cross(first.direction, -last.direction)

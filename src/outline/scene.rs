@@ -41,8 +41,9 @@ pub(super) struct FreeEnd {
 }
 
 impl Scene {
-    /// Reads a site whose coordinates are finite.
-    pub fn read(site: &Site) -> Result<Self, Vec<OutlineError>> {
+    /// Reads a site whose coordinates are finite, with what is wrong with
+    /// its edges; the faulty ones are left out.
+    pub fn read(site: &Site) -> (Self, Vec<OutlineError>) {
         let stretch = match site.aquifer.anisotropy {
             Some(anisotropy) if anisotropy.ratio != 1.0 => Stretch::of(anisotropy),
             _ => Stretch::none(),
@@ -72,22 +73,20 @@ impl Scene {
                     pieces: drawn,
                     limit: PIECES_LIMIT,
                 });
+                strokes.truncate(first);
                 break;
             }
         }
         let (centre, extent_m) = extent(site, &stretch);
         heading::assign(&mut strokes, TOUCH_M / extent_m);
-        if errors.is_empty() {
-            Ok(Self {
-                stretch,
-                strokes,
-                free_ends,
-                extent_m,
-                centre,
-            })
-        } else {
-            Err(errors)
-        }
+        let scene = Self {
+            stretch,
+            strokes,
+            free_ends,
+            extent_m,
+            centre,
+        };
+        (scene, errors)
     }
 
     /// The angle within which two lines count as parallel or square.

@@ -4,6 +4,7 @@ use std::f64::consts::PI;
 
 use approx::assert_relative_eq;
 use geo::{Area, Validation};
+use mirrorwell::outline::{Kind, Piece, Shape};
 use mirrorwell::site::{Extent, Point, Site};
 
 use crate::plans::{With, only, site};
@@ -137,4 +138,36 @@ fn a_lakes_shore_is_drawn_whole_or_in_arcs() {
     assert!((whole[0] - whole[whole.len() - 1]).norm() < 1e-12);
     let arcs = outline.piece_lines(0, 0, rectangle((-200.0, -60.0), (200.0, 60.0)));
     assert_eq!(arcs.len(), 2);
+}
+
+#[test]
+fn a_plane_slit_by_a_half_line_is_everything_around_its_tip() {
+    // No drawn line makes one today: every free end is carried on.
+    let mut outline = only(&site(&[(1.0, 1.0)]));
+    outline.shape = Shape::Wedge {
+        angle_rad: 2.0 * PI,
+        kinds: [Kind::FixedHead; 2],
+    };
+    let bank = Piece {
+        edge: 0,
+        along: 0.0..f64::INFINITY,
+        stage_m: 0.0,
+        stage_slope: 0.0,
+    };
+    outline.sides = vec![vec![bank.clone()], vec![bank]];
+    for (x, y) in [(1.0, 1.0), (-1.0, 1.0), (1.0, -1.0), (5.0, 0.0)] {
+        assert!(outline.holds(Point::new(x, y)));
+    }
+    assert_relative_eq!(
+        outline.distance_to_edge_m(Point::new(5.0, -2.0)),
+        2.0,
+        epsilon = 1e-14
+    );
+    assert_relative_eq!(
+        outline.distance_to_edge_m(Point::new(-3.0, 4.0)),
+        5.0,
+        epsilon = 1e-14
+    );
+    let square = rectangle((-50.0, -50.0), (50.0, 50.0));
+    assert_eq!(outline.clip(square).unsigned_area(), 1e4);
 }

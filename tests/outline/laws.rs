@@ -4,7 +4,7 @@ use std::f64::consts::{FRAC_PI_2, PI, TAU};
 
 use geo::Area;
 use mirrorwell::outline::{Axis, Kind, Outline, Shape};
-use mirrorwell::site::{Extent, Point, Site};
+use mirrorwell::site::{Anisotropy, EdgeShape, Extent, Point, Site};
 use num_complex::Complex64;
 use proptest::prelude::*;
 
@@ -129,6 +129,22 @@ fn clipped_area(outline: &Outline, centre: Point) -> f64 {
     outline.clip(extent).unsigned_area()
 }
 
+/// Whether a drawn line passes through the interior of an outline: whether any
+/// of 200 places along it lies inside, more than 2 mm from the edge.
+fn crosses_a_drawn_line(outline: &Outline, plan: &Site) -> bool {
+    let lines = plan.edges.iter().filter_map(|edge| match &edge.shape {
+        EdgeShape::Line(points) => Some(points),
+        EdgeShape::Circle { .. } => None,
+    });
+    let mut segments = lines.flat_map(|points| points.iter().zip(points.iter().skip(1)));
+    segments.any(|(from, to)| {
+        (0..=200).any(|step| {
+            let point = from + (to - from) * (f64::from(step) / 200.0);
+            outline.holds(point) && outline.distance_to_edge_m(point) > 2e-3
+        })
+    })
+}
+
 fn place() -> impl Strategy<Value = (f64, f64)> {
     (-1500.0..1500.0, -1500.0..1500.0)
 }
@@ -170,6 +186,32 @@ proptest! {
         prop_assert!(close(widths[0], width), "{} for {}", widths[0], width);
         // The edge named first is x = 0.
         prop_assert_eq!(found, vec![kinds.0, kinds.1]);
+    }
+
+    #[test]
+    fn an_anisotropic_strip_is_stretched_and_still_lies_where_it_is_drawn(
+        motion in motion(), width in 10.0_f64..3000.0, ratio in 1.0_f64..30.0,
+        azimuth in 0.0_f64..360.0, places in places(),
+    ) {
+        let plan = site(&[motion.of((0.3 * width, 30.0))]);
+        let plan = draw(plan, &motion, Kind::FixedHead, &[(ZERO, -400.0), (ZERO, 500.0)]);
+        let mut plan = draw(plan, &motion, Kind::NoFlow, &[(width, 90.0), (width, -700.0)]);
+        plan.aquifer.anisotropy = Some(Anisotropy { ratio, azimuth_deg: azimuth });
+        let outline = only(&plan);
+        check(&outline, &plan, &motion, &places);
+        // The stretch S = r^(-1/4) along u, r^(1/4) across it, makes the normal
+        // n of a line S⁻¹n, and the width w/abs(S⁻¹n): coordinate geometry.
+        let angle = (90.0 - azimuth).to_radians() - motion.turn;
+        let quarter = ratio.powf(0.25);
+        let stretched = (angle.cos() * quarter).hypot(angle.sin() / quarter);
+        let (widths, _) = axes(&outline);
+        prop_assert!(close(widths[0], width / stretched), "{} for {}", widths[0], width / stretched);
+        for at in places {
+            let point = motion.point(at);
+            prop_assert_eq!(outline.holds(point), at.0 >= 0.0 && at.0 <= width);
+            let distance = at.0.abs().min((at.0 - width).abs());
+            prop_assert!((outline.distance_to_edge_m(point) - distance).abs() < 1e-8);
+        }
     }
 
     #[test]
@@ -311,9 +353,10 @@ proptest! {
                 let mut held = 0;
                 for outline in &outlines {
                     held += outline.wells.len();
-                    for well in &outline.wells {
-                        prop_assert!(outline.holds(plan.wells[*well].at));
+                    for (index, well) in plan.wells.iter().enumerate() {
+                        prop_assert_eq!(outline.holds(well.at), outline.wells.contains(&index));
                     }
+                    prop_assert!(!crosses_a_drawn_line(outline, &plan));
                 }
                 prop_assert_eq!(held, plan.wells.len());
             }

@@ -343,3 +343,17 @@ fn a_stage_that_falls_evenly_is_linear_along_a_half_plane() {
         max_relative = 1e-12
     );
 }
+
+#[test]
+fn rivers_count_as_parallel_while_straightening_moves_them_by_less_than_a_millimetre() {
+    // The plan's extent is the box of 1000 m by 1200 m around everything.
+    let extent = 1000.0_f64.hypot(1200.0);
+    let plan = |shift: f64| {
+        site(&[(500.0, 100.0)])
+            .river("Ostra", &[(0.0, 0.0), (0.0, 1200.0)])
+            .river("Velm", &[(1000.0, 0.0), (1000.0 - shift, 1200.0)])
+    };
+    let just = 1200.0 * 1e-3 / extent;
+    assert_eq!(only(&plan(0.99 * just)).shape.name(), "strip");
+    assert_eq!(only(&plan(1.01 * just)).shape.name(), "wedge");
+}
