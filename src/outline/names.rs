@@ -88,6 +88,18 @@ pub(super) fn angle(radians: f64) -> String {
     format!("{degrees:.digits$}°")
 }
 
+/// Names that are listed before the rest is only counted.
+pub(super) const LISTED: usize = 8;
+
+/// "a, b, c", at most eight of them, then how many more there are.
+pub(super) fn few(parts: &[String]) -> String {
+    let listed = parts.iter().take(LISTED).cloned().collect::<Vec<_>>();
+    match parts.len().saturating_sub(LISTED) {
+        0 => listed.join(", "),
+        more => format!("{} and {more} more", listed.join(", ")),
+    }
+}
+
 /// "a", "a and b", "a, b and c".
 pub(super) fn listed(parts: &[String]) -> String {
     match parts {

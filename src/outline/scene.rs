@@ -5,6 +5,7 @@
 use super::error::OutlineError;
 use super::frame::Stretch;
 use super::heading;
+use super::limits::FARTHEST_M;
 use super::names;
 use super::stroke::{Role, Stroke, TOUCH_M};
 use crate::site::{EdgeShape, Place, Point, Site};
@@ -266,7 +267,9 @@ fn chords(site: &Site, index: usize, stretch: &Stretch) -> Vec<Stroke> {
 fn extent(site: &Site, stretch: &Stretch) -> (Point, f64) {
     let mut low = Point::new(f64::INFINITY, f64::INFINITY);
     let mut high = Point::new(f64::NEG_INFINITY, f64::NEG_INFINITY);
-    for place in places(site) {
+    // A map's corners may still be anything.
+    let tame = |place: &Point| place.iter().all(|value| value.abs() <= FARTHEST_M);
+    for place in places(site).filter(tame) {
         let place = stretch.apply(place);
         low = Point::new(low.x.min(place.x), low.y.min(place.y));
         high = Point::new(high.x.max(place.x), high.y.max(place.y));

@@ -140,7 +140,7 @@ fn an_aquifer_with_many_corners_is_refused_with_its_edges() {
         &plan,
         &[
             "well PW-1 stands in a closed aquifer with 7 corners: river Ostra, barrier granite \
-             edge; no closed form covers it; simplify it to",
+             edge; no closed form covers it; leave out edges far from the wells, or simplify the outline to",
         ],
     );
     assert_eq!(refused(&plan)[0].subject, Subject::Edge(1, None));
