@@ -37,7 +37,7 @@ mod words;
 
 pub use error::{Named, OutlineError};
 pub use frame::{Frame, Stretch};
-pub use shape::{Axis, Kind, Piece, Shape};
+pub use shape::{Axis, Kind, Piece, Shape, argument_in_wedge};
 
 use crate::site::{Refusal, Site};
 
