@@ -36,6 +36,8 @@ type Index = DelaunayTriangulation<Point2<f64>, (), (), (), HierarchyHintGenerat
 /// smaller than the reach of rings.
 pub(super) struct Wells {
     bumps: Vec<Bump>,
+    /// By well: the radius within which no point is nearer to another well.
+    own_m: Vec<f64>,
     index: Index,
     reach_m: f64,
     least_rim_m: f64,
@@ -65,8 +67,13 @@ impl Wells {
                 kept.push(Bump { at: bump.at, rim_m });
             }
         }
+        let own_m = kept
+            .iter()
+            .map(|bump| own_radius_m(&index, bump.at))
+            .collect();
         Self {
             bumps: kept,
+            own_m,
             index,
             reach_m,
             least_rim_m,
@@ -109,33 +116,49 @@ impl Wells {
     /// its neighbours; leaves out points that another well's rings serve
     /// better.
     pub(super) fn points(&self) -> impl Iterator<Item = RingPoint> + '_ {
-        self.bumps.iter().flat_map(move |bump| {
-            let middle = RingPoint {
-                at: bump.at,
-                step_m: RING_STEP * bump.rim_m,
-            };
-            let radii = std::iter::successors(Some(bump.rim_m), |radius| Some(radius * RING_RATIO))
-                .take_while(|&radius| radius <= self.reach_m)
-                .enumerate();
-            let rings = radii.flat_map(move |(ring, radius)| {
-                self.ring(bump.at, radius, if ring % 2 == 0 { 0.0 } else { 0.5 })
-            });
-            std::iter::once(middle).chain(rings)
-        })
+        self.bumps
+            .iter()
+            .zip(&self.own_m)
+            .flat_map(move |(bump, &own_m)| {
+                let middle = RingPoint {
+                    at: bump.at,
+                    step_m: RING_STEP * bump.rim_m,
+                };
+                let radii =
+                    std::iter::successors(Some(bump.rim_m), |radius| Some(radius * RING_RATIO))
+                        .take_while(|&radius| radius <= self.reach_m)
+                        .enumerate();
+                let rings = radii.flat_map(move |(number, radius)| {
+                    let turn = if number % 2 == 0 { 0.0 } else { 0.5 };
+                    ring(bump.at, radius, turn).filter(move |point| {
+                        radius <= own_m || self.distance_m(point.at) >= 0.85 * radius
+                    })
+                });
+                std::iter::once(middle).chain(rings)
+            })
     }
+}
 
-    fn ring(&self, centre: Point, radius: f64, turn: f64) -> impl Iterator<Item = RingPoint> + '_ {
-        (0..RING_POINTS)
-            .map(move |number| {
-                let angle = (number as f64 + turn) * RING_STEP;
-                centre + Vector::new(angle.cos(), angle.sin()) * radius
-            })
-            .filter(move |&at| self.distance_m(at) >= 0.85 * radius)
-            .map(move |at| RingPoint {
-                at,
-                step_m: RING_STEP * radius,
-            })
-    }
+/// Half the distance from a well to the nearest other one, which is one of its
+/// neighbours in the Delaunay triangulation of all wells.
+fn own_radius_m(index: &Index, at: Point) -> f64 {
+    let well = index.nearest_neighbor(spade_point(at));
+    let neighbours = well.into_iter().flat_map(|well| well.out_edges());
+    neighbours
+        .map(|edge| edge.to().position())
+        .map(|other| 0.5 * (other.x - at.x).hypot(other.y - at.y))
+        .fold(f64::INFINITY, f64::min)
+}
+
+/// The points of one ring.
+fn ring(centre: Point, radius: f64, turn: f64) -> impl Iterator<Item = RingPoint> {
+    (0..RING_POINTS).map(move |number| {
+        let angle = (number as f64 + turn) * RING_STEP;
+        RingPoint {
+            at: centre + Vector::new(angle.cos(), angle.sin()) * radius,
+            step_m: RING_STEP * radius,
+        }
+    })
 }
 
 /// A point as the triangulation takes it: it refuses numbers that are closer
