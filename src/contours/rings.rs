@@ -21,8 +21,9 @@ const RING_POINTS: usize = 24;
 /// rings are about as tall as wide.
 const RING_RATIO: f64 = 1.3;
 
-/// Rings end at this many steps of the grid.
-const REACH_STEPS: f64 = 1.2;
+/// Rings end at this many steps of the grid, where their points are nearly as
+/// far apart as its nodes.
+const REACH_STEPS: f64 = 2.5;
 
 /// No rim is smaller, metres.
 const LEAST_RIM_M: f64 = 1e-3;
