@@ -5,12 +5,13 @@
 //! rim to the spacing of the grid, and every contour round a well has at least
 //! 48 vertices however small it is.
 
+use std::collections::HashSet;
 use std::f64::consts::TAU;
 
 use spade::{DelaunayTriangulation, HierarchyHintGenerator, Point2, Triangulation};
 
-use super::Bump;
 use super::grid::Grid;
+use super::{Bump, MeshError};
 use crate::site::{Point, Vector};
 
 /// Points on a ring. Departure from theory: tuned for looks, a 24-gon's
@@ -24,6 +25,9 @@ const RING_RATIO: f64 = 1.3;
 /// Rings end at this many steps of the grid, where their points are nearly as
 /// far apart as its nodes.
 const REACH_STEPS: f64 = 2.5;
+
+/// Most points of rings; they take about 3 GB and a minute.
+const MOST_POINTS: f64 = 1e7;
 
 /// No rim is smaller, metres.
 const LEAST_RIM_M: f64 = 1e-3;
@@ -52,33 +56,46 @@ pub(super) struct RingPoint {
 }
 
 impl Wells {
-    pub(super) fn new(bumps: &[Bump], grid: &Grid) -> Self {
+    pub(super) fn new(bumps: &[Bump], grid: &Grid) -> Result<Self, MeshError> {
         let reach_m = REACH_STEPS * grid.step_m();
         let low = grid.place(0, 0) - Vector::repeat(reach_m);
         let high = grid.node(grid.node_count() - 1) + Vector::repeat(reach_m);
+        let on_map =
+            |at: Point| (low.x..=high.x).contains(&at.x) && (low.y..=high.y).contains(&at.y);
+        let kept: Vec<Bump> = bumps
+            .iter()
+            .map(|bump| Bump {
+                at: bump.at,
+                rim_m: bump.rim_m.max(LEAST_RIM_M),
+            })
+            .filter(|bump| on_map(bump.at) && bump.rim_m < reach_m)
+            .collect();
+        let rims = kept.iter().map(|bump| bump.rim_m);
+        let least_rim_m = rims.fold(f64::INFINITY, f64::min);
+        refuse_too_many(kept.len(), least_rim_m, reach_m)?;
         let mut index = Index::new();
-        let mut kept = Vec::new();
-        let mut least_rim_m = f64::INFINITY;
-        for bump in bumps {
-            let rim_m = bump.rim_m.max(LEAST_RIM_M);
-            let near = bump.at.x >= low.x && bump.at.x <= high.x;
-            let near = near && bump.at.y >= low.y && bump.at.y <= high.y;
-            if near && rim_m < reach_m && index.insert(spade_point(bump.at)).is_ok() {
-                least_rim_m = least_rim_m.min(rim_m);
-                kept.push(Bump { at: bump.at, rim_m });
+        let mut seen = HashSet::new();
+        for bump in &kept {
+            let coords = bump.at.coords;
+            let place = [coords.x, coords.y].map(f64::to_bits);
+            if seen.insert(place) && index.insert(spade_point(bump.at)).is_err() {
+                return Err(MeshError::Coordinate {
+                    x_m: coords.x,
+                    y_m: coords.y,
+                });
             }
         }
         let own_m = kept
             .iter()
             .map(|bump| own_radius_m(&index, bump.at))
             .collect();
-        Self {
+        Ok(Self {
             bumps: kept,
             own_m,
             index,
             reach_m,
             least_rim_m,
-        }
+        })
     }
 
     /// Radius within which rings take the place of the grid, metres.
@@ -138,6 +155,18 @@ impl Wells {
                 std::iter::once(middle).chain(rings)
             })
     }
+}
+
+fn refuse_too_many(wells: usize, least_rim_m: f64, reach_m: f64) -> Result<(), MeshError> {
+    if wells == 0 {
+        return Ok(());
+    }
+    let rings = (reach_m / least_rim_m).ln() / RING_RATIO.ln() + 2.0;
+    let most = (MOST_POINTS / (RING_POINTS as f64 * rings)) as usize;
+    if wells > most {
+        return Err(MeshError::TooManyWells { wells, most });
+    }
+    Ok(())
 }
 
 /// Half the distance from a well to the nearest other one, which is one of its

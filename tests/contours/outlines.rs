@@ -220,6 +220,11 @@ fn unusable_regions_are_refused() {
         bad.polygons = MultiPolygon(vec![Polygon::new(corners, vec![])]);
         assert!(matches!(mesh(&bad, &[]), Err(MeshError::Coordinate { .. })));
     }
+    bad.polygons = region(&[(0.0, 0.0), (900.0, 0.0), (0.0, 90.0)], &[], 1.0).polygons;
+    assert!(matches!(mesh(&bad, &[]), Err(MeshError::OutsideMap { .. })));
+    let crowd = vec![bump(50.0, 50.0, 0.1); 100_000];
+    let crowded = mesh(&good, &crowd);
+    assert!(matches!(crowded, Err(MeshError::TooManyWells { .. })));
     let bow = [(0.0, 0.0), (90.0, 80.0), (100.0, 0.0), (0.0, 100.0)];
     let crossed = mesh(&region(&bow, &[], 10.0), &[]);
     assert!(matches!(crossed, Err(MeshError::OutlineCrosses { .. })));

@@ -6,7 +6,7 @@ use std::f64::consts::PI;
 
 use geo::{Area, Coord, LineString, MultiPolygon, Polygon, Validation, Winding};
 use mirrorwell::contours::{
-    Band, Bump, ContourLine, Cuts, Region, ScalarField, mesh, round_levels, sample,
+    Band, Bump, ContourLine, Cuts, Region, ScalarField, extremes, mesh, round_levels, sample,
 };
 use mirrorwell::site::{Extent, Point};
 use rayon::prelude::*;
@@ -103,11 +103,7 @@ pub fn draw(
 ) -> Drawn {
     let mesh = mesh(region, bumps).unwrap();
     let values = sample(&mesh, field).unwrap();
-    let finite = || values.iter().copied().filter(|v| v.is_finite());
-    let (min, max) = (
-        finite().fold(f64::INFINITY, f64::min),
-        finite().fold(f64::NEG_INFINITY, f64::max),
-    );
+    let [min, max] = extremes(&values);
     let levels = match levels {
         Some(levels) => levels.to_vec(),
         None => round_levels(min, max, 1.0, None).unwrap(),
