@@ -4,7 +4,7 @@
     clippy::unwrap_used,
     clippy::panic,
     clippy::indexing_slicing,
-    reason = "helpers of tests fail loudly"
+    reason = "what tests share fails loudly too"
 )]
 
 mod fields;
