@@ -20,7 +20,7 @@ use super::source::{Place, Source, Sources};
 use super::source_map::SourceMap;
 use super::units::UnitSystem;
 use super::value::{self, Node, Value};
-use super::{Plan, aquifer, edges, map, neighbours, wells};
+use super::{Plan, aquifer, edges, map, neighbours, syntax, wells};
 
 /// The faults of a plan that cannot be read at all.
 pub(super) fn unreadable(name: &str, error: &io::Error) -> PlanFaults {
@@ -47,13 +47,8 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
         return Err(PlanFaults::new(sources, vec![fault]));
     }
     let (document, errors) = DeTable::parse_recoverable(&text);
-    if !errors.is_empty() {
-        let faults = errors
-            .iter()
-            .map(|error| syntax_fault(error, source, &text));
-        let faults = faults.collect();
-        return Err(PlanFaults::new(sources, faults));
-    }
+    let document = value::of_toml(document, source);
+    let syntax = syntax::faults(&errors, &document, source, &text);
     let reading = Reading {
         sources,
         faults: Vec::new(),
@@ -62,28 +57,13 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
         crs: None,
         layers,
     };
-    read_document(name, &value::of_toml(document, source), reading)
-}
-
-fn syntax_fault(error: &toml::de::Error, source: usize, text: &str) -> Fault {
-    let span = error.span().unwrap_or(0..0);
-    let message = error.message().trim().replace('\n', "; ");
-    let what = format!("this is not TOML: {message}");
-    let written = text.get(span.clone()).unwrap_or("");
-    let help = match message.as_str() {
-        "duplicate key" => format!(
-            "`{}` is written twice: keep one, or use [[…]] for a list",
-            shown(written)
-        ),
-        _ => "write `key = value`, texts in double quotes, lists in [ ], tables under [name]; see toml.io"
-            .to_owned(),
-    };
-    Fault::new(Place::new(source, span), what, help).label(shown(&message))
+    read_document(name, &document, syntax, reading)
 }
 
 fn read_document(
     name: &str,
     document: &Value,
+    syntax: Vec<Fault>,
     mut reading: Reading<'_>,
 ) -> Result<Plan, PlanFaults> {
     let plan = read_sections(name, document, &mut reading);
@@ -94,6 +74,7 @@ fn read_document(
         layers,
         ..
     } = reading;
+    let faults = syntax::with_others(syntax, faults, &sources);
     match plan {
         Some(plan) if faults.is_empty() => Ok(Plan {
             sha256: format!("{:x}", layers.hash.finalize()),

@@ -30,6 +30,7 @@ mod reader;
 mod schema;
 mod source;
 mod source_map;
+mod syntax;
 pub mod units;
 mod value;
 mod wells;

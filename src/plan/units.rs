@@ -283,6 +283,9 @@ pub enum UnitError {
     /// It does not begin with a number.
     #[error("it does not begin with a number")]
     NoNumber,
+    /// Its number has a comma.
+    #[error("a number has no commas, and a point before its decimals")]
+    Comma,
     /// It is a number without a unit.
     #[error("a number in quotes needs a unit")]
     NoUnit,
@@ -317,6 +320,9 @@ pub fn parse(text: &str, wanted: Dimension) -> Result<f64, UnitError> {
     if written.is_empty() {
         return Err(UnitError::NoUnit);
     }
+    if written.starts_with(',') {
+        return Err(UnitError::Comma);
+    }
     let spelling = plain_spelling(written);
     if let Some(found) = find(&spelling, wanted) {
         return Ok(number * found.si);
@@ -326,15 +332,20 @@ pub fn parse(text: &str, wanted: Dimension) -> Result<f64, UnitError> {
         .find(|dimension| find(&spelling, *dimension).is_some());
     Err(match other {
         Some(dimension) => UnitError::WrongDimension {
-            unit: written.to_owned(),
+            unit: short(written),
             measures: dimension.name(),
             wanted: wanted.name(),
         },
         None => UnitError::Unknown {
-            unit: written.to_owned(),
+            unit: short(written),
             wanted: wanted.name(),
         },
     })
+}
+
+/// Enough of a text to know it again.
+fn short(text: &str) -> String {
+    text.chars().take(40).collect()
 }
 
 fn find(spelling: &str, dimension: Dimension) -> Option<&'static Unit> {

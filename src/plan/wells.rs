@@ -11,8 +11,8 @@ use super::keys::{
 use super::layers::note_unused_columns;
 use super::names::Names;
 use super::points::Vertex;
-use super::quantities::number;
-use super::reader::{MOST_ITEMS, Reading, Section, tables};
+use super::quantities::rounded;
+use super::reader::{MOST_FAULTS, Reading, Section, tables};
 use super::source::Place;
 use super::source_map::SourceMap;
 use super::units::Dimension;
@@ -118,7 +118,7 @@ fn refuse_none(plan: &Section<'_>, reading: &mut Reading<'_>) {
     }
     let what = "the plan has no well";
     let help = "add [[well]] with `name`, `at`, `radius` and `pumping` or `injection`";
-    reading.refuse(Fault::new(plan.place, what, help));
+    reading.refuse(Fault::new(plan.place, what, help).absence());
 }
 
 /// Wells sorted by their easting are compared only while they can be near.
@@ -145,7 +145,7 @@ fn refuse_overlaps(wells: &[Placed], reading: &mut Reading<'_>) {
             };
             let fault = overlap_fault(first, second, apart, reading);
             reading.refuse(fault);
-            if reading.faults.len() > MOST_ITEMS {
+            if reading.faults.len() >= MOST_FAULTS {
                 return;
             }
         }
@@ -158,7 +158,7 @@ fn distance(a: Point, b: Point) -> f64 {
 
 fn overlap_fault(first: &Placed, second: &Placed, apart: f64, reading: &Reading<'_>) -> Fault {
     let [apart, radii] = [apart, first.0.radius.si() + second.0.radius.si()]
-        .map(|metres| number(reading.units.of_si(Dimension::Length, metres)));
+        .map(|metres| rounded(reading.units.of_si(Dimension::Length, metres), 6));
     let unit = reading.units.unit_name(Dimension::Length);
     let [one, other] = [&first.0.name, &second.0.name].map(|name| super::fault::shown(name));
     let what = format!(
