@@ -62,7 +62,7 @@ impl Source {
 }
 
 /// A piece of one of the sources.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Place {
     /// Index among the sources.
     pub(super) source: u32,

@@ -20,15 +20,16 @@ pub(super) fn faults(
     let mut values = Vec::new();
     if !errors.is_empty() {
         list_values(document, &mut values);
+        values.sort_unstable();
     }
     let mut broken = HashSet::new();
     let mut faults = Vec::new();
     for error in errors {
         let span = error.span().unwrap_or(0..0);
         let place = Place::new(source, span);
-        let inside = values
-            .iter()
-            .find(|value| value.start < place.start && place.start <= value.end);
+        let before = values.partition_point(|value: &Place| value.start < place.start);
+        let last = before.checked_sub(1).and_then(|index| values.get(index));
+        let inside = last.filter(|value| place.start <= value.end);
         // Outside of values the first error of a line counts.
         let line_start = text
             .get(..place.start as usize)
