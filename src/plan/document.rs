@@ -7,20 +7,21 @@ use std::path::Path;
 use sha2::Digest;
 use toml::de::DeTable;
 
-use crate::site::{EdgeShape, MapRequest, Place as Where, Point, Site, Vector};
+use crate::site::{EdgeShape, Place as Where, Point, Site, Vector};
 
 use super::crs::{Crs, CrsError};
 use super::fault::{Fault, PlanFaults, shown};
-use super::files::{self, LoadLayer};
+use super::files::{self, LayerStore};
 use super::keys::{CRS, CRS_TABLE, ORIGIN, PLAN_TABLE, TITLE, UNITS};
 use super::layers::Layers;
 use super::names::Names;
 use super::reader::{Reading, Section};
 use super::source::{Place, Source, Sources};
 use super::source_map::SourceMap;
+use super::syntax::{self, Syntax};
 use super::units::UnitSystem;
 use super::value::{self, Node, Value};
-use super::{Plan, aquifer, edges, map, neighbours, syntax, wells};
+use super::{Plan, aquifer, edges, map, neighbours, wells};
 
 /// The faults of a plan that cannot be read at all.
 pub(super) fn unreadable(name: &str, error: &io::Error) -> PlanFaults {
@@ -33,12 +34,12 @@ pub(super) fn unreadable(name: &str, error: &io::Error) -> PlanFaults {
 }
 
 /// Reads a plan from its bytes.
-pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<Plan, PlanFaults> {
+pub(super) fn read(name: &str, bytes: Vec<u8>, store: LayerStore<'_>) -> Result<Plan, PlanFaults> {
     if bytes.len() as u64 > files::LARGEST_FILE {
         let error = io::Error::other("it is larger than 64 MB");
         return Err(unreadable(name, &error));
     }
-    let layers = Layers::new(load, &bytes);
+    let layers = Layers::new(store, &bytes);
     let (text, bad) = files::text_of(bytes);
     let mut sources = Sources::default();
     let source = sources.add(Source::new(name.to_owned(), text.clone()));
@@ -48,7 +49,7 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
     }
     let (document, errors) = DeTable::parse_recoverable(&text);
     let document = value::of_toml(document, source);
-    let syntax = syntax::faults(&errors, &document, source, &text);
+    let syntax = syntax::check(&errors, &document, source, &text);
     let reading = Reading {
         sources,
         faults: Vec::new(),
@@ -63,7 +64,7 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
 fn read_document(
     name: &str,
     document: &Value,
-    syntax: Vec<Fault>,
+    syntax: Syntax,
     mut reading: Reading<'_>,
 ) -> Result<Plan, PlanFaults> {
     let plan = read_sections(name, document, &mut reading);
@@ -74,7 +75,7 @@ fn read_document(
         layers,
         ..
     } = reading;
-    let faults = syntax::with_others(syntax, faults, &sources);
+    let faults = syntax.with_others(faults, &sources);
     match plan {
         Some(plan) if faults.is_empty() => Ok(Plan {
             sha256: format!("{:x}", layers.hash.finalize()),
@@ -114,7 +115,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
         neighbours,
         interference_share,
         head_tolerance,
-        map: map.unwrap_or_else(MapRequest::default),
+        map: map.unwrap_or_default(),
     };
     let origin = origin_near_wells(&site);
     move_site(&mut site, -origin.coords);

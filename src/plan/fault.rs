@@ -48,6 +48,11 @@ impl Fault {
         self
     }
 
+    /// For results, which should stay small.
+    pub(super) fn boxed(self) -> Box<Self> {
+        Box::new(self)
+    }
+
     pub(super) fn related(mut self, place: Place, label: impl Into<String>) -> Self {
         self.related.push((place, label.into()));
         self

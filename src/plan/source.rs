@@ -53,10 +53,11 @@ impl Source {
         start..start + line.len()
     }
 
-    /// The nearest range that lies in the text and cuts no character.
+    /// The nearest range that lies in the text, cuts no character and, except
+    /// at the end of the text, holds one.
     pub(super) fn whole_characters(&self, range: Range<usize>) -> Range<usize> {
         let start = self.text.floor_char_boundary(range.start);
-        let end = self.text.ceil_char_boundary(range.end.max(start));
+        let end = self.text.ceil_char_boundary(range.end.max(start + 1));
         start..end
     }
 }

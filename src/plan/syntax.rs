@@ -10,13 +10,19 @@ use super::fault::{Fault, shown};
 use super::source::{Place, Sources};
 use super::value::{Node, Value};
 
+/// What is no TOML, and the values it stands in.
+pub(super) struct Syntax {
+    faults: Vec<Fault>,
+    broken_values: Vec<Place>,
+}
+
 /// The faults of a TOML text; `document` is what could be made of it.
-pub(super) fn faults(
+pub(super) fn check(
     errors: &[toml::de::Error],
     document: &Value,
     source: usize,
     text: &str,
-) -> Vec<Fault> {
+) -> Syntax {
     let mut values = Vec::new();
     if !errors.is_empty() {
         list_values(document, &mut values);
@@ -38,7 +44,11 @@ pub(super) fn faults(
             faults.push(fault(error, place, inside.copied(), text));
         }
     }
-    faults
+    let broken_values = broken.into_iter().filter_map(|(value, _)| value.copied());
+    Syntax {
+        faults,
+        broken_values: broken_values.collect(),
+    }
 }
 
 /// The places of all values that are no tables.
@@ -94,23 +104,31 @@ fn plain_message(error: &toml::de::Error, place: Place, text: &str) -> String {
     error.message().trim().replace('\n', "; ")
 }
 
-/// The faults of syntax, and of the others those that do not follow from
-/// them: nothing is missed where something could not be read, and a line of
-/// broken syntax is not faulted twice.
-pub(super) fn with_others(syntax: Vec<Fault>, others: Vec<Fault>, sources: &Sources) -> Vec<Fault> {
-    if syntax.is_empty() {
-        return others;
+impl Syntax {
+    /// The faults of syntax, and of the others those that do not follow from
+    /// them: nothing is missed where something could not be read, and a
+    /// broken value or line is not faulted twice.
+    pub(super) fn with_others(self, others: Vec<Fault>, sources: &Sources) -> Vec<Fault> {
+        if self.faults.is_empty() {
+            return others;
+        }
+        let line = |place: Place| (place.source, sources.locate(place).line);
+        let places = self.faults.iter().map(|fault| fault.place);
+        let lines: HashSet<_> = places
+            .chain(self.broken_values.iter().copied())
+            .map(line)
+            .collect();
+        let values = self.broken_values;
+        let in_broken_value = |place: Place| {
+            let holds = |value: &Place| value.start <= place.start && place.start <= value.end;
+            values
+                .iter()
+                .any(|value| value.source == place.source && holds(value))
+        };
+        let follows = |fault: &Fault| {
+            fault.is_absence || lines.contains(&line(fault.place)) || in_broken_value(fault.place)
+        };
+        let others = others.into_iter().filter(|fault| !follows(fault));
+        self.faults.iter().cloned().chain(others).collect()
     }
-    let line = |place: Place| {
-        let location = sources.locate(place);
-        (place.source, location.line)
-    };
-    let marked = |fault: &Fault| {
-        let related = fault.related.iter().map(|(place, _)| *place);
-        related.chain([fault.place]).collect::<Vec<_>>()
-    };
-    let broken: HashSet<_> = syntax.iter().flat_map(marked).map(line).collect();
-    let follows = |fault: &Fault| fault.is_absence || broken.contains(&line(fault.place));
-    let others = others.into_iter().filter(|fault| !follows(fault));
-    syntax.iter().cloned().chain(others).collect()
 }
