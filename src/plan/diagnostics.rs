@@ -12,6 +12,7 @@ use annotate_snippets::{
 };
 
 use super::fault::{Fault, PlanFaults};
+use super::reader::MOST_FAULTS;
 use super::source::{Place, Source};
 
 /// More faults than this are counted, not shown.
@@ -39,8 +40,14 @@ impl PlanFaults {
             .map(|fault| renderer.render(&[self.report(fault)]))
             .collect();
         let hidden = self.faults.len().saturating_sub(MOST_SHOWN);
+        // The reader stops collecting at some number.
+        let at_least = if self.faults.len() == MOST_FAULTS {
+            "at least "
+        } else {
+            ""
+        };
         if hidden > 0 {
-            pages.push(format!("and {hidden} more faults"));
+            pages.push(format!("and {at_least}{hidden} more faults"));
         }
         pages.join("\n\n")
     }

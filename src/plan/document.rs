@@ -107,6 +107,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
     let head_tolerance = map::read_accuracy(&plan, reading);
 
     let (aquifer, material) = aquifer?;
+    wells::refuse_beyond_influence(&aquifer, &wells, &source_map, reading);
     let mut site = Site {
         aquifer,
         ambient,

@@ -60,13 +60,13 @@ fn read_shape(section: &Section<'_>, reading: &mut Reading<'_>) -> Option<EdgeSh
     if section.value(&CIRCLE).is_some() {
         return read_circle(section, reading);
     }
-    let (key, place, vertices) = if let Some(value) = section.value(&LINE) {
-        (&LINE, value.place, section.points(&LINE, reading)?)
+    let (place, vertices) = if let Some(value) = section.value(&LINE) {
+        (value.place, section.points(&LINE, reading)?)
     } else {
         let vertices = read_layer_line(section, reading)?;
-        (&FEATURE, section.value(&FEATURE)?.place, vertices)
+        (section.value(&FEATURE)?.place, vertices)
     };
-    let sound = section.sound_line(key, place, vertices, reading)?;
+    let sound = section.sound_line(&LINE, place, vertices, reading)?;
     Some(EdgeShape::Line(
         sound.iter().map(|vertex| vertex.at).collect(),
     ))

@@ -86,7 +86,7 @@ impl PlanFaults {
         Self { sources, faults }
     }
 
-    /// How many there are; at least one.
+    /// How many there are; at least one. A thousand are kept at most.
     pub fn count(&self) -> usize {
         self.faults.len()
     }

@@ -61,7 +61,7 @@ impl Feature {
     ) -> Result<Option<Geometry>, Box<Fault>> {
         let written = self.geometry.as_ref();
         let kind = written.and_then(|value| value.get("type"));
-        let name = kind.and_then(Value::text).unwrap_or("none");
+        let name = kind.and_then(Value::text).unwrap_or("");
         let place = kind.map_or(self.place, |kind| kind.place);
         let coordinates = written.and_then(|value| value.get("coordinates"));
         let Some(coordinates) = coordinates else {
@@ -109,10 +109,11 @@ impl Feature {
     fn wrong_geometry(&self, place: Place, name: &str, wanted: Wanted) -> Box<Fault> {
         let types = wanted.types().join(" or ");
         let name = shown(name);
-        let what = format!(
-            "{} must be a {types}, but its geometry is {name}",
-            self.title
-        );
+        let has = match name.as_str() {
+            "" => "it has no geometry".to_owned(),
+            name => format!("its geometry is {name}"),
+        };
+        let what = format!("{} must be a {types}, but {has}", self.title);
         let help = match (name.as_str(), wanted) {
             ("Polygon" | "MultiPolygon", Wanted::Line) => {
                 "export the polygon's outline as a line, or write it as `circle` or `line`"

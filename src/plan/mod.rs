@@ -40,13 +40,15 @@ use std::path::Path;
 use crate::site::{Point, Refusal, Site, Subject};
 
 use crs::{Crs, CrsError};
+use fault::Fault;
 use files::LayerStore;
+use source::Sources;
 use source_map::SourceMap;
 
-pub use fault::{Fault, ListedFault, PlanFaults};
+pub use fault::{ListedFault, PlanFaults};
 pub use materials::{ConductivityRange, Material, ShareRange, materials};
 pub use schema::schema;
-pub use source::{Location, Place, Source, Sources};
+pub use source::Location;
 pub use units::{Dimension, UnitSystem};
 
 /// A plan that was read without a fault.

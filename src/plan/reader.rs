@@ -13,7 +13,7 @@ use super::value::{Entry, Node, Value};
 pub(super) const MOST_ITEMS: usize = 20_000;
 
 /// More faults than this help nobody.
-pub(super) const MOST_FAULTS: usize = 10_000;
+pub(super) const MOST_FAULTS: usize = 1_000;
 
 /// What is known and found while a plan is read.
 pub(super) struct Reading<'l> {
@@ -178,7 +178,8 @@ impl<'v> Section<'v> {
     fn unknown_entries(&self) -> impl Iterator<Item = &'v Entry> {
         let known = self.table.keys;
         let is_known = move |entry: &&Entry| known.iter().any(|key| key.name == entry.key);
-        self.entries.iter().filter(move |entry| !is_known(entry))
+        let unknown = self.entries.iter().filter(move |entry| !is_known(entry));
+        unknown.take(MOST_FAULTS)
     }
 
     fn refuse_unknown_keys(&self, reading: &mut Reading<'_>) {

@@ -1,8 +1,8 @@
 //! Reads `[[well]]` and `[[well_layer]]`.
 
-use crate::site::{Length, Level, Point, Rate, Well, WellLoss};
+use crate::site::{Aquifer, Length, Level, Point, Rate, Subject, Well, WellLoss};
 
-use super::fault::Fault;
+use super::fault::{Fault, shown};
 use super::features::{Geometry, Wanted};
 use super::keys::{
     AT, FEATURE, FILE, GROUND, INJECTION, LAYER, LOWEST_LEVEL, PUMPING, RADIUS, WELL,
@@ -112,6 +112,36 @@ fn read_well(
     Some((well, at.place))
 }
 
+/// Within its own rim a well's drawdown would be negative.
+pub(super) fn refuse_beyond_influence(
+    aquifer: &Aquifer,
+    wells: &[Well],
+    map: &SourceMap,
+    reading: &mut Reading<'_>,
+) {
+    // Where a well is at fault, the places no longer match the wells.
+    let Some(influence) = aquifer
+        .influence_radius
+        .filter(|_| map.wells.len() == wells.len())
+    else {
+        return;
+    };
+    let wide = |(_, well): &(usize, &Well)| well.radius >= influence;
+    for (index, well) in wells.iter().enumerate().filter(wide) {
+        let [radius, influence] = [well.radius, influence]
+            .map(|length| rounded(reading.units.of_si(Dimension::Length, length.si()), 6));
+        let unit = reading.units.unit_name(Dimension::Length);
+        let what = format!(
+            "well `{}`: `radius` is {radius} {unit}, not below `influence_radius`, {influence} {unit}",
+            shown(&well.name)
+        );
+        let help = "check both: the influence of a well reaches far beyond its borehole";
+        let fault = Fault::new(map.find(&Subject::Well(index, Some("radius"))), what, help);
+        let influence_place = map.find(&Subject::Aquifer(Some("influence_radius")));
+        reading.refuse(fault.related(influence_place, "the influence radius"));
+    }
+}
+
 fn refuse_none(plan: &Section<'_>, reading: &mut Reading<'_>) {
     if plan.value(&WELL).is_some() || plan.value(&WELL_LAYER).is_some() {
         return;
@@ -160,7 +190,7 @@ fn overlap_fault(first: &Placed, second: &Placed, apart: f64, reading: &Reading<
     let [apart, radii] = [apart, first.0.radius.si() + second.0.radius.si()]
         .map(|metres| rounded(reading.units.of_si(Dimension::Length, metres), 6));
     let unit = reading.units.unit_name(Dimension::Length);
-    let [one, other] = [&first.0.name, &second.0.name].map(|name| super::fault::shown(name));
+    let [one, other] = [&first.0.name, &second.0.name].map(|name| shown(name));
     let what = format!(
         "wells `{one}` and `{other}` are {apart} {unit} apart, less than the sum of their radii, {radii} {unit}"
     );

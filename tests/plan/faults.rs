@@ -205,6 +205,13 @@ fn wells_and_neighbours() {
         ("overlapping wells", with(second)),
         ("no well", spoilt("[[well]]", "[[barrier]]")),
         (
+            "a well wider than its influence",
+            spoilt(
+                "transmissivity = 800.0",
+                "transmissivity = 800.0\ninfluence_radius = 0.1"
+            )
+        ),
+        (
             "a neighbour named as a well",
             with("[[neighbour]]\nname = \"PW-1\"\nat = [412900, 5361300]\n")
         ),
