@@ -49,6 +49,12 @@ impl Boundary {
             for coordinate in ring {
                 let point = Point::new(coordinate.x, coordinate.y);
                 let vertex = vertices.join(point)?;
+                if grid.is_far_from(point) {
+                    return Err(MeshError::OutsideMap {
+                        x_m: point.x,
+                        y_m: point.y,
+                    });
+                }
                 if let Some(start) = previous.filter(|&start| start != vertex) {
                     pieces.push([start, vertex]);
                 }

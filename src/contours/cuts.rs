@@ -291,8 +291,9 @@ impl<'a> Cuts<'a> {
     }
 }
 
-/// Smallest and largest of the values that are numbers.
-fn extremes(values: &[f64]) -> [f64; 2] {
+/// Smallest and largest of the values that are numbers, as
+/// [`sample`](super::sample) gives them; ∞ and −∞ where there are none.
+pub fn extremes(values: &[f64]) -> [f64; 2] {
     let numbers = values.iter().filter(|value| !value.is_nan());
     numbers.fold([f64::INFINITY, f64::NEG_INFINITY], |[low, high], &value| {
         [low.min(value), high.max(value)]

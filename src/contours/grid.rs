@@ -60,6 +60,14 @@ impl Grid {
         })
     }
 
+    /// Whether a place is farther from the map than the map is large.
+    pub(super) fn is_far_from(&self, point: Point) -> bool {
+        let width_m = self.step_x_m * self.cell_columns() as f64;
+        let height_m = self.step_y_m * self.cell_rows() as f64;
+        let away = |offset: f64, length: f64| (offset / length - 0.5).abs() > 1.5;
+        away(point.x - self.min.x, width_m) || away(point.y - self.min.y, height_m)
+    }
+
     /// The larger of the two steps.
     pub(super) fn step_m(&self) -> f64 {
         self.step_x_m.max(self.step_y_m)

@@ -102,7 +102,8 @@ pub fn round_levels(
     }
     let (first, last) = bounds(min, max, interval);
     let count = last - first + 1.0;
-    if count > MOST_LEVELS {
+    // An interval that underflows the division leaves no number.
+    if count.is_nan() || count > MOST_LEVELS {
         let workable = default_step(min, max);
         let (low, high) = bounds(min, max, workable);
         return Err(LevelError::TooMany {
@@ -127,14 +128,24 @@ fn bounds(min: f64, max: f64, step: f64) -> (f64, f64) {
 /// The multiples of a step strictly between two extremes, times the unit.
 fn multiples(min: f64, max: f64, step: f64, unit: f64) -> Vec<f64> {
     let (first, last) = bounds(min, max, step);
-    let mut levels = Vec::new();
-    let mut index = first;
-    while index <= last {
-        levels.push(index * step * unit);
-        index += 1.0;
-    }
+    // Negative where there are none, which the cast takes to zero.
+    let count = (last - first + 1.0) as usize;
+    let (digits, scale) = decimal(step);
+    let mut levels: Vec<f64> = (0..count)
+        .map(|index| (first + index as f64) * digits / scale * unit)
+        .collect();
     levels.dedup();
     levels
+}
+
+/// A step as a whole number over a power of ten, where it is one: 3 · 1 / 10
+/// is the 0.3 that people write, 3 · 0.1 is not.
+fn decimal(step: f64) -> (f64, f64) {
+    (0..=12)
+        .map(|exponent| 10f64.powi(exponent))
+        .map(|scale| ((step * scale).round(), scale))
+        .find(|&(digits, scale)| digits >= 1.0 && (step * scale - digits).abs() < 1e-9 * digits)
+        .unwrap_or((step, 1.0))
 }
 
 /// The coarsest round step with at least ten levels between the extremes.
@@ -142,12 +153,7 @@ fn default_step(min: f64, max: f64) -> f64 {
     let decade = (max - min).log10().floor();
     for exponent in [decade, decade - 1.0, decade - 2.0] {
         for digit in [5.0, 2.5, 2.0, 1.0] {
-            // A division by a whole power keeps 0.1, 0.2, … as decimals read.
-            let step = if exponent < 0.0 {
-                digit / 10f64.powf(-exponent)
-            } else {
-                digit * 10f64.powf(exponent)
-            };
+            let step = digit * 10f64.powf(exponent);
             let (first, last) = bounds(min, max, step);
             if last - first + 1.0 >= FEWEST_LEVELS {
                 return step;
@@ -176,10 +182,7 @@ mod tests {
         }
         assert_eq!(
             round_levels(0.0, 1.1, 1.0, None).unwrap(),
-            [0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.9, 1.0].map(|level: f64| {
-                // The nearest multiple of 0.1, as the function forms it.
-                (level * 10.0).round() * 0.1
-            })
+            [0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.9, 1.0]
         );
     }
 
@@ -218,5 +221,7 @@ mod tests {
         assert!(round_levels(0.0, 1.0, 1.0, Some(0.0)).is_err());
         assert!(round_levels(0.0, 1.0, 1.0, Some(f64::NAN)).is_err());
         assert!(round_levels(0.0, 1.0, 0.0, None).is_err());
+        assert!(round_levels(1e300, 1e300, 1.0, Some(1e-300)).is_err());
+        assert!(round_levels(1e20, 1e20 + 1e5, 1.0, Some(1e3)).is_ok());
     }
 }

@@ -72,7 +72,7 @@ pub struct Mesh {
 /// Where the extent, the spacing or the outline is unusable.
 pub fn mesh(region: &Region, bumps: &[Bump]) -> Result<Mesh, MeshError> {
     let grid = Grid::over(region)?;
-    let wells = Wells::new(bumps, &grid);
+    let wells = Wells::new(bumps, &grid)?;
     let boundary = Boundary::new(&region.polygons, &grid, &wells)?;
     let cells = classify(&grid, &boundary, &wells);
     let special = Special::triangulate(&grid, &cells, &boundary, &wells)?;

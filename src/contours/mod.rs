@@ -31,7 +31,7 @@ mod roots;
 mod special;
 
 pub use bands::{Band, area_below};
-pub use cuts::Cuts;
+pub use cuts::{Cuts, extremes};
 pub use levels::{LevelError, round_levels};
 pub use lines::ContourLine;
 pub use mesh::{Mesh, mesh, sample};
@@ -103,6 +103,23 @@ pub enum MeshError {
     /// Two parts of the outline cross.
     #[error("the aquifer's outline crosses itself near x = {x_m} m, y = {y_m} m")]
     OutlineCrosses {
+        /// East, site metres.
+        x_m: f64,
+        /// North, site metres.
+        y_m: f64,
+    },
+    /// More wells than can have rings.
+    #[error("{wells} wells are too many to contour at this spacing: at most about {most} fit")]
+    TooManyWells {
+        /// Wells on the map.
+        wells: usize,
+        /// Wells of such rims that fit.
+        most: usize,
+    },
+    /// A vertex of the outline lies farther from the map than the map is
+    /// large: the aquifer was not cut to the map.
+    #[error("the aquifer's outline leaves the map: x = {x_m} m, y = {y_m} m")]
+    OutsideMap {
         /// East, site metres.
         x_m: f64,
         /// North, site metres.

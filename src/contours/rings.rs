@@ -5,12 +5,13 @@
 //! rim to the spacing of the grid, and every contour round a well has at least
 //! 48 vertices however small it is.
 
+use std::collections::HashSet;
 use std::f64::consts::TAU;
 
 use spade::{DelaunayTriangulation, HierarchyHintGenerator, Point2, Triangulation};
 
-use super::Bump;
 use super::grid::Grid;
+use super::{Bump, MeshError};
 use crate::site::{Point, Vector};
 
 /// Points on a ring. Departure from theory: tuned for looks, a 24-gon's
@@ -21,8 +22,12 @@ const RING_POINTS: usize = 24;
 /// rings are about as tall as wide.
 const RING_RATIO: f64 = 1.3;
 
-/// Rings end at this many steps of the grid.
-const REACH_STEPS: f64 = 1.2;
+/// Rings end at this many steps of the grid, where their points are nearly as
+/// far apart as its nodes.
+const REACH_STEPS: f64 = 2.5;
+
+/// Most points of rings; they take about 3 GB and a minute.
+const MOST_POINTS: f64 = 1e7;
 
 /// No rim is smaller, metres.
 const LEAST_RIM_M: f64 = 1e-3;
@@ -36,6 +41,8 @@ type Index = DelaunayTriangulation<Point2<f64>, (), (), (), HierarchyHintGenerat
 /// smaller than the reach of rings.
 pub(super) struct Wells {
     bumps: Vec<Bump>,
+    /// By well: the radius within which no point is nearer to another well.
+    own_m: Vec<f64>,
     index: Index,
     reach_m: f64,
     least_rim_m: f64,
@@ -49,28 +56,46 @@ pub(super) struct RingPoint {
 }
 
 impl Wells {
-    pub(super) fn new(bumps: &[Bump], grid: &Grid) -> Self {
+    pub(super) fn new(bumps: &[Bump], grid: &Grid) -> Result<Self, MeshError> {
         let reach_m = REACH_STEPS * grid.step_m();
         let low = grid.place(0, 0) - Vector::repeat(reach_m);
         let high = grid.node(grid.node_count() - 1) + Vector::repeat(reach_m);
+        let on_map =
+            |at: Point| (low.x..=high.x).contains(&at.x) && (low.y..=high.y).contains(&at.y);
+        let kept: Vec<Bump> = bumps
+            .iter()
+            .map(|bump| Bump {
+                at: bump.at,
+                rim_m: bump.rim_m.max(LEAST_RIM_M),
+            })
+            .filter(|bump| on_map(bump.at) && bump.rim_m < reach_m)
+            .collect();
+        let rims = kept.iter().map(|bump| bump.rim_m);
+        let least_rim_m = rims.fold(f64::INFINITY, f64::min);
+        refuse_too_many(kept.len(), least_rim_m, reach_m)?;
         let mut index = Index::new();
-        let mut kept = Vec::new();
-        let mut least_rim_m = f64::INFINITY;
-        for bump in bumps {
-            let rim_m = bump.rim_m.max(LEAST_RIM_M);
-            let near = bump.at.x >= low.x && bump.at.x <= high.x;
-            let near = near && bump.at.y >= low.y && bump.at.y <= high.y;
-            if near && rim_m < reach_m && index.insert(spade_point(bump.at)).is_ok() {
-                least_rim_m = least_rim_m.min(rim_m);
-                kept.push(Bump { at: bump.at, rim_m });
+        let mut seen = HashSet::new();
+        for bump in &kept {
+            let coords = bump.at.coords;
+            let place = [coords.x, coords.y].map(f64::to_bits);
+            if seen.insert(place) && index.insert(spade_point(bump.at)).is_err() {
+                return Err(MeshError::Coordinate {
+                    x_m: coords.x,
+                    y_m: coords.y,
+                });
             }
         }
-        Self {
+        let own_m = kept
+            .iter()
+            .map(|bump| own_radius_m(&index, bump.at))
+            .collect();
+        Ok(Self {
             bumps: kept,
+            own_m,
             index,
             reach_m,
             least_rim_m,
-        }
+        })
     }
 
     /// Radius within which rings take the place of the grid, metres.
@@ -109,33 +134,61 @@ impl Wells {
     /// its neighbours; leaves out points that another well's rings serve
     /// better.
     pub(super) fn points(&self) -> impl Iterator<Item = RingPoint> + '_ {
-        self.bumps.iter().flat_map(move |bump| {
-            let middle = RingPoint {
-                at: bump.at,
-                step_m: RING_STEP * bump.rim_m,
-            };
-            let radii = std::iter::successors(Some(bump.rim_m), |radius| Some(radius * RING_RATIO))
-                .take_while(|&radius| radius <= self.reach_m)
-                .enumerate();
-            let rings = radii.flat_map(move |(ring, radius)| {
-                self.ring(bump.at, radius, if ring % 2 == 0 { 0.0 } else { 0.5 })
-            });
-            std::iter::once(middle).chain(rings)
-        })
+        self.bumps
+            .iter()
+            .zip(&self.own_m)
+            .flat_map(move |(bump, &own_m)| {
+                let middle = RingPoint {
+                    at: bump.at,
+                    step_m: RING_STEP * bump.rim_m,
+                };
+                let radii =
+                    std::iter::successors(Some(bump.rim_m), |radius| Some(radius * RING_RATIO))
+                        .take_while(|&radius| radius <= self.reach_m)
+                        .enumerate();
+                let rings = radii.flat_map(move |(number, radius)| {
+                    let turn = if number % 2 == 0 { 0.0 } else { 0.5 };
+                    ring(bump.at, radius, turn).filter(move |point| {
+                        radius <= own_m || self.distance_m(point.at) >= 0.85 * radius
+                    })
+                });
+                std::iter::once(middle).chain(rings)
+            })
     }
+}
 
-    fn ring(&self, centre: Point, radius: f64, turn: f64) -> impl Iterator<Item = RingPoint> + '_ {
-        (0..RING_POINTS)
-            .map(move |number| {
-                let angle = (number as f64 + turn) * RING_STEP;
-                centre + Vector::new(angle.cos(), angle.sin()) * radius
-            })
-            .filter(move |&at| self.distance_m(at) >= 0.85 * radius)
-            .map(move |at| RingPoint {
-                at,
-                step_m: RING_STEP * radius,
-            })
+fn refuse_too_many(wells: usize, least_rim_m: f64, reach_m: f64) -> Result<(), MeshError> {
+    if wells == 0 {
+        return Ok(());
     }
+    let rings = (reach_m / least_rim_m).ln() / RING_RATIO.ln() + 2.0;
+    let most = (MOST_POINTS / (RING_POINTS as f64 * rings)) as usize;
+    if wells > most {
+        return Err(MeshError::TooManyWells { wells, most });
+    }
+    Ok(())
+}
+
+/// Half the distance from a well to the nearest other one, which is one of its
+/// neighbours in the Delaunay triangulation of all wells.
+fn own_radius_m(index: &Index, at: Point) -> f64 {
+    let well = index.nearest_neighbor(spade_point(at));
+    let neighbours = well.into_iter().flat_map(|well| well.out_edges());
+    neighbours
+        .map(|edge| edge.to().position())
+        .map(|other| 0.5 * (other.x - at.x).hypot(other.y - at.y))
+        .fold(f64::INFINITY, f64::min)
+}
+
+/// The points of one ring.
+fn ring(centre: Point, radius: f64, turn: f64) -> impl Iterator<Item = RingPoint> {
+    (0..RING_POINTS).map(move |number| {
+        let angle = (number as f64 + turn) * RING_STEP;
+        RingPoint {
+            at: centre + Vector::new(angle.cos(), angle.sin()) * radius,
+            step_m: RING_STEP * radius,
+        }
+    })
 }
 
 /// A point as the triangulation takes it: it refuses numbers that are closer

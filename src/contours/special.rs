@@ -143,10 +143,7 @@ impl Special {
         }
         Ok(edges
             .into_iter()
-            .map(|edge| {
-                let edge = self.triangulation.directed_edge(edge);
-                sorted(edge.from().index(), edge.to().index())
-            })
+            .map(|edge| ends(self.triangulation.directed_edge(edge)))
             .collect())
     }
 
@@ -169,18 +166,7 @@ impl Special {
         while let Some((edge, label)) = waiting.pop_front() {
             let edge = self.triangulation.directed_edge(edge);
             let across = edge.rev();
-            let pair = sorted(edge.from().index(), edge.to().index());
-            let turned = label
-                ^ (if self.outline.contains(&pair) {
-                    INSIDE
-                } else {
-                    0
-                })
-                ^ (if self.borders.contains_key(&pair) {
-                    REGULAR
-                } else {
-                    0
-                });
+            let turned = label ^ self.turn(edge);
             let slot = labels.get_mut(across.face().index());
             let Some(slot @ None) = slot else { continue };
             *slot = Some(turned);
@@ -189,6 +175,25 @@ impl Special {
             }
         }
         self.labels = labels.into_iter().map(|label| label.unwrap_or(0)).collect();
+    }
+
+    /// What changes across an edge.
+    fn turn(&self, edge: Edge<'_>) -> u8 {
+        if !edge.is_constraint_edge() {
+            return 0;
+        }
+        let ends = ends(edge);
+        let outline = if self.outline.contains(&ends) {
+            INSIDE
+        } else {
+            0
+        };
+        let border = if self.borders.contains_key(&ends) {
+            REGULAR
+        } else {
+            0
+        };
+        outline ^ border
     }
 
     /// Whether a face is a special triangle of the aquifer.
@@ -229,9 +234,16 @@ impl Special {
     }
 
     fn bounds(&self, edge: Edge<'_>) -> bool {
-        let pair = sorted(edge.from().index(), edge.to().index());
-        self.holds(edge.face().index()) && self.outline.contains(&pair)
+        // The cheap questions first: few edges are constraints.
+        edge.is_constraint_edge()
+            && self.outline.contains(&ends(edge))
+            && self.holds(edge.face().index())
     }
+}
+
+/// The vertices of an edge, the smaller first.
+fn ends(edge: Edge<'_>) -> [usize; 2] {
+    sorted(edge.from().index(), edge.to().index())
 }
 
 /// Two numbers, the smaller first.

@@ -8,6 +8,7 @@ mod findings_json;
 pub mod geojson;
 mod image_wells;
 mod interference_csv;
+mod map_svg;
 mod neighbours;
 mod units;
 mod wells;
@@ -17,6 +18,7 @@ mod write;
 pub use caution::CAUTION;
 pub use contours::Levels;
 pub use interference_csv::safe_cell;
+pub use map_svg::map_svg;
 pub use units::{Properties, Units, number};
 pub use write::{OutputFile, WriteError, write_all};
 

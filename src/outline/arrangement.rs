@@ -9,7 +9,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::scene::Scene;
-use super::stroke::{Stroke, TOUCH_M, contacts, tolerance_at};
+use super::stroke::{Stroke, TOUCH_M, contacts, pairs, tolerance_at};
 use crate::site::{Point, Vector};
 
 /// One side of a piece of a stroke.
@@ -172,15 +172,16 @@ fn pieces(strokes: &[Stroke], nodes: &mut Nodes) -> Vec<HalfEdge> {
                 .collect()
         })
         .collect();
-    for (index, first) in strokes.iter().enumerate() {
-        for (other, second) in strokes.iter().enumerate().skip(index + 1) {
-            for contact in contacts(first, second) {
-                let node = nodes.at(contact.at);
-                let sides = [(index, contact.on_first), (other, contact.on_second)];
-                for (stroke, along) in sides {
-                    if let Some(cuts) = cuts.get_mut(stroke) {
-                        cuts.push((along, node));
-                    }
+    for (index, other) in pairs(strokes) {
+        let (Some(first), Some(second)) = (strokes.get(index), strokes.get(other)) else {
+            continue;
+        };
+        for contact in contacts(first, second) {
+            let node = nodes.at(contact.at);
+            let sides = [(index, contact.on_first), (other, contact.on_second)];
+            for (stroke, along) in sides {
+                if let Some(cuts) = cuts.get_mut(stroke) {
+                    cuts.push((along, node));
                 }
             }
         }
@@ -190,13 +191,13 @@ fn pieces(strokes: &[Stroke], nodes: &mut Nodes) -> Vec<HalfEdge> {
     for (stroke, mut cuts) in strokes.iter().zip(cuts) {
         cuts.sort_by(|a, b| a.0.total_cmp(&b.0));
         cuts.dedup_by_key(|cut| cut.1);
-        let ends = cuts.iter().map(|cut| cut.1);
+        let mut ends = cuts.iter().map(|cut| cut.1);
         for (from, to) in ends.clone().zip(ends.clone().skip(1)) {
             if known.insert((from.min(to), from.max(to))) {
                 halves.extend(pair(stroke, from, Some(to)));
             }
         }
-        if let (Some(last), None) = (ends.last(), stroke.end()) {
+        if let (Some(last), None) = (ends.next_back(), stroke.end()) {
             halves.extend(pair(stroke, last, None));
         }
     }

@@ -1,33 +1,34 @@
 //! Checks that the drawn edges neither lie on one another nor cross
 //! themselves.
 
+use std::collections::BTreeMap;
+
 use super::error::OutlineError;
 use super::names;
-use super::stroke::{Contact, Role, Stroke, contacts};
+use super::stroke::{Contact, Role, Stroke, contacts, pairs};
 use crate::site::Site;
 
 /// The faults of the edges as drawn, at most one for each pair of edges.
 pub(super) fn faults(site: &Site, strokes: &[Stroke]) -> Vec<OutlineError> {
-    let mut found: Vec<(usize, usize)> = Vec::new();
-    let mut errors = Vec::new();
-    for (index, first) in strokes.iter().enumerate() {
-        for (step, second) in strokes.iter().skip(index + 1).enumerate() {
-            let pair = (first.edge, second.edge);
-            if both_of_one_circle(first, second) || found.contains(&pair) {
-                continue;
-            }
-            let error = if first.edge == second.edge {
-                crossing_itself(site, strokes, index, index + 1 + step)
-            } else {
-                overlap(site, first, second)
-            };
-            if let Some(error) = error {
-                found.push(pair);
-                errors.push(error);
-            }
+    let mut found: BTreeMap<(usize, usize), OutlineError> = BTreeMap::new();
+    for (first, second) in pairs(strokes) {
+        let (Some(one), Some(other)) = (strokes.get(first), strokes.get(second)) else {
+            continue;
+        };
+        let edges = (one.edge, other.edge);
+        if both_of_one_circle(one, other) || found.contains_key(&edges) {
+            continue;
+        }
+        let error = if one.edge == other.edge {
+            crossing_itself(site, strokes, first, second)
+        } else {
+            overlap(site, one, other)
+        };
+        if let Some(error) = error {
+            found.insert(edges, error);
         }
     }
-    errors
+    found.into_values().collect()
 }
 
 fn both_of_one_circle(first: &Stroke, second: &Stroke) -> bool {

@@ -32,10 +32,14 @@ pub enum OutlineError {
         part: Named,
     },
     /// The ratio of principal conductivities makes no sense.
-    #[error("the anisotropy ratio is {ratio}, and it must be a finite number of 1 or more")]
+    #[error(
+        "the anisotropy ratio is {ratio} and its azimuth {azimuth_deg}; the ratio must be 1 or more and both finite"
+    )]
     WildAnisotropy {
         /// The ratio given.
         ratio: f64,
+        /// The azimuth given.
+        azimuth_deg: f64,
     },
     /// A clogged river bank needs another method.
     #[error("{river} has a bank resistance of {days} days, which no closed form covers")]
@@ -229,7 +233,9 @@ impl OutlineError {
                 "write finite coordinates in the plan's coordinate system".to_owned()
             }
             Self::WildAnisotropy { .. } => {
-                "write the largest over the smallest conductivity, such as ratio = 3.0".to_owned()
+                "write the largest over the smallest conductivity and the azimuth of the \
+                 largest, such as { ratio = 3.0, azimuth = 40.0 }"
+                    .to_owned()
             }
             Self::BankResistance { .. } => "remove `bank_resistance`: the river then gives more \
                  water than a clogged one would, which overstates heads near it"

@@ -51,3 +51,38 @@ fn rotate_to_widest_gap(angles: &mut [(f64, usize)]) {
         angles.rotate_left(start);
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::outline::stroke::Role;
+    use crate::site::Point;
+
+    fn headings(degrees: &[f64]) -> Vec<usize> {
+        let along = |degrees: &f64| {
+            let (sin, cos) = degrees.to_radians().sin_cos();
+            let ends = [Point::origin(), Point::new(cos, sin)];
+            Stroke::between(0, Role::Given, (0, 1), ends)
+        };
+        let mut strokes: Vec<Stroke> = degrees.iter().map(along).collect();
+        assign(&mut strokes, 1e-6);
+        strokes.iter().map(|stroke| stroke.heading).collect()
+    }
+
+    #[test]
+    fn opposite_directions_share_a_heading_across_the_ends_of_the_range() {
+        let found = headings(&[0.0, 180.0, 1e-7, -1e-7, 179.9999999, 90.0, -90.0, 1e-3]);
+        assert!(found[..5].iter().all(|heading| *heading == found[0]));
+        assert_eq!(found[5], found[6]);
+        assert_ne!(found[0], found[5]);
+        assert_ne!(found[0], found[7]);
+    }
+
+    #[test]
+    fn no_heading_is_wider_than_the_tolerance() {
+        // Steps of 0.4 tolerances: three directions to a heading at most.
+        let step = 0.4e-6_f64.to_degrees();
+        let degrees: Vec<f64> = (0..9).map(|index| 30.0 + step * f64::from(index)).collect();
+        assert_eq!(headings(&degrees), [0, 0, 0, 1, 1, 1, 2, 2, 2]);
+    }
+}

@@ -3,10 +3,10 @@
 use super::error::{Named, OutlineError};
 use super::names;
 use super::scene::{edge_places, neighbour_places};
-use crate::site::{EdgeKind, Point, Site};
+use crate::site::{Anisotropy, EdgeKind, Point, Site};
 
 /// Largest coordinate in the local frame, metres.
-const FARTHEST_M: f64 = 1e8;
+pub(super) const FARTHEST_M: f64 = 1e8;
 
 /// Capabilities that a plan asks for and the closed forms do not have.
 pub(super) fn not_covered(site: &Site) -> Vec<OutlineError> {
@@ -56,12 +56,10 @@ pub(super) fn wild_numbers(site: &Site) -> Vec<OutlineError> {
         .filter(is_wild)
         .map(|(part, _)| OutlineError::WildCoordinate { part })
         .collect();
-    let ratio = site
-        .aquifer
-        .anisotropy
-        .map_or(1.0, |anisotropy| anisotropy.ratio);
-    if !(ratio.is_finite() && ratio >= 1.0) {
-        errors.push(OutlineError::WildAnisotropy { ratio });
+    if let Some(Anisotropy { ratio, azimuth_deg }) = site.aquifer.anisotropy
+        && !(ratio.is_finite() && ratio >= 1.0 && azimuth_deg.is_finite())
+    {
+        errors.push(OutlineError::WildAnisotropy { ratio, azimuth_deg });
     }
     errors
 }

@@ -5,8 +5,8 @@
 //! Line ends within 1 mm are joined (`scene`), free ends carried on
 //! (`extend`), all strokes cut at their crossings (`arrangement`), and the
 //! face of every well found (`faces`). The sides of each face (`boundary`) are
-//! compared with the shapes that have a closed form (`recognise`), their
-//! stages set (`stages`), and wells and neighbours put in place (`placement`).
+//! compared with the shapes that have a closed form (`recognise`, `named`),
+//! their pieces and stages set (`pieces`, `stages`), and wells and neighbours put in place (`placement`).
 //! `region` and `clip` answer where an outline lies.
 //! Limits: at most 4000 straight pieces; sides count as parallel or square to
 //! within 1 mm over the plan's extent; every other outline is refused by name.
@@ -21,7 +21,9 @@ mod faces;
 mod frame;
 mod heading;
 mod limits;
+mod named;
 mod names;
+mod pieces;
 mod placement;
 mod recognise;
 mod refuse;
@@ -87,8 +89,8 @@ fn faultless(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
 
 /// The outlines of a site whose numbers are finite.
 fn outlines(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
-    let scene = scene::Scene::read(site)?;
-    let faults = drawn::faults(site, &scene.strokes);
+    let (scene, mut faults) = scene::Scene::read(site);
+    faults.extend(drawn::faults(site, &scene.strokes));
     if !faults.is_empty() {
         return Err(faults);
     }

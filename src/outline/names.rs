@@ -1,14 +1,16 @@
 //! Words for edges, wells, neighbours, lengths and angles.
 
 use super::error::Named;
-use crate::site::{EdgeKind, Site, Subject};
+use crate::site::{EdgeKind, EdgeShape, Site, Subject};
 
-/// "river Ostra", "barrier granite edge"; by number where it has no name.
+/// "river Ostra", "barrier granite edge", "Round lake"; by number where it has
+/// no name.
 pub(super) fn edge(site: &Site, index: usize) -> Named {
     let words = site.edges.get(index).map_or_else(String::new, |edge| {
-        let kind = match edge.kind {
-            EdgeKind::River { .. } => "river",
-            EdgeKind::Barrier => "barrier",
+        let kind = match (&edge.kind, &edge.shape) {
+            (EdgeKind::River { .. }, EdgeShape::Line(_)) => "river",
+            (EdgeKind::River { .. }, EdgeShape::Circle { .. }) => "lake",
+            (EdgeKind::Barrier, _) => "barrier",
         };
         joined(kind, &edge.name, index)
     });
@@ -36,9 +38,12 @@ pub(super) fn neighbour(site: &Site, index: usize) -> Named {
     }
 }
 
+/// The kind before the name, unless the name says it already.
 fn joined(kind: &str, name: &str, index: usize) -> String {
     if name.is_empty() {
         format!("{kind} number {}", index + 1)
+    } else if name.to_lowercase().contains(kind) {
+        name.to_owned()
     } else {
         format!("{kind} {name}")
     }
@@ -75,12 +80,24 @@ fn grouped(value: f64) -> String {
 pub(super) fn angle(radians: f64) -> String {
     let degrees = radians.to_degrees();
     let away = (degrees - (degrees / 90.0).round() * 90.0).abs();
-    let digits = if away < 1e-9 || away >= 0.5 {
+    let digits = if !(1e-9..0.5).contains(&away) {
         1
     } else {
         ((-away.log10()).ceil().max(0.0) as usize + 1).clamp(1, 9)
     };
     format!("{degrees:.digits$}°")
+}
+
+/// Names that are listed before the rest is only counted.
+pub(super) const LISTED: usize = 8;
+
+/// "a, b, c", at most eight of them, then how many more there are.
+pub(super) fn few(parts: &[String]) -> String {
+    let listed = parts.iter().take(LISTED).cloned().collect::<Vec<_>>();
+    match parts.len().saturating_sub(LISTED) {
+        0 => listed.join(", "),
+        more => format!("{} and {more} more", listed.join(", ")),
+    }
 }
 
 /// "a", "a and b", "a, b and c".

@@ -183,7 +183,7 @@ impl Placement<'_> {
                     .get_mut(group)
                     .into_iter()
                     .for_each(|of| of.push(index)),
-                Err(error) => self.errors.push(error),
+                Err(error) => self.errors.push(*error),
             }
         }
         of_groups
@@ -193,23 +193,23 @@ impl Placement<'_> {
         self.groups.iter().position(|(known, _)| *known == face)
     }
 
-    fn group_of_point(&self, index: usize, point: Point) -> Result<usize, OutlineError> {
+    fn group_of_point(&self, index: usize, point: Point) -> Result<usize, Box<OutlineError>> {
         if let Some((distance_m, edge)) = self.edges.nearest(point)
             && distance_m <= TOUCH_M
         {
-            return Err(OutlineError::OnEdge {
+            return Err(Box::new(OutlineError::OnEdge {
                 part: names::neighbour(self.site, index),
                 edge: names::edge(self.site, edge),
                 distance: names::length(distance_m),
-            });
+            }));
         }
         self.group(self.faces.holding(point))
-            .ok_or_else(|| self.other_bank(index, point))
+            .ok_or_else(|| Box::new(self.other_bank(index, point)))
     }
 
     /// The aquifer that an area lies in: that of its corners, of the pieces
     /// of its boundary between edges, or of the wells inside it.
-    fn group_of_area(&self, index: usize, corners: &[Point]) -> Result<usize, OutlineError> {
+    fn group_of_area(&self, index: usize, corners: &[Point]) -> Result<usize, Box<OutlineError>> {
         let mut places = Vec::new();
         for (from, to) in corners.iter().zip(corners.iter().cycle().skip(1)) {
             let met = self.edges.met_between(*from, *to);
@@ -236,10 +236,10 @@ impl Placement<'_> {
         let mut groups = groups.into_iter();
         match (groups.next(), groups.next()) {
             (Some(group), None) => Ok(group),
-            (Some(first), Some(second)) => Err(self.across(index, first, second)),
+            (Some(first), Some(second)) => Err(Box::new(self.across(index, first, second))),
             (None, _) => {
                 let corner = corners.first().copied().unwrap_or(Point::origin());
-                Err(self.other_bank(index, corner))
+                Err(Box::new(self.other_bank(index, corner)))
             }
         }
     }

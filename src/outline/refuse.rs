@@ -12,8 +12,8 @@ use super::stroke::cross;
 /// Corners whose angles are worth listing.
 const ANGLES_LISTED: usize = 6;
 
-const COVERED: &str = "simplify it to a straight line, a strip, a wedge, a half-strip, a box or a \
-     circle around or inside which the wells stand";
+const COVERED: &str = "leave out edges far from the wells, or simplify the outline to a straight \
+     line, a strip, a wedge, a half-strip, a box or a single circle";
 
 /// Starts a refusal with its subject and the edges that take part.
 fn refusal(
@@ -25,6 +25,7 @@ fn refusal(
     remedy: String,
 ) -> OutlineError {
     let others = edges.iter().filter(|other| **other != edge);
+    let others = others.take(names::LISTED);
     OutlineError::NoClosedForm {
         well: match context.wells.first() {
             Some(&well) => names::well(context.site, well),
@@ -47,7 +48,7 @@ fn refusal(
 pub(super) fn island(context: Context<'_>, island: &[Bit], bounded: bool) -> OutlineError {
     let edge = island.first().map_or(0, |bit| bit.edge);
     let edges = edges_of(island);
-    let name = names::listed(&words(context, &edges));
+    let name = names::few(&words(context, &edges));
     let outline = if bounded {
         format!("an aquifer with an island inside it: {name}")
     } else {
@@ -67,7 +68,7 @@ pub(super) fn arc(context: Context<'_>, circle: usize, around: &[Bit]) -> Outlin
     let name = names::edge(context.site, circle);
     let outline = format!(
         "an aquifer bounded by an arc of {name} and by other edges: {}",
-        names::listed(&words(context, &edges))
+        names::few(&words(context, &edges))
     );
     let why = "a closed form covers a circle that no other edge meets".to_owned();
     let remedy = format!("leave {name} out, or draw its bank as a straight line");
@@ -148,7 +149,7 @@ pub(super) fn straight(context: Context<'_>, sides: &[Side]) -> OutlineError {
     };
     let outline = format!(
         "{closed} with {corners}: {}",
-        words(context, &edges).join(", ")
+        names::few(&words(context, &edges))
     );
     let measured: Vec<String> = angles.iter().map(|angle| names::angle(*angle)).collect();
     let why = (angles.len() <= ANGLES_LISTED && !angles.is_empty()).then(|| {
@@ -179,11 +180,11 @@ fn remedy(context: Context<'_>, sides: &[Side], is_open: bool) -> String {
     match (sides.len(), is_open) {
         (3, true) => format!(
             "draw its two long sides parallel and square to the short one, to within 1 mm over \
-             the plan's extent of {extent}, or {COVERED}"
+             the plan's extent of {extent}; or {COVERED}"
         ),
         (4, false) => format!(
             "draw its four sides square to one another, to within 1 mm over the plan's extent of \
-             {extent}, or {COVERED}"
+             {extent}; or {COVERED}"
         ),
         _ => COVERED.to_owned(),
     }
@@ -192,8 +193,7 @@ fn remedy(context: Context<'_>, sides: &[Side], is_open: bool) -> String {
 /// How far the long sides of an open outline with three sides are from
 /// parallel.
 fn not_parallel(context: Context<'_>, sides: &[Side]) -> String {
-    let (&[ref first, _, ref last], true) = (sides, sides.iter().any(|side| side.to().is_none()))
-    else {
+    let ([first, _, last], true) = (sides, sides.iter().any(|side| side.to().is_none())) else {
         return String::new();
     };
     let turn = cross(first.direction, -last.direction)

@@ -5,6 +5,7 @@
 use super::error::OutlineError;
 use super::frame::Stretch;
 use super::heading;
+use super::limits::FARTHEST_M;
 use super::names;
 use super::stroke::{Role, Stroke, TOUCH_M};
 use crate::site::{EdgeShape, Place, Point, Site};
@@ -41,8 +42,9 @@ pub(super) struct FreeEnd {
 }
 
 impl Scene {
-    /// Reads a site whose coordinates are finite.
-    pub fn read(site: &Site) -> Result<Self, Vec<OutlineError>> {
+    /// Reads a site whose coordinates are finite, with what is wrong with
+    /// its edges; the faulty ones are left out.
+    pub fn read(site: &Site) -> (Self, Vec<OutlineError>) {
         let stretch = match site.aquifer.anisotropy {
             Some(anisotropy) if anisotropy.ratio != 1.0 => Stretch::of(anisotropy),
             _ => Stretch::none(),
@@ -72,22 +74,20 @@ impl Scene {
                     pieces: drawn,
                     limit: PIECES_LIMIT,
                 });
+                strokes.truncate(first);
                 break;
             }
         }
         let (centre, extent_m) = extent(site, &stretch);
         heading::assign(&mut strokes, TOUCH_M / extent_m);
-        if errors.is_empty() {
-            Ok(Self {
-                stretch,
-                strokes,
-                free_ends,
-                extent_m,
-                centre,
-            })
-        } else {
-            Err(errors)
-        }
+        let scene = Self {
+            stretch,
+            strokes,
+            free_ends,
+            extent_m,
+            centre,
+        };
+        (scene, errors)
     }
 
     /// The angle within which two lines count as parallel or square.
@@ -267,7 +267,9 @@ fn chords(site: &Site, index: usize, stretch: &Stretch) -> Vec<Stroke> {
 fn extent(site: &Site, stretch: &Stretch) -> (Point, f64) {
     let mut low = Point::new(f64::INFINITY, f64::INFINITY);
     let mut high = Point::new(f64::NEG_INFINITY, f64::NEG_INFINITY);
-    for place in places(site) {
+    // A map's corners may still be anything.
+    let tame = |place: &Point| place.iter().all(|value| value.abs() <= FARTHEST_M);
+    for place in places(site).filter(tame) {
         let place = stretch.apply(place);
         low = Point::new(low.x.min(place.x), low.y.min(place.y));
         high = Point::new(high.x.max(place.x), high.y.max(place.y));

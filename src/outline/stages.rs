@@ -32,8 +32,8 @@ pub(super) fn set(
                     piece.stage_m = stage_m;
                     piece.stage_slope = slope;
                 }
-                Err(error) if errors.contains(&error) => {}
-                Err(error) => errors.push(error),
+                Err(error) if errors.contains(&*error) => {}
+                Err(error) => errors.push(*error),
             }
         }
     }
@@ -45,7 +45,7 @@ pub(super) fn set(
 }
 
 /// The stage of a circle, and no slope.
-pub(super) fn on_circle(site: &Site, edge: usize) -> Result<(f64, f64), OutlineError> {
+pub(super) fn on_circle(site: &Site, edge: usize) -> Result<(f64, f64), Box<OutlineError>> {
     match site.edges.get(edge).map(|edge| &edge.kind) {
         Some(EdgeKind::River {
             stage: Stage::Constant(level),
@@ -54,11 +54,11 @@ pub(super) fn on_circle(site: &Site, edge: usize) -> Result<(f64, f64), OutlineE
         Some(EdgeKind::River {
             stage: Stage::AtVertices(levels),
             ..
-        }) => Err(OutlineError::StageCount {
+        }) => Err(Box::new(OutlineError::StageCount {
             river: names::edge(site, edge),
             stages: levels.len(),
             vertices: 0,
-        }),
+        })),
         _ => Ok((0.0, 0.0)),
     }
 }
@@ -70,7 +70,7 @@ fn on_piece(
     piece: &Piece,
     frame: &Frame,
     shape: &Shape,
-) -> Result<(f64, f64), OutlineError> {
+) -> Result<(f64, f64), Box<OutlineError>> {
     let Some(edge) = site.edges.get(piece.edge) else {
         return Ok((0.0, 0.0));
     };
@@ -83,11 +83,11 @@ fn on_piece(
     };
     let river = || names::edge(site, piece.edge);
     if levels.len() != points.len() {
-        return Err(OutlineError::StageCount {
+        return Err(Box::new(OutlineError::StageCount {
             river: river(),
             stages: levels.len(),
             vertices: points.len(),
-        });
+        }));
     }
     let known = at_positions(side, piece.edge, points, levels, frame);
     let highest = known
@@ -107,21 +107,21 @@ fn on_piece(
         }
     );
     if !is_half_plane {
-        return Err(OutlineError::StageVaries {
+        return Err(Box::new(OutlineError::StageVaries {
             river: river(),
             spread: names::length(highest - lowest),
             shape: shape.name(),
             mean_m,
-        });
+        }));
     }
     let (stage_m, slope) = line_through(&known);
     let departure = |at: &(f64, f64)| (stage_m + slope * at.0 - at.1).abs();
     let worst = known.iter().map(departure).fold(0.0, f64::max);
     if worst > TOUCH_M {
-        return Err(OutlineError::StageNotLinear {
+        return Err(Box::new(OutlineError::StageNotLinear {
             river: river(),
             departure: names::length(worst),
-        });
+        }));
     }
     Ok((stage_m, slope))
 }

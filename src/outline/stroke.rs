@@ -131,6 +131,31 @@ pub(super) fn tolerance_at(place: Point) -> f64 {
     TOUCH_M.max(1e-10 * place.coords.norm())
 }
 
+/// The pairs of strokes whose ranges of x overlap, each with the lower number
+/// first, in the order of a sweep from west to east.
+pub(super) fn pairs(strokes: &[Stroke]) -> impl Iterator<Item = (usize, usize)> {
+    let mut spans: Vec<(f64, f64, usize)> = strokes
+        .iter()
+        .enumerate()
+        .map(|(number, stroke)| {
+            let (low, high) = stroke.span(0);
+            (low, high, number)
+        })
+        .collect();
+    spans.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.2.cmp(&b.2)));
+    (0..spans.len()).flat_map(move |place| {
+        let rest = spans.get(place..).unwrap_or_default();
+        let mut rest = rest.iter().copied();
+        let here = rest.next();
+        let reached: Vec<(usize, usize)> = here.map_or_else(Vec::new, |(_, high, number)| {
+            rest.take_while(|other| other.0 <= high)
+                .map(|other| (number.min(other.2), number.max(other.2)))
+                .collect()
+        });
+        reached
+    })
+}
+
 /// A place where two strokes touch or cross.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Contact {

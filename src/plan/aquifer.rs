@@ -11,7 +11,7 @@ use super::keys::{
     RECHARGE, ROOF, THICKNESS, TOWARD, TRANSMISSIVITY,
 };
 use super::materials::{Material, materials};
-use super::quantities::number;
+use super::quantities::{number, rounded};
 use super::reader::{Reading, Section};
 use super::source_map::SourceMap;
 use super::units::Dimension;
@@ -101,6 +101,8 @@ fn read_flow(
         (None, Some(b), None) if material.is_some() => {
             (typical(material?, reading).si() * b, Some(b))
         }
+        // An unknown material is a fault already.
+        _ if material.is_none() && section.value(&MATERIAL).is_some() => return None,
         _ => {
             refuse_missing_flow(section, material.is_some(), reading);
             return None;
@@ -117,16 +119,12 @@ fn read_flow(
 fn typical(material: &Material, reading: &mut Reading<'_>) -> Conductivity {
     let range = material.conductivity;
     let [typical, least, most] = [range.typical(), range.least, range.most]
-        .map(|value| number(reading.units.of_si(Dimension::Conductivity, value.si())));
-    let typical = three_digits(&typical);
+        .map(|value| rounded(reading.units.of_si(Dimension::Conductivity, value.si()), 3));
     let unit = reading.units.unit_name(Dimension::Conductivity);
     reading.notes.push(format!(
         "the conductivity, {typical} {unit}, is the typical value of the material {}, \
          whose published range is {} to {} {unit} ({}); a pumping test decides",
-        material.key,
-        three_digits(&least),
-        three_digits(&most),
-        material.source
+        material.key, least, most, material.source
     ));
     range.typical()
 }
@@ -137,7 +135,7 @@ fn note_unusual(conductivity: f64, material: &Material, reading: &mut Reading<'_
         return;
     }
     let [given, least, most] = [conductivity, range.least.si(), range.most.si()]
-        .map(|value| three_digits(&number(reading.units.of_si(Dimension::Conductivity, value))));
+        .map(|value| rounded(reading.units.of_si(Dimension::Conductivity, value), 3));
     let unit = reading.units.unit_name(Dimension::Conductivity);
     reading.notes.push(format!(
         "the conductivity, {given} {unit}, lies outside the published range of the material {}, \
@@ -180,7 +178,7 @@ fn refuse_missing_flow(section: &Section<'_>, has_material: bool, reading: &mut 
     } else {
         "add `transmissivity`, or `conductivity` and `thickness`, or `material` and `thickness`"
     };
-    reading.refuse(Fault::new(section.place, what, help));
+    reading.refuse(Fault::new(section.place, what, help).absence());
 }
 
 /// A product of two sound numbers can still be absurd.
@@ -230,7 +228,7 @@ pub(super) fn read_ambient(
     if gradient > 0.0 && section.value(&TOWARD).is_none() {
         let place = section.value(&GRADIENT)?.place;
         let what = "[ambient] has a `gradient`, but does not say where the head falls";
-        let help = format!("add `toward`: {}", TOWARD.doc);
+        let help = format!("add `toward`: {}", TOWARD.meaning());
         reading.refuse(Fault::new(place, what, help).label("toward where?"));
     }
     if at.is_some() && section.value(&AMBIENT_HEAD).is_none() {
@@ -246,16 +244,7 @@ pub(super) fn read_ambient(
 }
 
 fn length_text(metres: f64, reading: &Reading<'_>) -> String {
-    let value = number(reading.units.of_si(Dimension::Length, metres));
+    let value = rounded(reading.units.of_si(Dimension::Length, metres), 3);
     let unit = reading.units.unit_name(Dimension::Length);
-    format!("{} {unit}", three_digits(&value))
-}
-
-/// A number's text, rounded to three significant digits.
-fn three_digits(text: &str) -> String {
-    let rounded = text.parse::<f64>().map(|value| format!("{value:.2e}"));
-    match rounded.map(|text| text.parse::<f64>()) {
-        Ok(Ok(value)) => number(value),
-        _ => text.to_owned(),
-    }
+    format!("{} {unit}", value)
 }

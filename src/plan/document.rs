@@ -7,17 +7,18 @@ use std::path::Path;
 use sha2::Digest;
 use toml::de::DeTable;
 
-use crate::site::{EdgeShape, MapRequest, Place as Where, Point, Site, Vector};
+use crate::site::{EdgeShape, Place as Where, Point, Site, Vector};
 
 use super::crs::{Crs, CrsError};
 use super::fault::{Fault, PlanFaults, shown};
-use super::files::{self, LoadLayer};
+use super::files::{self, LayerStore};
 use super::keys::{CRS, CRS_TABLE, ORIGIN, PLAN_TABLE, TITLE, UNITS};
 use super::layers::Layers;
 use super::names::Names;
 use super::reader::{Reading, Section};
 use super::source::{Place, Source, Sources};
 use super::source_map::SourceMap;
+use super::syntax::{self, Syntax};
 use super::units::UnitSystem;
 use super::value::{self, Node, Value};
 use super::{Plan, aquifer, edges, map, neighbours, wells};
@@ -33,12 +34,12 @@ pub(super) fn unreadable(name: &str, error: &io::Error) -> PlanFaults {
 }
 
 /// Reads a plan from its bytes.
-pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<Plan, PlanFaults> {
+pub(super) fn read(name: &str, bytes: Vec<u8>, store: LayerStore<'_>) -> Result<Plan, PlanFaults> {
     if bytes.len() as u64 > files::LARGEST_FILE {
         let error = io::Error::other("it is larger than 64 MB");
         return Err(unreadable(name, &error));
     }
-    let layers = Layers::new(load, &bytes);
+    let layers = Layers::new(store, &bytes);
     let (text, bad) = files::text_of(bytes);
     let mut sources = Sources::default();
     let source = sources.add(Source::new(name.to_owned(), text.clone()));
@@ -47,13 +48,8 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
         return Err(PlanFaults::new(sources, vec![fault]));
     }
     let (document, errors) = DeTable::parse_recoverable(&text);
-    if !errors.is_empty() {
-        let faults = errors
-            .iter()
-            .map(|error| syntax_fault(error, source, &text));
-        let faults = faults.collect();
-        return Err(PlanFaults::new(sources, faults));
-    }
+    let document = value::of_toml(document, source);
+    let syntax = syntax::check(&errors, &document, source, &text);
     let reading = Reading {
         sources,
         faults: Vec::new(),
@@ -62,28 +58,13 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, load: &LoadLayer<'_>) -> Result<P
         crs: None,
         layers,
     };
-    read_document(name, &value::of_toml(document, source), reading)
-}
-
-fn syntax_fault(error: &toml::de::Error, source: usize, text: &str) -> Fault {
-    let span = error.span().unwrap_or(0..0);
-    let message = error.message().trim().replace('\n', "; ");
-    let what = format!("this is not TOML: {message}");
-    let written = text.get(span.clone()).unwrap_or("");
-    let help = match message.as_str() {
-        "duplicate key" => format!(
-            "`{}` is written twice: keep one, or use [[…]] for a list",
-            shown(written)
-        ),
-        _ => "write `key = value`, texts in double quotes, lists in [ ], tables under [name]; see toml.io"
-            .to_owned(),
-    };
-    Fault::new(Place::new(source, span), what, help).label(shown(&message))
+    read_document(name, &document, syntax, reading)
 }
 
 fn read_document(
     name: &str,
     document: &Value,
+    syntax: Syntax,
     mut reading: Reading<'_>,
 ) -> Result<Plan, PlanFaults> {
     let plan = read_sections(name, document, &mut reading);
@@ -94,6 +75,7 @@ fn read_document(
         layers,
         ..
     } = reading;
+    let faults = syntax.with_others(faults, &sources);
     match plan {
         Some(plan) if faults.is_empty() => Ok(Plan {
             sha256: format!("{:x}", layers.hash.finalize()),
@@ -125,6 +107,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
     let head_tolerance = map::read_accuracy(&plan, reading);
 
     let (aquifer, material) = aquifer?;
+    wells::refuse_beyond_influence(&aquifer, &wells, &source_map, reading);
     let mut site = Site {
         aquifer,
         ambient,
@@ -133,7 +116,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
         neighbours,
         interference_share,
         head_tolerance,
-        map: map.unwrap_or_else(MapRequest::default),
+        map: map.unwrap_or_default(),
     };
     let origin = origin_near_wells(&site);
     move_site(&mut site, -origin.coords);

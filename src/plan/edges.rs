@@ -2,7 +2,7 @@
 
 use crate::site::{Edge, EdgeKind, EdgeShape, Length, Level, Stage, Time};
 
-use super::fault::Fault;
+use super::fault::{Fault, counted};
 use super::features::{Geometry, Wanted};
 use super::keys::{
     BANK_RESISTANCE, BARRIER, BARRIER_TABLE, CENTRE, CIRCLE, CIRCLE_RADIUS, CIRCLE_TABLE, FEATURE,
@@ -10,6 +10,7 @@ use super::keys::{
 };
 use super::names::Names;
 use super::points::Vertex;
+use super::quantities::Asked;
 use super::reader::{Reading, Section, tables};
 use super::source_map::SourceMap;
 use super::value::Node;
@@ -59,13 +60,13 @@ fn read_shape(section: &Section<'_>, reading: &mut Reading<'_>) -> Option<EdgeSh
     if section.value(&CIRCLE).is_some() {
         return read_circle(section, reading);
     }
-    let (key, place, vertices) = if let Some(value) = section.value(&LINE) {
-        (&LINE, value.place, section.points(&LINE, reading)?)
+    let (place, vertices) = if let Some(value) = section.value(&LINE) {
+        (value.place, section.points(&LINE, reading)?)
     } else {
         let vertices = read_layer_line(section, reading)?;
-        (&FEATURE, section.value(&FEATURE)?.place, vertices)
+        (section.value(&FEATURE)?.place, vertices)
     };
-    let sound = section.sound_line(key, place, vertices, reading)?;
+    let sound = section.sound_line(&LINE, place, vertices, reading)?;
     Some(EdgeShape::Line(
         sound.iter().map(|vertex| vertex.at).collect(),
     ))
@@ -107,7 +108,12 @@ fn read_stage(
     };
     let mut levels = Vec::with_capacity(items.len());
     for item in items {
-        let level = section.measured(&STAGE, *measure, item, reading);
+        let asked = Asked {
+            key: &STAGE,
+            subject: "a value of `stage`".to_owned(),
+            measure: *measure,
+        };
+        let level = section.measured(&asked, item, reading);
         levels.extend(level.map(Level::from_si));
     }
     let vertices = match shape? {
@@ -119,13 +125,13 @@ fn read_stage(
         }
     };
     if items.len() != vertices {
-        let count = items.len();
+        let count = counted(items.len(), "value");
         let what = format!(
-            "{}: `stage` has {count} values, but the line has {vertices} vertices",
+            "{}: `stage` has {count}, but the line has {vertices} vertices",
             section.title
         );
         let help = "write one value for all, or one for each vertex of the line";
-        reading.refuse(Fault::new(value.place, what, help).label(format!("{count} values")));
+        reading.refuse(Fault::new(value.place, what, help).label(count));
         return None;
     }
     (levels.len() == items.len()).then_some(Stage::AtVertices(levels))

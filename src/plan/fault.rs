@@ -15,6 +15,9 @@ pub struct Fault {
     pub(super) help: String,
     /// Other places that take part, each with a short label.
     pub(super) related: Vec<(Place, String)>,
+    /// Something is not there, which may be no fault of its own where the
+    /// text has broken syntax.
+    pub(super) is_absence: bool,
 }
 
 impl Fault {
@@ -26,6 +29,7 @@ impl Fault {
             why: None,
             help: help.into(),
             related: Vec::new(),
+            is_absence: false,
         }
     }
 
@@ -37,6 +41,16 @@ impl Fault {
     pub(super) fn why(mut self, why: impl Into<String>) -> Self {
         self.why = Some(why.into());
         self
+    }
+
+    pub(super) fn absence(mut self) -> Self {
+        self.is_absence = true;
+        self
+    }
+
+    /// For results, which should stay small.
+    pub(super) fn boxed(self) -> Box<Self> {
+        Box::new(self)
     }
 
     pub(super) fn related(mut self, place: Place, label: impl Into<String>) -> Self {
@@ -72,7 +86,7 @@ impl PlanFaults {
         Self { sources, faults }
     }
 
-    /// How many there are; at least one.
+    /// How many there are; at least one. A thousand are kept at most.
     pub fn count(&self) -> usize {
         self.faults.len()
     }
@@ -103,22 +117,37 @@ impl std::error::Error for PlanFaults {}
 /// escaped, and no longer than 60 characters.
 pub(super) fn shown(text: &str) -> String {
     const LONGEST: usize = 60;
-    let mut shown = String::new();
-    for character in text.chars().take(LONGEST) {
+    match text.char_indices().nth(LONGEST) {
+        Some((end, _)) => format!("{}…", escaped(text.get(..end).unwrap_or(""))),
+        None => escaped(text),
+    }
+}
+
+/// A text with its control characters escaped.
+pub(super) fn escaped(text: &str) -> String {
+    let mut escaped = String::with_capacity(text.len());
+    for character in text.chars() {
         if character.is_control() {
-            shown.extend(character.escape_default());
+            escaped.extend(character.escape_default());
         } else {
-            shown.push(character);
+            escaped.push(character);
         }
     }
-    if text.chars().nth(LONGEST).is_some() {
-        shown.push('…');
+    escaped
+}
+
+/// "1 value", "2 values".
+pub(super) fn counted(count: usize, thing: &str) -> String {
+    match count {
+        1 => format!("1 {thing}"),
+        _ => format!("{count} {thing}s"),
     }
-    shown
 }
 
 /// The known word that a text most likely means, if any is near.
 pub(super) fn nearest<'a>(text: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+    /// Below this Jaro–Winkler likeness two words have little in common.
+    const LEAST_LIKENESS: f64 = 0.8;
     // Long texts mean none of the words, and would cost time to compare.
     if text.len() > 200 {
         return None;
@@ -126,7 +155,7 @@ pub(super) fn nearest<'a>(text: &str, known: impl IntoIterator<Item = &'a str>) 
     known
         .into_iter()
         .map(|word| (strsim::jaro_winkler(text, word), word))
-        .filter(|(likeness, _)| *likeness > 0.75)
+        .filter(|(likeness, _)| *likeness > LEAST_LIKENESS)
         .max_by(|a, b| a.0.total_cmp(&b.0))
         .map(|(_, word)| word)
 }

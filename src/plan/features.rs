@@ -48,7 +48,7 @@ impl Feature {
         match read {
             Ok(geometry) => geometry,
             Err(fault) => {
-                reading.refuse(fault.related(used_at, "used here"));
+                reading.refuse((*fault).related(used_at, "used here"));
                 None
             }
         }
@@ -58,10 +58,10 @@ impl Feature {
         &self,
         wanted: Wanted,
         reading: &Reading<'_>,
-    ) -> Result<Option<Geometry>, Fault> {
+    ) -> Result<Option<Geometry>, Box<Fault>> {
         let written = self.geometry.as_ref();
         let kind = written.and_then(|value| value.get("type"));
-        let name = kind.and_then(Value::text).unwrap_or("none");
+        let name = kind.and_then(Value::text).unwrap_or("");
         let place = kind.map_or(self.place, |kind| kind.place);
         let coordinates = written.and_then(|value| value.get("coordinates"));
         let Some(coordinates) = coordinates else {
@@ -89,7 +89,7 @@ impl Feature {
         place: Place,
         name: &'v str,
         coordinates: &'v Value,
-    ) -> Result<(&'v str, &'v Value), Fault> {
+    ) -> Result<(&'v str, &'v Value), Box<Fault>> {
         let Some(single) = name.strip_prefix("Multi") else {
             return Ok((name, coordinates));
         };
@@ -99,18 +99,21 @@ impl Feature {
                 let count = parts.map_or(0, <[Value]>::len);
                 let what = format!("{} is a {} of {count} parts", self.title, shown(name));
                 let help = format!("split it into features of one {} each", shown(single));
-                Err(Fault::new(place, what, help).label(format!("{count} parts")))
+                Err(Fault::new(place, what, help)
+                    .label(format!("{count} parts"))
+                    .boxed())
             }
         }
     }
 
-    fn wrong_geometry(&self, place: Place, name: &str, wanted: Wanted) -> Fault {
+    fn wrong_geometry(&self, place: Place, name: &str, wanted: Wanted) -> Box<Fault> {
         let types = wanted.types().join(" or ");
         let name = shown(name);
-        let what = format!(
-            "{} must be a {types}, but its geometry is {name}",
-            self.title
-        );
+        let has = match name.as_str() {
+            "" => "it has no geometry".to_owned(),
+            name => format!("its geometry is {name}"),
+        };
+        let what = format!("{} must be a {types}, but {has}", self.title);
         let help = match (name.as_str(), wanted) {
             ("Polygon" | "MultiPolygon", Wanted::Line) => {
                 "export the polygon's outline as a line, or write it as `circle` or `line`"
@@ -118,22 +121,28 @@ impl Feature {
             }
             _ => format!("name a feature that is a {types}"),
         };
-        Fault::new(place, what, help).label("wrong geometry")
+        Fault::new(place, what, help)
+            .label("wrong geometry")
+            .boxed()
     }
 
-    fn outer_ring(&self, coordinates: &Value, reading: &Reading<'_>) -> Result<Vec<Vertex>, Fault> {
+    fn outer_ring(
+        &self,
+        coordinates: &Value,
+        reading: &Reading<'_>,
+    ) -> Result<Vec<Vertex>, Box<Fault>> {
         match coordinates.list() {
             Some([outer]) => self.vertices(outer, reading),
             Some([_, hole, ..]) => {
                 let what = format!("{} has a hole", self.title);
                 let help = "take the hole out: the worst point of the whole area counts";
-                Err(Fault::new(hole.place, what, help).label("a hole"))
+                Err(Fault::new(hole.place, what, help).label("a hole").boxed())
             }
             _ => Err(self.no_position(coordinates)),
         }
     }
 
-    fn vertices(&self, line: &Value, reading: &Reading<'_>) -> Result<Vec<Vertex>, Fault> {
+    fn vertices(&self, line: &Value, reading: &Reading<'_>) -> Result<Vec<Vertex>, Box<Fault>> {
         let items = line.list().ok_or_else(|| self.no_position(line))?;
         items
             .iter()
@@ -141,7 +150,7 @@ impl Feature {
             .collect()
     }
 
-    fn vertex(&self, position: &Value, reading: &Reading<'_>) -> Result<Vertex, Fault> {
+    fn vertex(&self, position: &Value, reading: &Reading<'_>) -> Result<Vertex, Box<Fault>> {
         let Some([longitude, latitude, ..]) = position.list() else {
             return Err(self.no_position(position));
         };
@@ -158,7 +167,7 @@ impl Feature {
             let fault = Fault::new(position.place, what, help)
                 .label("out of range")
                 .why("longitudes are within ±180° and latitudes within ±90°");
-            return Err(fault);
+            return Err(fault.boxed());
         }
         self.project(*longitude, *latitude, position.place, reading)
     }
@@ -169,7 +178,7 @@ impl Feature {
         latitude: f64,
         place: Place,
         reading: &Reading<'_>,
-    ) -> Result<Vertex, Fault> {
+    ) -> Result<Vertex, Box<Fault>> {
         let Some(crs) = &reading.crs else {
             return Err(self.no_position_at(place));
         };
@@ -181,23 +190,25 @@ impl Feature {
                     self.title,
                     crs.name()
                 );
-                Fault::new(place, what, error.help()).why(error.to_string())
+                Fault::new(place, what, error.help())
+                    .why(error.to_string())
+                    .boxed()
             })?;
         let per_unit = crs.metres_per_unit();
         let at = Point::new(x * per_unit, y * per_unit);
         Ok(Vertex { at, place })
     }
 
-    fn no_position(&self, value: &Value) -> Fault {
+    fn no_position(&self, value: &Value) -> Box<Fault> {
         self.no_position_at(value.place)
     }
 
-    fn no_position_at(&self, place: Place) -> Fault {
+    fn no_position_at(&self, place: Place) -> Box<Fault> {
         let what = format!(
             "{} has coordinates that are not [longitude, latitude]",
             self.title
         );
         let help = "export the layer again as GeoJSON (RFC 7946)";
-        Fault::new(place, what, help).label("no position")
+        Fault::new(place, what, help).label("no position").boxed()
     }
 }

@@ -11,8 +11,37 @@ use super::source::Place;
 /// The largest plan or layer that is read, bytes.
 pub(super) const LARGEST_FILE: u64 = 64 * 1024 * 1024;
 
-/// Gives the bytes of the layer that a plan names.
-pub type LoadLayer<'l> = dyn Fn(&str) -> io::Result<Vec<u8>> + 'l;
+/// Where the layers that a plan names come from.
+pub(super) enum LayerStore<'l> {
+    /// Files, relative to this folder.
+    Folder(&'l Path),
+    /// Built into a program: each its name and its text.
+    BuiltIn(&'l [(&'l str, &'l str)]),
+}
+
+impl LayerStore<'_> {
+    /// The bytes of the layer that a plan names.
+    pub(super) fn load(&self, layer: &str) -> io::Result<Vec<u8>> {
+        match self {
+            Self::Folder(folder) => read(&folder.join(layer)),
+            Self::BuiltIn(layers) => {
+                let found = layers.iter().find(|(name, _)| *name == layer);
+                let text = found.map(|(_, text)| text.as_bytes().to_vec());
+                text.ok_or_else(|| io::Error::other("it is not built in"))
+            }
+        }
+    }
+
+    /// The layer as a person finds it from where the program was started.
+    pub(super) fn shown_path(&self, layer: &str) -> String {
+        match self {
+            Self::Folder(folder) if *folder != Path::new(".") => {
+                folder.join(layer).display().to_string()
+            }
+            _ => layer.to_owned(),
+        }
+    }
+}
 
 /// The bytes of a file of at most 64 MB.
 pub(super) fn read(path: &Path) -> io::Result<Vec<u8>> {

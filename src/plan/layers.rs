@@ -11,7 +11,7 @@ use std::rc::Rc;
 use sha2::{Digest, Sha256};
 
 use super::fault::{Fault, nearest, shown};
-use super::files::{self, LoadLayer};
+use super::files::{self, LayerStore};
 use super::json;
 use super::reader::{MOST_ITEMS, Reading};
 use super::source::{Place, Source};
@@ -19,16 +19,16 @@ use super::value::{Entry, Node, Value};
 
 /// The layers of a plan, each read once.
 pub(super) struct Layers<'l> {
-    load: &'l LoadLayer<'l>,
+    store: LayerStore<'l>,
     known: HashMap<String, Option<Rc<Layer>>>,
     /// Of the plan's bytes, then of each layer's in the order of first use.
     pub(super) hash: Sha256,
 }
 
 impl<'l> Layers<'l> {
-    pub(super) fn new(load: &'l LoadLayer<'l>, plan: &[u8]) -> Self {
+    pub(super) fn new(store: LayerStore<'l>, plan: &[u8]) -> Self {
         Self {
-            load,
+            store,
             known: HashMap::new(),
             hash: Sha256::new_with_prefix(plan),
         }
@@ -122,7 +122,7 @@ impl Reading<'_> {
     }
 
     fn read_layer(&mut self, name: &str, place: Place) -> Option<Layer> {
-        let bytes = match (self.layers.load)(name) {
+        let bytes = match self.layers.store.load(name) {
             Ok(bytes) => bytes,
             Err(error) => {
                 let what = format!("the layer {} cannot be read: {error}", shown(name));
@@ -132,8 +132,9 @@ impl Reading<'_> {
             }
         };
         self.layers.hash.update(&bytes);
+        let path = self.layers.store.shown_path(name);
         let (text, bad) = files::text_of(bytes);
-        let source = self.sources.add(Source::new(name.to_owned(), text));
+        let source = self.sources.add(Source::new(path, text));
         if let Some(bad) = bad {
             let fault = files::not_utf8(Place::new(source, bad), shown(name));
             self.refuse(fault.related(place, "the layer is named here"));
@@ -195,18 +196,14 @@ fn features_of(root: Value, layer: &str) -> Result<Vec<Feature>, Box<Fault>> {
     let members = match kind {
         "FeatureCollection" => {
             let Some(members) = take(root.node, "features").and_then(into_list) else {
-                return Err(Box::new(no_geojson(
-                    root.place,
-                    layer,
-                    "`features` is no list",
-                )));
+                return Err(no_geojson(root.place, layer, "`features` is no list").boxed());
             };
             members
         }
         "Feature" => vec![root],
         _ => {
             let what = format!("its `type` is `{}`", shown(kind));
-            return Err(Box::new(no_geojson(root.place, layer, &what)));
+            return Err(no_geojson(root.place, layer, &what).boxed());
         }
     };
     let number_from_1 = 1..;
@@ -221,7 +218,7 @@ fn feature_of(member: Value, number: usize, layer: &str) -> Result<Feature, Box<
     let place = member.place;
     if member.get("type").and_then(Value::text) != Some("Feature") {
         let what = format!("feature {number} has no `\"type\": \"Feature\"`");
-        return Err(Box::new(no_geojson(place, layer, &what)));
+        return Err(no_geojson(place, layer, &what).boxed());
     }
     let name = member
         .get("properties")
@@ -299,5 +296,5 @@ fn refuse_other_crs(root: &Value, layer: &str) -> Result<(), Box<Fault>> {
     let fault = Fault::new(crs.place, what, help)
         .label("another CRS")
         .why("RFC 7946 layers are in WGS 84 longitude/latitude");
-    Err(Box::new(fault))
+    Err(fault.boxed())
 }

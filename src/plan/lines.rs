@@ -192,7 +192,12 @@ fn meet_wrongly(
             folds_back(second, first)
         };
     }
-    as_line(side).intersects(&as_line(other))
+    let [side_y, other_y] = [side, other].map(|side| {
+        let (from, to) = (side.0.at.y, side.1.at.y);
+        (from.min(to), from.max(to))
+    });
+    let far_apart = side_y.1 < other_y.0 || other_y.1 < side_y.0;
+    !far_apart && as_line(side).intersects(&as_line(other))
 }
 
 /// Whether the second of two joined sides runs back along the first.

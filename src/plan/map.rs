@@ -7,7 +7,7 @@ use super::keys::{
     ACCURACY, ACCURACY_TABLE, EXTENT, HEAD_ACCURACY, INTERFERENCE_SHARE, INTERVAL, LIMITS,
     LIMITS_TABLE, MAP, MAP_TABLE, SPACING,
 };
-use super::quantities::number;
+use super::quantities::{number, rounded};
 use super::reader::{Reading, Section};
 use super::source_map::SourceMap;
 use super::units::Dimension;
@@ -104,9 +104,9 @@ fn refuse_too_many_nodes(
     };
     let fits = number(smallest_spacing(covered) / reading.metres_per_unit());
     let what = format!(
-        "[map]: a spacing of {} gives {} nodes; {MOST_NODES} is the most",
+        "[map]: a spacing of {} gives {} nodes; 25 million is the most",
         reading.written(value),
-        number(count)
+        rounded(count, 3)
     );
     let help = format!("write a spacing of at least {fits}, or a smaller `extent`");
     reading.refuse(Fault::new(value.place, what, help).label("too fine"));

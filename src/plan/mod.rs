@@ -30,23 +30,25 @@ mod reader;
 mod schema;
 mod source;
 mod source_map;
+mod syntax;
 pub mod units;
 mod value;
 mod wells;
 
-use std::io;
 use std::path::Path;
 
 use crate::site::{Point, Refusal, Site, Subject};
 
 use crs::{Crs, CrsError};
+use fault::Fault;
+use files::LayerStore;
+use source::Sources;
 use source_map::SourceMap;
 
-pub use fault::{Fault, ListedFault, PlanFaults};
-pub use files::LoadLayer;
+pub use fault::{ListedFault, PlanFaults};
 pub use materials::{ConductivityRange, Material, ShareRange, materials};
 pub use schema::schema;
-pub use source::{Location, Place, Source, Sources};
+pub use source::Location;
 pub use units::{Dimension, UnitSystem};
 
 /// A plan that was read without a fault.
@@ -83,8 +85,8 @@ impl Plan {
     pub fn read(path: &Path) -> Result<Self, PlanFaults> {
         let name = path.display().to_string();
         let bytes = files::read(path).map_err(|error| document::unreadable(&name, &error))?;
-        let folder = path.parent().unwrap_or(Path::new("."));
-        document::read(&name, bytes, &|layer| files::read(&folder.join(layer)))
+        let folder = path.parent().unwrap_or(Path::new(""));
+        document::read(&name, bytes, LayerStore::Folder(folder))
     }
 
     /// Reads a plan from its text; layers lie relative to `folder`.
@@ -92,8 +94,7 @@ impl Plan {
     /// # Errors
     /// All the plan's faults, each at its place.
     pub fn from_text(name: &str, text: &str, folder: &Path) -> Result<Self, PlanFaults> {
-        let load = |layer: &str| files::read(&folder.join(layer));
-        document::read(name, text.as_bytes().to_vec(), &load)
+        document::read(name, text.as_bytes().to_vec(), LayerStore::Folder(folder))
     }
 
     /// Reads a plan whose layers are built into a program: each a name and
@@ -102,12 +103,7 @@ impl Plan {
     /// # Errors
     /// All the plan's faults, each at its place.
     pub fn from_texts(name: &str, text: &str, layers: &[(&str, &str)]) -> Result<Self, PlanFaults> {
-        let load = |wanted: &str| {
-            let found = layers.iter().find(|(layer, _)| *layer == wanted);
-            let text = found.map(|(_, text)| text.as_bytes().to_vec());
-            text.ok_or_else(|| io::Error::other("it is not built in"))
-        };
-        document::read(name, text.as_bytes().to_vec(), &load)
+        document::read(name, text.as_bytes().to_vec(), LayerStore::BuiltIn(layers))
     }
 
     /// A place of the site in the plan's CRS and its unit.

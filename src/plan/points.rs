@@ -2,8 +2,9 @@
 
 use crate::site::{Extent, Length, Point};
 
-use super::fault::Fault;
+use super::fault::{Fault, counted};
 use super::keys::{Form, Key, LARGEST_COORDINATE_M, Measure};
+use super::quantities::Asked;
 use super::reader::{Reading, Section};
 use super::source::Place;
 use super::units::{self, Dimension};
@@ -89,7 +90,12 @@ impl Section<'_> {
             above: false,
             most: LARGEST_COORDINATE_M,
         };
-        self.measured(key, COORDINATE, value, reading)
+        let asked = Asked {
+            key,
+            subject: format!("a coordinate of `{}`", key.name),
+            measure: COORDINATE,
+        };
+        self.measured(&asked, value, reading)
     }
 
     /// A point of the grid, unless the CRS cannot place it.
@@ -126,13 +132,13 @@ impl Section<'_> {
     fn wrong_size(&self, key: &Key, value: &Value, wanted: &str) -> Fault {
         match &value.node {
             Node::List(items) => {
-                let count = items.len();
+                let items = counted(items.len(), "item");
                 let what = format!(
-                    "{}: `{}` needs {wanted}, not {count} items",
+                    "{}: `{}` needs {wanted}, not a list of {items}",
                     self.title, key.name
                 );
-                let help = format!("write {wanted} in the plan's CRS");
-                Fault::new(value.place, what, help).label(format!("{count} items"))
+                let help = format!("write {wanted}");
+                Fault::new(value.place, what, help).label(items)
             }
             _ => self.wrong_kind(key, value, wanted),
         }
@@ -168,7 +174,12 @@ impl Section<'_> {
             above: false,
             most,
         };
-        self.measured(key, measure, value, reading)
+        let asked = Asked {
+            key,
+            subject: format!("a value of `{}`", key.name),
+            measure,
+        };
+        self.measured(&asked, value, reading)
     }
 
     /// The length at a key.

@@ -1,20 +1,34 @@
 //! Reads numbers: bare in the plan's units, or as a text with a unit of its
 //! own; each within the bounds of its key.
 
-use super::fault::{Fault, shown};
+use super::fault::{Fault, escaped, shown};
 use super::keys::{Form, Key, Measure};
 use super::reader::{Reading, Section};
 use super::units::{self, Dimension, UnitError};
 use super::value::{Node, Value};
+
+/// A quantity that is asked for, and what a message calls it.
+pub(super) struct Asked<'k> {
+    pub(super) key: &'k Key,
+    /// "`radius`", "a coordinate of `line`".
+    pub(super) subject: String,
+    pub(super) measure: Measure,
+}
 
 impl Section<'_> {
     /// The quantity at a key, in metres, days and degrees; none where it is
     /// absent or refused.
     pub(super) fn quantity(&self, key: &Key, reading: &mut Reading<'_>) -> Option<f64> {
         let value = self.value(key)?;
+        let subject = format!("`{}`", key.name);
         match key.form {
             Form::Quantity(measure) | Form::Stage(measure) => {
-                self.measured(key, measure, value, reading)
+                let asked = Asked {
+                    key,
+                    subject,
+                    measure,
+                };
+                self.measured(&asked, value, reading)
             }
             _ => None,
         }
@@ -23,23 +37,16 @@ impl Section<'_> {
     /// One value as a quantity within its bounds.
     pub(super) fn measured(
         &self,
-        key: &Key,
-        measure: Measure,
+        asked: &Asked<'_>,
         value: &Value,
         reading: &mut Reading<'_>,
     ) -> Option<f64> {
-        let si = self.in_si(key, measure, value, reading)?;
-        if !si.is_finite() {
-            let written = reading.written(value);
-            let what = format!(
-                "{}: `{}` is {written}, which is no finite number",
-                self.title, key.name
-            );
-            let help = format!("write a finite number: {}", key.doc);
-            reading.refuse(Fault::new(value.place, what, help).label("not finite"));
-            return None;
-        }
-        let fault = self.bounds_fault(key, measure, si, value, reading);
+        let si = self.in_si(asked, value, reading)?;
+        let fault = if si.is_finite() {
+            self.bounds_fault(asked, si, value, reading)
+        } else {
+            Some(self.not_finite(asked, value, reading))
+        };
         match fault {
             Some(fault) => {
                 reading.refuse(fault);
@@ -49,55 +56,62 @@ impl Section<'_> {
         }
     }
 
-    fn in_si(
-        &self,
-        key: &Key,
-        measure: Measure,
-        value: &Value,
-        reading: &mut Reading<'_>,
-    ) -> Option<f64> {
-        match &value.node {
-            Node::Number(number) => Some(number * bare_unit(measure, reading)),
+    fn in_si(&self, asked: &Asked<'_>, value: &Value, reading: &mut Reading<'_>) -> Option<f64> {
+        let measure = asked.measure;
+        let fault = match &value.node {
+            Node::Number(number) => return Some(number * bare_unit(measure, reading)),
             Node::Text(text) => match units::parse(text, measure.dimension) {
-                Ok(si) => Some(si),
-                Err(error) => {
-                    let fault = self.unit_fault(key, measure, value, &error, reading);
-                    reading.refuse(fault);
-                    None
-                }
+                Ok(si) => return Some(si),
+                Err(error) => self.unit_fault(asked, value, &error, reading),
             },
-            _ => {
+            other => {
                 let wanted = format!("a number or a text such as {}", example(measure.dimension));
-                reading.refuse(self.wrong_kind(key, value, &wanted));
-                None
+                let what = format!(
+                    "{}: {} must be {wanted}, not {}",
+                    self.title,
+                    asked.subject,
+                    other.kind()
+                );
+                let help = format!("write {wanted}: {}", asked.key.meaning());
+                Fault::new(value.place, what, help).label(format!("this is {}", other.kind()))
             }
-        }
+        };
+        reading.refuse(fault);
+        None
+    }
+
+    fn not_finite(&self, asked: &Asked<'_>, value: &Value, reading: &Reading<'_>) -> Fault {
+        let written = reading.written(value);
+        let what = format!(
+            "{}: {} is {written}, which is no finite number",
+            self.title, asked.subject
+        );
+        let help = format!("write a finite number: {}", asked.key.meaning());
+        Fault::new(value.place, what, help).label("not finite")
     }
 
     fn unit_fault(
         &self,
-        key: &Key,
-        measure: Measure,
+        asked: &Asked<'_>,
         value: &Value,
         error: &UnitError,
         reading: &Reading<'_>,
     ) -> Fault {
         let text = shown(value.text().unwrap_or(""));
+        let error_text = escaped(&error.to_string());
         let what = format!(
-            "{}: `{}` is \"{text}\", but {}",
-            self.title,
-            key.name,
-            shown(&error.to_string())
+            "{}: {} is \"{text}\", but {error_text}",
+            self.title, asked.subject
         );
-        let unit = unit_name(measure, reading);
-        let bare = match unit.as_str() {
+        let bare = match unit_name(asked.measure, reading) {
             "" => "a bare number".to_owned(),
             unit => format!("a bare number, which is in {unit},"),
         };
-        let accepted = measure.dimension.accepted();
+        let accepted = asked.measure.dimension.accepted();
         let help = format!("write {bare} or a number with one of {accepted}");
         Fault::new(value.place, what, help).label(match error {
             UnitError::NoNumber => "no number",
+            UnitError::Comma => "a comma",
             UnitError::NoUnit => "no unit",
             UnitError::WrongDimension { .. } => "wrong kind of unit",
             UnitError::Unknown { .. } => "unknown unit",
@@ -106,58 +120,60 @@ impl Section<'_> {
 
     fn bounds_fault(
         &self,
-        key: &Key,
-        measure: Measure,
+        asked: &Asked<'_>,
         si: f64,
         value: &Value,
         reading: &Reading<'_>,
     ) -> Option<Fault> {
-        let too_low = if measure.above {
-            si <= measure.least
-        } else {
-            si < measure.least
-        };
-        let (bound, words, label) = if too_low && measure.above {
+        let measure = asked.measure;
+        let (bound, words, label) = if measure.above && si <= measure.least {
             (measure.least, "above", "too low")
-        } else if too_low {
+        } else if si < measure.least {
             (measure.least, "at least", "too low")
         } else if si > measure.most {
             (measure.most, "at most", "too high")
         } else {
             return None;
         };
-        let unit = unit_name(measure, reading);
-        let limit = number(bound / bare_unit(measure, reading));
-        let limit = format!("{limit} {unit}");
-        let limit = limit.trim_end();
+        let limit = in_bare_unit(bound / bare_unit(measure, reading), measure, reading);
         let written = match value.node {
-            Node::Number(bare) => format!("{} {unit}", number(bare)).trim_end().to_owned(),
+            Node::Number(bare) => in_bare_unit(bare, measure, reading),
             _ => reading.written(value),
         };
-        let name = key.name;
         let what = format!(
-            "{}: `{name}` must be {words} {limit}, but is {written}",
-            self.title
+            "{}: {} must be {words} {limit}, but is {written}",
+            self.title, asked.subject
         );
-        let help = remedy(name, si)
-            .unwrap_or_else(|| format!("write a value {words} {limit}: {}", key.doc));
+        let help = remedy(asked.key.name, si).map_or_else(
+            || format!("write a value {words} {limit}: {}", asked.key.meaning()),
+            str::to_owned,
+        );
         Some(Fault::new(value.place, what, help).label(label))
     }
 }
 
+/// A bare number with the unit it is in.
+fn in_bare_unit(value: f64, measure: Measure, reading: &Reading<'_>) -> String {
+    let text = format!("{} {}", number(value), unit_name(measure, reading));
+    text.trim_end().to_owned()
+}
+
 /// What to write instead where the slip has a usual reason.
-fn remedy(key: &str, si: f64) -> Option<String> {
-    let text = match key {
-        "pumping" if si < 0.0 => "an injecting well has `injection` with a positive rate instead",
-        "injection" if si < 0.0 => "a pumping well has `pumping` with a positive rate instead",
-        "ratio" if si > 0.0 => {
-            "the ratio is largest over smallest: write its inverse, and turn `azimuth` by 90°"
+fn remedy(key: &str, si: f64) -> Option<&'static str> {
+    match key {
+        "pumping" if si < 0.0 => {
+            Some("an injecting well has `injection` with a positive rate instead")
         }
-        "interference_share" if si > 1.0 => "a share is between 0 and 1: write 0.20 for 20 %",
-        "gradient" if si < 0.0 => "a slope is not negative: turn `toward` by 180° instead",
-        _ => return None,
-    };
-    Some(text.to_owned())
+        "injection" if si < 0.0 => {
+            Some("a pumping well has `pumping` with a positive rate instead")
+        }
+        "ratio" if si > 0.0 && si < 1.0 => {
+            Some("the ratio is largest over smallest: write its inverse, and turn `azimuth` by 90°")
+        }
+        "interference_share" if si > 1.0 => Some("a share is between 0 and 1: write 0.20 for 20 %"),
+        "gradient" if si < 0.0 => Some("a slope is not negative: turn `toward` by 180° instead"),
+        _ => None,
+    }
 }
 
 /// Metres, days and degrees in the unit of a bare number.
@@ -169,11 +185,13 @@ fn bare_unit(measure: Measure, reading: &Reading<'_>) -> f64 {
     }
 }
 
-fn unit_name(measure: Measure, reading: &Reading<'_>) -> String {
-    match reading.metres_per_unit() {
-        per_unit if measure.in_grid_units && per_unit == 1.0 => "m".to_owned(),
-        _ if measure.in_grid_units => "units of the plan's CRS".to_owned(),
-        _ => reading.units.unit_name(measure.dimension).to_owned(),
+fn unit_name(measure: Measure, reading: &Reading<'_>) -> &'static str {
+    if !measure.in_grid_units {
+        reading.units.unit_name(measure.dimension)
+    } else if reading.metres_per_unit() == 1.0 {
+        "m"
+    } else {
+        "units of the plan's CRS"
     }
 }
 
@@ -194,11 +212,16 @@ fn example(dimension: Dimension) -> &'static str {
 
 /// A number for a sentence: plain where that is short.
 pub(super) fn number(value: f64) -> String {
-    let magnitude = value.abs();
-    if value == 0.0 || (1e-6..1e15).contains(&magnitude) {
-        // Fifteen significant digits hide the noise of unit conversions.
-        let rounded: f64 = format!("{value:.14e}").parse().unwrap_or(value);
-        rounded.to_string()
+    // Fifteen significant digits hide the noise of unit conversions.
+    rounded(value, 15)
+}
+
+/// A number rounded to some significant digits, for a sentence.
+pub(super) fn rounded(value: f64, digits: usize) -> String {
+    let scientific = format!("{value:.*e}", digits.saturating_sub(1));
+    let value: f64 = scientific.parse().unwrap_or(value);
+    if value == 0.0 || (1e-5..1e8).contains(&value.abs()) {
+        value.to_string()
     } else {
         format!("{value:e}")
     }

@@ -12,6 +12,9 @@ use super::value::{Entry, Node, Value};
 /// More wells, neighbours or edges than this are refused.
 pub(super) const MOST_ITEMS: usize = 20_000;
 
+/// More faults than this help nobody.
+pub(super) const MOST_FAULTS: usize = 1_000;
+
 /// What is known and found while a plan is read.
 pub(super) struct Reading<'l> {
     pub(super) sources: Sources,
@@ -25,7 +28,9 @@ pub(super) struct Reading<'l> {
 
 impl Reading<'_> {
     pub(super) fn refuse(&mut self, fault: Fault) {
-        self.faults.push(fault);
+        if self.faults.len() < MOST_FAULTS {
+            self.faults.push(fault);
+        }
     }
 
     /// Metres in one unit of the plan's coordinates.
@@ -96,7 +101,15 @@ impl<'v> Section<'v> {
         let Some(entries) = value.table() else {
             let what = format!("{} must be a table, not {}", table.name, value.node.kind());
             let keys = names(table.keys.iter().copied());
-            let help = format!("write a table with the keys {keys}");
+            let help = match value.node {
+                Node::List(_) if table.name.starts_with('[') => {
+                    format!(
+                        "write its header once, as {}, with single brackets",
+                        table.name
+                    )
+                }
+                _ => format!("write a table with the keys {keys}"),
+            };
             reading.refuse(Fault::new(value.place, what, help).label("not a table"));
             return None;
         };
@@ -131,7 +144,7 @@ impl<'v> Section<'v> {
                 Fault::new(
                     value.place,
                     format!("{}: `{}` is empty", self.title, key.name),
-                    format!("write a text in quotes: {}", key.doc),
+                    format!("write a text in quotes: {}", key.meaning()),
                 )
                 .label("empty"),
             ),
@@ -158,14 +171,15 @@ impl<'v> Section<'v> {
             "{}: `{}` must be {wanted}, not {kind}",
             self.title, key.name
         );
-        let help = format!("write {wanted}: {}", key.doc);
+        let help = format!("write {wanted}: {}", key.meaning());
         Fault::new(value.place, what, help).label(format!("this is {kind}"))
     }
 
     fn unknown_entries(&self) -> impl Iterator<Item = &'v Entry> {
         let known = self.table.keys;
         let is_known = move |entry: &&Entry| known.iter().any(|key| key.name == entry.key);
-        self.entries.iter().filter(move |entry| !is_known(entry))
+        let unknown = self.entries.iter().filter(move |entry| !is_known(entry));
+        unknown.take(MOST_FAULTS)
     }
 
     fn refuse_unknown_keys(&self, reading: &mut Reading<'_>) {
@@ -179,7 +193,7 @@ impl<'v> Section<'v> {
         let what = format!(
             "`{}` is not a key of {}",
             shown(&entry.key),
-            self.table.name
+            self.table.one()
         );
         let all = names(self.table.keys.iter().copied());
         let help = match nearest(&entry.key, known) {
@@ -190,11 +204,13 @@ impl<'v> Section<'v> {
     }
 
     fn refuse_missing_keys(&self, reading: &mut Reading<'_>) {
-        let missing = |key: &&&Key| key.required && self.value(key).is_none();
+        let missing = |key: &&&Key| {
+            key.required && self.value(key).is_none() && !self.is_meant_elsewhere(key)
+        };
         for key in self.table.keys.iter().filter(missing) {
             let what = format!("{} has no `{}`", self.title, key.name);
-            let help = format!("add `{}`: {}", key.name, key.doc);
-            reading.refuse(Fault::new(self.place, what, help));
+            let help = format!("add `{}`: {}", key.name, key.meaning());
+            reading.refuse(Fault::new(self.place, what, help).absence());
         }
         for group in self.table.exactly_one {
             self.refuse_unless_one(group, reading);
@@ -204,9 +220,17 @@ impl<'v> Section<'v> {
                 continue;
             };
             let what = format!("{} has `{}` but no `{}`", self.title, key.name, other.name);
-            let help = format!("add `{}`: {}", other.name, other.doc);
-            reading.refuse(Fault::new(value.place, what, help));
+            let help = format!("add `{}`: {}", other.name, other.meaning());
+            reading.refuse(Fault::new(value.place, what, help).absence());
         }
+    }
+
+    /// Whether an unknown key is likely a misspelling of this one, which is
+    /// then not missed a second time.
+    fn is_meant_elsewhere(&self, key: &Key) -> bool {
+        let known = || self.table.keys.iter().map(|key| key.name);
+        self.unknown_entries()
+            .any(|entry| nearest(&entry.key, known()) == Some(key.name))
     }
 
     fn refuse_unless_one(&self, group: &'static [&'static Key], reading: &mut Reading<'_>) {
@@ -217,10 +241,11 @@ impl<'v> Section<'v> {
             .collect();
         match given.as_slice() {
             [_] => {}
+            [] if group.iter().any(|key| self.is_meant_elsewhere(key)) => {}
             [] => {
                 let what = format!("{} has none of {all}", self.title);
                 let help = format!("add exactly one of {all}");
-                reading.refuse(Fault::new(self.place, what, help));
+                reading.refuse(Fault::new(self.place, what, help).absence());
             }
             [(first, first_value), others @ ..] => {
                 for (other, value) in others {
@@ -228,8 +253,8 @@ impl<'v> Section<'v> {
                     let help = format!("keep exactly one of {all}");
                     reading.refuse(
                         Fault::new(value.place, what, help)
-                            .label(format!("`{other}` here"))
-                            .related(first_value.place, format!("`{first}` here")),
+                            .label("and this")
+                            .related(first_value.place, "this"),
                     );
                 }
             }

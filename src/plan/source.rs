@@ -40,22 +40,30 @@ impl Source {
         (line, before.chars().count() + 1)
     }
 
-    /// The byte at which a line begins, lines from 1.
-    pub(super) fn line_start(&self, line: usize) -> usize {
+    fn line_start(&self, line: usize) -> usize {
         let known = self.line_starts.get(line.saturating_sub(1));
         known.copied().unwrap_or(self.text.len())
     }
 
-    /// The nearest range that lies in the text and cuts no character.
+    /// The bytes of a line without its break, lines from 1.
+    pub(super) fn line_range(&self, line: usize) -> Range<usize> {
+        let start = self.line_start(line);
+        let with_break = self.text.get(start..self.line_start(line + 1));
+        let line = with_break.unwrap_or("").trim_end_matches(['\r', '\n']);
+        start..start + line.len()
+    }
+
+    /// The nearest range that lies in the text, cuts no character and, except
+    /// at the end of the text, holds one.
     pub(super) fn whole_characters(&self, range: Range<usize>) -> Range<usize> {
         let start = self.text.floor_char_boundary(range.start);
-        let end = self.text.ceil_char_boundary(range.end.max(start));
+        let end = self.text.ceil_char_boundary(range.end.max(start + 1));
         start..end
     }
 }
 
 /// A piece of one of the sources.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Place {
     /// Index among the sources.
     pub(super) source: u32,

@@ -1,27 +1,12 @@
-//! The units that people write, with their exact values in metres and days.
+//! The units that people write, and their values in metres and days.
 //!
-//! Definitions: the inch is 0.0254 m and the foot 0.3048 m exactly, the US
-//! gallon 231 in³, the imperial gallon 4.54609 L; the year of "in/yr" is
-//! 365.25 days. A bare number is in the plan's own unit (see [`UnitSystem`]);
-//! a string such as "25 L/s" carries its own.
-//! Source: NIST SP 811 (2008), appendix B, from memory; the factors follow
-//! from the definitions above. The length of the year is our choice.
+//! A bare number is in the plan's own unit (see [`UnitSystem`]); a text such
+//! as "25 L/s" carries its own. The units and their definitions stand in
+//! `units/table.rs`.
 
-const INCH: f64 = 0.0254;
-const FOOT: f64 = 0.3048;
-const FOOT_2: f64 = FOOT * FOOT;
-const FOOT_3: f64 = FOOT_2 * FOOT;
-const FOOT_5: f64 = FOOT_2 * FOOT_3;
-const SURVEY_FOOT: f64 = 1200.0 / 3937.0;
-const MILE: f64 = 5280.0 * FOOT;
-const GALLON: f64 = 0.003_785_411_784;
-const IMPERIAL_GALLON: f64 = 0.004_546_09;
-const ACRE_FOOT: f64 = 43_560.0 * FOOT_3;
-const HOURS: f64 = 24.0;
-const MINUTES: f64 = 1440.0;
-const SECONDS: f64 = 86_400.0;
-const YEAR: f64 = 365.25;
-const GPM: f64 = GALLON * MINUTES;
+mod table;
+
+use table::{FOOT, FOOT_2, GPM, INCH, Unit, YEAR};
 
 /// The units of a plan's bare numbers.
 ///
@@ -70,113 +55,6 @@ pub enum Dimension {
     Share,
 }
 
-/// One unit: how it is written, and its value in metres, days and degrees.
-#[derive(Debug)]
-struct Unit {
-    /// The first spelling is the one that is shown.
-    spellings: &'static [&'static str],
-    si: f64,
-}
-
-const fn unit(spellings: &'static [&'static str], si: f64) -> Unit {
-    Unit { spellings, si }
-}
-
-impl Unit {
-    fn name(&self) -> &'static str {
-        self.spellings.first().copied().unwrap_or("")
-    }
-}
-
-static LENGTHS: [Unit; 8] = [
-    unit(&["m", "metre", "metres", "meter", "meters"], 1.0),
-    unit(&["cm"], 0.01),
-    unit(&["mm"], 0.001),
-    unit(&["km"], 1000.0),
-    unit(&["ft", "foot", "feet"], FOOT),
-    unit(&["in", "inch", "inches"], INCH),
-    unit(&["mi", "mile", "miles"], MILE),
-    unit(&["ftUS", "us-ft"], SURVEY_FOOT),
-];
-
-static RATES: [Unit; 14] = [
-    unit(&["m3/d", "m3/day"], 1.0),
-    unit(&["m3/h", "m3/hr"], HOURS),
-    unit(&["m3/min"], MINUTES),
-    unit(&["m3/s"], SECONDS),
-    unit(&["L/s", "l/s", "lps"], 0.001 * SECONDS),
-    unit(&["L/min", "l/min", "lpm"], 0.001 * MINUTES),
-    unit(&["ML/d"], 1000.0),
-    unit(&["gpm", "gal/min"], GPM),
-    unit(&["gpd", "gal/d", "gal/day"], GALLON),
-    unit(&["mgd", "Mgal/d"], 1e6 * GALLON),
-    unit(&["ft3/s", "cfs"], FOOT_3 * SECONDS),
-    unit(&["ft3/d", "cfd"], FOOT_3),
-    unit(&["acre-ft/yr", "ac-ft/yr"], ACRE_FOOT / YEAR),
-    unit(&["imp gal/min", "igpm"], IMPERIAL_GALLON * MINUTES),
-];
-
-static SPEEDS: [Unit; 15] = [
-    unit(&["m/d", "m/day"], 1.0),
-    unit(&["m/s"], SECONDS),
-    unit(&["cm/s"], 0.01 * SECONDS),
-    unit(&["cm/d"], 0.01),
-    unit(&["mm/d"], 0.001),
-    unit(&["mm/yr", "mm/a"], 0.001 / YEAR),
-    unit(&["cm/yr", "cm/a"], 0.01 / YEAR),
-    unit(&["m/yr", "m/a"], 1.0 / YEAR),
-    unit(&["ft/d", "ft/day"], FOOT),
-    unit(&["ft/s"], FOOT * SECONDS),
-    unit(&["in/h", "in/hr"], INCH * HOURS),
-    unit(&["in/d"], INCH),
-    unit(&["in/yr"], INCH / YEAR),
-    unit(&["ft/yr"], FOOT / YEAR),
-    unit(&["gpd/ft2", "gal/d/ft2"], GALLON / FOOT_2),
-];
-
-static TRANSMISSIVITIES: [Unit; 6] = [
-    unit(&["m2/d", "m2/day"], 1.0),
-    unit(&["m2/s"], SECONDS),
-    unit(&["cm2/s"], 1e-4 * SECONDS),
-    unit(&["ft2/d", "ft2/day"], FOOT_2),
-    unit(&["ft2/s"], FOOT_2 * SECONDS),
-    unit(&["gpd/ft", "gal/d/ft"], GALLON / FOOT),
-];
-
-static TIMES: [Unit; 5] = [
-    unit(&["d", "day", "days"], 1.0),
-    unit(&["h", "hr", "hour", "hours"], 1.0 / HOURS),
-    unit(&["min", "minute", "minutes"], 1.0 / MINUTES),
-    unit(&["s", "second", "seconds"], 1.0 / SECONDS),
-    unit(&["yr", "a", "year", "years"], YEAR),
-];
-
-static WELL_LOSSES: [Unit; 7] = [
-    unit(&["d2/m5"], 1.0),
-    unit(&["h2/m5"], 1.0 / (HOURS * HOURS)),
-    unit(&["min2/m5"], 1.0 / (MINUTES * MINUTES)),
-    unit(&["s2/m5"], 1.0 / (SECONDS * SECONDS)),
-    unit(&["s2/ft5"], 1.0 / (SECONDS * SECONDS * FOOT_5)),
-    unit(&["d2/ft5"], 1.0 / FOOT_5),
-    unit(&["ft/gpm2"], FOOT / (GPM * GPM)),
-];
-
-static ANGLES: [Unit; 2] = [
-    unit(&["deg", "°", "degrees"], 1.0),
-    unit(&["rad"], 180.0 / std::f64::consts::PI),
-];
-
-static SLOPES: [Unit; 6] = [
-    unit(&["m/m"], 1.0),
-    unit(&["m/km"], 0.001),
-    unit(&["ft/ft"], 1.0),
-    unit(&["ft/mi"], 1.0 / 5280.0),
-    unit(&["%"], 0.01),
-    unit(&["‰"], 0.001),
-];
-
-static SHARES: [Unit; 1] = [unit(&["%"], 0.01)];
-
 /// Every dimension, for looking a unit up among the others.
 const DIMENSIONS: [Dimension; 10] = [
     Dimension::Length,
@@ -192,20 +70,6 @@ const DIMENSIONS: [Dimension; 10] = [
 ];
 
 impl Dimension {
-    fn units(self) -> &'static [Unit] {
-        match self {
-            Self::Length => &LENGTHS,
-            Self::Rate => &RATES,
-            Self::Conductivity | Self::Flux => &SPEEDS,
-            Self::Transmissivity => &TRANSMISSIVITIES,
-            Self::Time => &TIMES,
-            Self::WellLoss => &WELL_LOSSES,
-            Self::Angle => &ANGLES,
-            Self::Slope => &SLOPES,
-            Self::Share => &SHARES,
-        }
-    }
-
     /// What it is called in a sentence.
     pub fn name(self) -> &'static str {
         match self {
@@ -224,7 +88,7 @@ impl Dimension {
 
     /// The accepted units, as a list for a sentence: "m, cm, mm, …".
     pub fn accepted(self) -> String {
-        let names: Vec<_> = self.units().iter().map(Unit::name).collect();
+        let names: Vec<_> = table::units_of(self).iter().map(Unit::name).collect();
         names.join(", ")
     }
 }
@@ -283,6 +147,9 @@ pub enum UnitError {
     /// It does not begin with a number.
     #[error("it does not begin with a number")]
     NoNumber,
+    /// Its number has a comma.
+    #[error("a number has no commas, and a point before its decimals")]
+    Comma,
     /// It is a number without a unit.
     #[error("a number in quotes needs a unit")]
     NoUnit,
@@ -317,6 +184,9 @@ pub fn parse(text: &str, wanted: Dimension) -> Result<f64, UnitError> {
     if written.is_empty() {
         return Err(UnitError::NoUnit);
     }
+    if written.starts_with(',') {
+        return Err(UnitError::Comma);
+    }
     let spelling = plain_spelling(written);
     if let Some(found) = find(&spelling, wanted) {
         return Ok(number * found.si);
@@ -326,19 +196,24 @@ pub fn parse(text: &str, wanted: Dimension) -> Result<f64, UnitError> {
         .find(|dimension| find(&spelling, *dimension).is_some());
     Err(match other {
         Some(dimension) => UnitError::WrongDimension {
-            unit: written.to_owned(),
+            unit: short(written),
             measures: dimension.name(),
             wanted: wanted.name(),
         },
         None => UnitError::Unknown {
-            unit: written.to_owned(),
+            unit: short(written),
             wanted: wanted.name(),
         },
     })
 }
 
+/// Enough of a text to know it again.
+fn short(text: &str) -> String {
+    text.chars().take(40).collect()
+}
+
 fn find(spelling: &str, dimension: Dimension) -> Option<&'static Unit> {
-    let units = dimension.units();
+    let units = table::units_of(dimension);
     let exact = units.iter().find(|unit| unit.spellings.contains(&spelling));
     exact.or_else(|| {
         units.iter().find(|unit| {

@@ -1,8 +1,8 @@
 //! Reads `[[well]]` and `[[well_layer]]`.
 
-use crate::site::{Length, Level, Point, Rate, Well, WellLoss};
+use crate::site::{Aquifer, Length, Level, Point, Rate, Subject, Well, WellLoss};
 
-use super::fault::Fault;
+use super::fault::{Fault, shown};
 use super::features::{Geometry, Wanted};
 use super::keys::{
     AT, FEATURE, FILE, GROUND, INJECTION, LAYER, LOWEST_LEVEL, PUMPING, RADIUS, WELL,
@@ -11,8 +11,8 @@ use super::keys::{
 use super::layers::note_unused_columns;
 use super::names::Names;
 use super::points::Vertex;
-use super::quantities::number;
-use super::reader::{MOST_ITEMS, Reading, Section, tables};
+use super::quantities::rounded;
+use super::reader::{MOST_FAULTS, Reading, Section, tables};
 use super::source::Place;
 use super::source_map::SourceMap;
 use super::units::Dimension;
@@ -112,13 +112,43 @@ fn read_well(
     Some((well, at.place))
 }
 
+/// Within its own rim a well's drawdown would be negative.
+pub(super) fn refuse_beyond_influence(
+    aquifer: &Aquifer,
+    wells: &[Well],
+    map: &SourceMap,
+    reading: &mut Reading<'_>,
+) {
+    // Where a well is at fault, the places no longer match the wells.
+    let Some(influence) = aquifer
+        .influence_radius
+        .filter(|_| map.wells.len() == wells.len())
+    else {
+        return;
+    };
+    let wide = |(_, well): &(usize, &Well)| well.radius >= influence;
+    for (index, well) in wells.iter().enumerate().filter(wide) {
+        let [radius, influence] = [well.radius, influence]
+            .map(|length| rounded(reading.units.of_si(Dimension::Length, length.si()), 6));
+        let unit = reading.units.unit_name(Dimension::Length);
+        let what = format!(
+            "well `{}`: `radius` is {radius} {unit}, not below `influence_radius`, {influence} {unit}",
+            shown(&well.name)
+        );
+        let help = "check both: the influence of a well reaches far beyond its borehole";
+        let fault = Fault::new(map.find(&Subject::Well(index, Some("radius"))), what, help);
+        let influence_place = map.find(&Subject::Aquifer(Some("influence_radius")));
+        reading.refuse(fault.related(influence_place, "the influence radius"));
+    }
+}
+
 fn refuse_none(plan: &Section<'_>, reading: &mut Reading<'_>) {
     if plan.value(&WELL).is_some() || plan.value(&WELL_LAYER).is_some() {
         return;
     }
     let what = "the plan has no well";
     let help = "add [[well]] with `name`, `at`, `radius` and `pumping` or `injection`";
-    reading.refuse(Fault::new(plan.place, what, help));
+    reading.refuse(Fault::new(plan.place, what, help).absence());
 }
 
 /// Wells sorted by their easting are compared only while they can be near.
@@ -145,7 +175,7 @@ fn refuse_overlaps(wells: &[Placed], reading: &mut Reading<'_>) {
             };
             let fault = overlap_fault(first, second, apart, reading);
             reading.refuse(fault);
-            if reading.faults.len() > MOST_ITEMS {
+            if reading.faults.len() >= MOST_FAULTS {
                 return;
             }
         }
@@ -158,9 +188,9 @@ fn distance(a: Point, b: Point) -> f64 {
 
 fn overlap_fault(first: &Placed, second: &Placed, apart: f64, reading: &Reading<'_>) -> Fault {
     let [apart, radii] = [apart, first.0.radius.si() + second.0.radius.si()]
-        .map(|metres| number(reading.units.of_si(Dimension::Length, metres)));
+        .map(|metres| rounded(reading.units.of_si(Dimension::Length, metres), 6));
     let unit = reading.units.unit_name(Dimension::Length);
-    let [one, other] = [&first.0.name, &second.0.name].map(|name| super::fault::shown(name));
+    let [one, other] = [&first.0.name, &second.0.name].map(|name| shown(name));
     let what = format!(
         "wells `{one}` and `{other}` are {apart} {unit} apart, less than the sum of their radii, {radii} {unit}"
     );

@@ -1,0 +1,19 @@
+//! Tests of `src/outline`: what shapes are found, how ends are carried on,
+//! what is refused, and laws that hold for every place and direction.
+//!
+//! Expected values are elementary geometry, worked out by hand beside each
+//! check.
+
+#![expect(
+    clippy::panic,
+    clippy::indexing_slicing,
+    reason = "a test stops where its plan is not what it expects"
+)]
+
+mod areas;
+mod extensions;
+mod laws;
+mod placements;
+mod plans;
+mod refusals;
+mod shapes;
