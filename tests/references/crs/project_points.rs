@@ -31,13 +31,18 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         let [code, shift, numbers @ ..] = fields.as_slice() else {
             return Err("a code, a shift and four numbers a line".into());
         };
-        let numbers: Vec<f64> = numbers.iter().map(|n| n.parse()).collect::<Result<_, _>>()?;
+        let numbers: Vec<f64> = numbers
+            .iter()
+            .map(|n| n.parse())
+            .collect::<Result<_, _>>()?;
         let [longitude, latitude, x, y] = numbers.try_into().map_err(|_| "four numbers a line")?;
         let grid = known
             .entry(format!("{code},{shift}"))
             .or_insert_with(|| projection(code, shift));
         let none = (f64::NAN, f64::NAN);
-        let forward = grid.as_ref().and_then(|grid| grid.forward(longitude, latitude));
+        let forward = grid
+            .as_ref()
+            .and_then(|grid| grid.forward(longitude, latitude));
         let backward = grid.as_ref().and_then(|grid| grid.backward(x, y));
         let ((x, y), (longitude, latitude)) = (forward.unwrap_or(none), backward.unwrap_or(none));
         writeln!(output, "{x},{y},{longitude},{latitude}")?;

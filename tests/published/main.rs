@@ -1,0 +1,14 @@
+//! What the program computes against numbers from outside it: published
+//! tables and formulas, and values of general-purpose libraries kept in
+//! `tests/references/` with the scripts that made them. One file a source.
+
+#![allow(
+    clippy::unwrap_used,
+    clippy::expect_used,
+    clippy::panic,
+    clippy::indexing_slicing,
+    reason = "a test fails by panic"
+)]
+
+mod projections;
+mod table;
