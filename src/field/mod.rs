@@ -1,96 +1,305 @@
 //! Superposes wells on the ambient head; evaluates points and grids in
 //! parallel and in batches.
+//!
+//! h(x) = h₀(x) − Σ Qⱼ/T · G(x, xⱼ), one [`WellField`] for each aquifer.
 
-use crate::outline::Outline;
+mod accuracy;
+mod ambient;
+mod ambient_error;
+mod steady;
+
+use std::f64::consts::FRAC_1_PI;
+
+use num_complex::Complex64;
+use rayon::prelude::*;
+
+use crate::green::{Green, Source};
+use crate::outline::{Kind, Outline, Shape};
 use crate::site::{Point, Refusal, Site, Vector};
+use ambient::AmbientHead;
+
+/// Points that one task evaluates: enough to hide the cost of a task.
+const POINTS_A_TASK: usize = 2048;
 
 /// The heads of one aquifer with its wells.
-pub struct WellField {}
+pub struct WellField {
+    outline: Outline,
+    green: Box<dyn Green>,
+    transmissivity_m2_d: f64,
+    wells: Vec<FieldWell>,
+    ambient: AmbientHead,
+    /// In a closed basin whose head is fixed at one place: that place.
+    datum: Option<Complex64>,
+    influence_radius_m: Option<f64>,
+    error_bound_m: f64,
+    notes: Vec<String>,
+}
 
-#[allow(unused_variables)]
+/// A well in the canonical frame.
+#[derive(Clone, Copy, Debug)]
+struct FieldWell {
+    /// Index in `Site::wells`.
+    index: usize,
+    pole: Complex64,
+    pumping_m3_d: f64,
+    /// Radius of the circle that draws as the (stretched) borehole does.
+    rim_m: f64,
+}
+
 impl WellField {
     /// Solves one aquifer.
     ///
     /// # Errors
     /// Where no steady state exists, or the ambient head contradicts the
-    /// edges; the refusal says which numbers disagree and what would help.
+    /// edges; the refusals say which numbers disagree and what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
-        Ok(Self {})
+        let mut notes = Vec::new();
+        let green = steady::green_of(site, &outline, &mut notes).map_err(|fault| vec![fault])?;
+        let ambient = ambient::solve(site, &outline, green.as_ref(), &mut notes)
+            .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
+        let datum = steady::datum(site, &outline, &mut notes);
+        let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+        let rim_factor = outline.frame.stretch.rim_factor();
+        let of_well = |&index: &usize| {
+            let well = site.wells.get(index)?;
+            Some(FieldWell {
+                index,
+                pole: outline.frame.to_canonical(well.at),
+                pumping_m3_d: well.pumping.si(),
+                rim_m: well.radius.si() * rim_factor,
+            })
+        };
+        let mut field = Self {
+            wells: outline.wells.iter().filter_map(of_well).collect(),
+            transmissivity_m2_d: site.aquifer.transmissivity.si(),
+            influence_radius_m: if has_river {
+                None
+            } else {
+                site.aquifer.influence_radius.map(|radius| radius.si())
+            },
+            green,
+            outline,
+            ambient,
+            datum,
+            error_bound_m: 0.0,
+            notes,
+        };
+        field.error_bound_m = accuracy::bound_m(&field);
+        Ok(field)
     }
 
     /// The outline it was solved on.
     pub fn outline(&self) -> &Outline {
-        unimplemented!()
+        &self.outline
     }
 
     /// Whether a point lies in this aquifer or on its edge.
     pub fn holds(&self, point: Point) -> bool {
-        unimplemented!()
+        self.outline.holds(point)
     }
 
     /// Heads, metres, in point order; NaN outside the aquifer. Parallel.
     pub fn heads_m(&self, points: &[Point]) -> Vec<f64> {
-        unimplemented!()
+        self.evaluate(points, |z, drawdown_m| {
+            let (green, shape) = (self.green.as_ref(), &self.outline.shape);
+            self.ambient.head_m(z, green, shape) - drawdown_m
+        })
     }
 
     /// Drawdowns, metres, positive where the head falls; NaN outside. Parallel.
     pub fn drawdowns_m(&self, points: &[Point]) -> Vec<f64> {
-        unimplemented!()
+        self.evaluate(points, |_, drawdown_m| drawdown_m)
     }
 
     /// The head before any pumping, metres; NaN outside.
     pub fn ambient_head_m(&self, point: Point) -> f64 {
-        unimplemented!()
+        if !self.holds(point) {
+            return f64::NAN;
+        }
+        let z = self.outline.frame.to_canonical(point);
+        self.ambient
+            .head_m(z, self.green.as_ref(), &self.outline.shape)
     }
 
-    /// Gradient of the head, metres a metre.
+    /// Gradient of the head, metres a metre; NaN outside the aquifer, zero
+    /// within a well's rim.
     pub fn head_gradient(&self, point: Point) -> Vector {
-        unimplemented!()
+        if !self.holds(point) {
+            return Vector::repeat(f64::NAN);
+        }
+        let z = self.outline.frame.to_canonical(point);
+        if self
+            .wells
+            .iter()
+            .any(|well| (z - well.pole).norm() < well.rim_m)
+        {
+            return Vector::zeros();
+        }
+        let step_m = 1e-3 * self.outline.distance_to_edge_m(point);
+        let before = self.ambient.gradient(z, self.green.as_ref(), step_m);
+        let pumped: Complex64 = self
+            .wells
+            .iter()
+            .map(|well| self.strength_m(well) * self.green.gradient(z, well.pole))
+            .sum();
+        self.outline.frame.gradient_to_site(before - pumped)
     }
 
     /// Drawdown, metres, that the well `Site::wells[well]` of this aquifer
-    /// causes at a point; its own rim's drawdown within its rim. Well loss is
-    /// left out.
+    /// causes at a point; that of its rim within its rim. Well loss is left
+    /// out. NaN where the aquifer holds no such well or not the point.
     pub fn drawdown_by_m(&self, well: usize, point: Point) -> f64 {
-        unimplemented!()
+        self.well(well).map_or(f64::NAN, |source| {
+            source.pumping_m3_d * self.unit_drawdown_by(well, point)
+        })
     }
 
-    /// Drawdown at `point` by each m³/d that `well` pumps: G/T, d/m².
+    /// Drawdown at `point` for each m³/d that `Site::wells[well]` pumps, G/T in
+    /// d/m²; that of its rim within its rim. NaN as for `drawdown_by_m`.
     pub fn unit_drawdown_by(&self, well: usize, point: Point) -> f64 {
-        unimplemented!()
+        let Some(source) = self.well(well).filter(|_| self.holds(point)) else {
+            return f64::NAN;
+        };
+        let z = self.outline.frame.to_canonical(point);
+        let green = self.green.value_outside_rim(z, source.pole, source.rim_m);
+        (green - self.green_at_datum(source)) / self.transmissivity_m2_d
     }
 
     /// The well's own drawdown at its rim, metres, well loss left out:
     /// Q/(2πT) ln(1/r_w) + Q/T · R.
     pub fn own_drawdown_m(&self, well: usize) -> f64 {
-        unimplemented!()
+        self.well(well).map_or(f64::NAN, |source| {
+            let logarithm = -source.rim_m.ln() * 0.5 * FRAC_1_PI;
+            let at_rim = logarithm + self.green.regular_part(source.pole);
+            let green = at_rim - self.green_at_datum(source);
+            self.strength_m(source) * green
+        })
     }
 
     /// Water that edge `Site::edges[edge]` gives to well `Site::wells[well]`,
-    /// m³/d; negative for an injecting well.
+    /// m³/d; negative for an injecting well, zero for a barrier.
     pub fn inflow_m3_d(&self, edge: usize, well: usize) -> f64 {
-        unimplemented!()
+        let Some(source) = self.well(well) else {
+            return 0.0;
+        };
+        let share: f64 = self
+            .outline
+            .sides
+            .iter()
+            .enumerate()
+            .flat_map(|(side, pieces)| pieces.iter().map(move |piece| (side, piece)))
+            .filter(|(_, piece)| piece.edge == edge)
+            .map(|(side, piece)| self.green.share(side, piece.along.clone(), source.pole))
+            .sum();
+        source.pumping_m3_d * share
     }
 
     /// A bound on the rounding error of a head, metres.
     pub fn error_bound_m(&self) -> f64 {
-        unimplemented!()
+        self.error_bound_m
     }
 
-    /// How it was computed, in a few words: "image wells in closed form".
-    pub fn method(&self) -> &'static str {
-        unimplemented!()
+    /// How it was computed, in a few words.
+    pub fn method(&self) -> String {
+        if let Some(radius_m) = self.influence_radius_m {
+            return format!("Thiem's formula with superposed images within {radius_m:.0} m");
+        }
+        match self.outline.shape {
+            Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
+            Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::Axes { .. } if self.is_closed_basin() => {
+                "image wells in closed form, pumping and injection in balance"
+            }
+            Shape::Axes { .. } => "image wells in closed form",
+        }
+        .to_owned()
     }
 
     /// What the reader should know of this solution: assumptions made where
     /// the plan was silent.
     pub fn notes(&self) -> &[String] {
-        unimplemented!()
+        &self.notes
     }
 
     /// The nearest images of a well in site coordinates, nearest first, with
     /// sign (±1) and order; at most `count`.
     pub fn images(&self, well: usize, count: usize) -> Vec<(Point, f64, u32)> {
-        unimplemented!()
+        let Some(source) = self.well(well) else {
+            return Vec::new();
+        };
+        let images = self.green.nearest_images(source.pole, count).into_iter();
+        images
+            .map(|image| {
+                (
+                    self.outline.frame.to_site(image.at),
+                    image.sign,
+                    image.order,
+                )
+            })
+            .collect()
+    }
+
+    fn well(&self, index: usize) -> Option<&FieldWell> {
+        self.wells.iter().find(|well| well.index == index)
+    }
+
+    fn is_closed_basin(&self) -> bool {
+        !self.outline.shape.side_kinds().contains(&Kind::FixedHead)
+            && self.influence_radius_m.is_none()
+    }
+
+    /// Q/T, metres.
+    fn strength_m(&self, well: &FieldWell) -> f64 {
+        well.pumping_m3_d / self.transmissivity_m2_d
+    }
+
+    fn green_at_datum(&self, well: &FieldWell) -> f64 {
+        self.datum.map_or(0.0, |datum| {
+            self.green.value_outside_rim(datum, well.pole, well.rim_m)
+        })
+    }
+
+    /// Σ Q/T G at each point of the aquifer, handed to `finish` with the
+    /// canonical place; NaN elsewhere.
+    fn evaluate(
+        &self,
+        points: &[Point],
+        finish: impl Fn(Complex64, f64) -> f64 + Sync,
+    ) -> Vec<f64> {
+        let sources: Vec<_> = self
+            .wells
+            .iter()
+            .map(|well| Source {
+                pole: well.pole,
+                strength_m: self.strength_m(well),
+                rim_m: well.rim_m,
+            })
+            .collect();
+        let at_datum: f64 = self
+            .wells
+            .iter()
+            .map(|well| self.strength_m(well) * self.green_at_datum(well))
+            .sum();
+        let mut values = vec![f64::NAN; points.len()];
+        points
+            .par_chunks(POINTS_A_TASK)
+            .zip(values.par_chunks_mut(POINTS_A_TASK))
+            .for_each(|(points, values)| {
+                let inside: Vec<_> = points.iter().map(|point| self.holds(*point)).collect();
+                let held = points.iter().zip(&inside).filter(|(_, inside)| **inside);
+                let places: Vec<_> = held
+                    .map(|(point, _)| self.outline.frame.to_canonical(*point))
+                    .collect();
+                let mut drawdowns_m = vec![-at_datum; places.len()];
+                self.green.superpose(&sources, &places, &mut drawdowns_m);
+                let slots = values
+                    .iter_mut()
+                    .zip(&inside)
+                    .filter(|(_, inside)| **inside);
+                for ((value, _), (z, drawdown_m)) in slots.zip(places.iter().zip(drawdowns_m)) {
+                    *value = finish(*z, drawdown_m);
+                }
+            });
+        values
     }
 }

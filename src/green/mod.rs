@@ -4,9 +4,29 @@
 //! on fixed-head sides and ∂G/∂n = 0 on no-flow sides. A well that pumps Q at
 //! z₀ lowers the head at z by Q/T · G(z, z₀).
 
+mod batch;
+mod corner;
+mod disk;
+mod influence;
+mod lanes;
+mod logarithm;
+mod mirrors;
+mod rows;
+mod wedge;
+
+use std::f64::consts::FRAC_1_PI;
 use std::ops::Range;
 
 use num_complex::Complex64;
+use thiserror::Error;
+
+use crate::outline::{Axis, Kind, Shape};
+use corner::Corner;
+use disk::Disk;
+use influence::Influence;
+use mirrors::AxisImage;
+use rows::Rows;
+use wedge::Wedge;
 
 /// A well as Green's functions see it.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -35,14 +55,26 @@ pub struct Image {
 /// Places are complex numbers of the outline's canonical frame, in metres; G
 /// has no unit. `at` lies inside the outline or on it, a pole inside.
 pub trait Green: Send + Sync {
-    /// G(at, pole).
-    fn value(&self, at: Complex64, pole: Complex64) -> f64;
+    /// G(at, pole), where a place nearer to the pole than `rim_m` takes the
+    /// value of the rim, −ln(rim_m)/(2π) + the regular part there.
+    fn value_outside_rim(&self, at: Complex64, pole: Complex64, rim_m: f64) -> f64;
+
+    /// G(at, pole), at ≠ pole.
+    fn value(&self, at: Complex64, pole: Complex64) -> f64 {
+        self.value_outside_rim(at, pole, 0.0)
+    }
 
     /// ∂G/∂x + i ∂G/∂y at `at`, in 1/m.
     fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64;
 
     /// The limit of G(z, pole) + ln abs(z − pole)/(2π) at the pole.
-    fn regular_part(&self, pole: Complex64) -> f64;
+    ///
+    /// Read off on a rim so small that nothing but the logarithm varies
+    /// across it; the two logarithms of 1e-20 cancel to 1e-15.
+    fn regular_part(&self, pole: Complex64) -> f64 {
+        const RIM_M: f64 = 1e-20;
+        self.value_outside_rim(pole, pole, RIM_M) + RIM_M.ln() * 0.5 * FRAC_1_PI
+    }
 
     /// −∫ ∂G/∂n dl over the part `along` of side number `side`: the share of
     /// the pole's water that comes through it. Zero on no-flow sides. Over
@@ -56,3 +88,78 @@ pub trait Green: Send + Sync {
     /// `count`.
     fn nearest_images(&self, pole: Complex64, count: usize) -> Vec<Image>;
 }
+
+/// Why an outline has no Green's function.
+#[derive(Clone, Copy, Debug, Error, PartialEq)]
+pub enum GreenError {
+    /// No edge fixes the head and no influence radius is given.
+    #[error("no river fixes the head, so a steady cone of depression has no edge")]
+    NoSteadyState,
+    /// The influence radius reaches over too many images.
+    #[error("the influence radius reaches some {images:.0} image wells, more than {most:.0}")]
+    TooManyImages {
+        /// How many images each well would have.
+        images: f64,
+        /// The largest number that is summed.
+        most: f64,
+    },
+}
+
+/// The Green's function of a named shape.
+///
+/// With a river, image wells hold its head. Without one the influence radius
+/// (metres) bounds the cones; a closed box of barriers has Neumann's function
+/// of zero mean, right only for wells whose pumping and injection balance.
+///
+/// # Errors
+/// `NoSteadyState` where a radius is needed and missing; `TooManyImages`.
+pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Green>, GreenError> {
+    use Axis::{OneEdge, Open, TwoEdges};
+    use Kind::{FixedHead, NoFlow};
+    if influence::needs_radius(shape) {
+        let radius = influence_radius_m.ok_or(GreenError::NoSteadyState)?;
+        return Ok(Box::new(Influence::new(*shape, radius)?));
+    }
+    Ok(match *shape {
+        Shape::Axes { x, y } => match (x, y) {
+            (TwoEdges { width_m, kinds }, y_axis) => Box::new(Rows::new(width_m, kinds, y_axis)),
+            (OneEdge(FixedHead), OneEdge(FixedHead)) => Box::new(Corner::TwoRivers),
+            (OneEdge(FixedHead), OneEdge(NoFlow)) => Box::new(Corner::RiverThenBarrier),
+            (OneEdge(NoFlow), OneEdge(FixedHead)) => Box::new(Corner::BarrierThenRiver),
+            (OneEdge(_), _) => Box::new(Corner::River),
+            (Open, _) => return Err(GreenError::NoSteadyState),
+        },
+        Shape::Wedge { angle_rad, kinds } => Box::new(Wedge::new(angle_rad, kinds)),
+        Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
+            Box::new(Disk::new(radius_m))
+        }
+    })
+}
+
+/// All products of images across x and images across y.
+fn product_of(columns: &[AxisImage], rows: &[AxisImage]) -> Vec<Image> {
+    rows.iter()
+        .flat_map(|row| columns.iter().map(move |column| (row, column)))
+        .map(|(row, column)| Image {
+            at: Complex64::new(column.position, row.position),
+            sign: row.sign * column.sign,
+            order: row.order + column.order,
+        })
+        .collect()
+}
+
+/// The `count` images nearest to a pole, itself left out, nearest first.
+fn nearest(pole: Complex64, mut images: Vec<Image>, count: usize) -> Vec<Image> {
+    images.retain(|image| image.order > 0);
+    images.sort_by(|one, other| {
+        let distance = |image: &Image| (image.at - pole).norm();
+        distance(one)
+            .total_cmp(&distance(other))
+            .then(one.order.cmp(&other.order))
+    });
+    images.truncate(count);
+    images
+}
+
+#[cfg(test)]
+mod tests;

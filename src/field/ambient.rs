@@ -1,0 +1,377 @@
+//! The head before any pumping: what the rivers fix, and the uniform flow that
+//! the edges leave free.
+//!
+//! | outline | head before pumping |
+//! |---|---|
+//! | no river | level + gradient · (x − at), along the barriers |
+//! | one stage on all rivers | that stage |
+//! | rivers across one axis only | linear from stage to stage |
+//! | wedge between two rivers | linear in the angle |
+//! | half-plane, stage falling along the river | linear along the river |
+//! | other rivers of different stage | Σ stage · harmonic measure of the river |
+//! | half-plane, river across an open end | plus slope · distance from the river |
+//! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
+//!
+//! The harmonic measure of a river seen from x is the share that it would give
+//! to a well at x, so `green` knows it. What the plan states is compared with
+//! what the edges fix; a contradiction is refused with both numbers.
+
+use std::ops::Range;
+
+use num_complex::Complex64;
+
+use super::ambient_error::AmbientError;
+use crate::green::Green;
+use crate::outline::{Axis, Kind, Outline, Piece, Shape};
+use crate::site::{Ambient, Point, Site, Vector, direction_of_azimuth};
+
+/// A stated head may differ from the one that the rivers fix by this much.
+const HEAD_TOLERANCE_M: f64 = 0.01;
+
+/// A stated gradient may differ from the one that the edges fix by this share
+/// of itself: one degree of azimuth, as azimuths are read off maps.
+const GRADIENT_TOLERANCE: f64 = 0.0175;
+
+/// Gradients below this are taken for none: a centimetre in ten kilometres.
+const NO_GRADIENT: f64 = 1e-6;
+
+/// The head before any pumping, in an outline's canonical frame.
+#[derive(Clone, Debug)]
+pub(super) struct AmbientHead {
+    /// Head at the canonical origin, without the other parts.
+    level_m: f64,
+    /// ∂h/∂x + i ∂h/∂y of the linear part.
+    slope: Complex64,
+    /// Around a lake the linear part is bent so that the shore stays level.
+    lake_radius_m: Option<f64>,
+    /// Rise of the head over the angle of a wedge, metres a radian.
+    per_radian_m: f64,
+    /// Parts of sides whose stage differs from `level_m`, and by how much.
+    measured: Vec<(usize, Range<f64>, f64)>,
+}
+
+impl AmbientHead {
+    /// Head before pumping at a canonical place, metres.
+    pub fn head_m(&self, z: Complex64, green: &dyn Green, shape: &Shape) -> f64 {
+        let linear = (self.slope.conj() * z).re;
+        let bend = self
+            .lake_radius_m
+            .map_or(1.0, |radius| 1.0 - radius * radius / z.norm_sqr());
+        let turned = self.per_radian_m * shape.angle_of(z);
+        let measured: f64 = self
+            .measured
+            .iter()
+            .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), z))
+            .sum();
+        self.level_m + linear * bend + turned + measured
+    }
+
+    /// ∂h/∂x + i ∂h/∂y at a canonical place. The part of harmonic measures is
+    /// a central difference over `step_m`, good to 1e-9 of its size where the
+    /// step is a thousandth of the distance to the edge.
+    pub fn gradient(&self, z: Complex64, green: &dyn Green, step_m: f64) -> Complex64 {
+        let i = Complex64::i();
+        let linear = match self.lake_radius_m {
+            None => self.slope,
+            Some(radius) => {
+                // h = Re(s̄ (z − R²/z̄)) = Re(s̄z) − R² Re(s/z)
+                let inner = (-self.slope / (z * z)).conj();
+                self.slope - radius * radius * inner
+            }
+        };
+        let turned = if self.per_radian_m == 0.0 {
+            Complex64::new(0.0, 0.0)
+        } else {
+            self.per_radian_m * i * z / z.norm_sqr()
+        };
+        let measured: Complex64 = self
+            .measured
+            .iter()
+            .map(|(side, along, rise_m)| {
+                let share = |place| green.share(*side, along.clone(), place);
+                let along_x = share(z + step_m) - share(z - step_m);
+                let along_y = share(z + i * step_m) - share(z - i * step_m);
+                rise_m * Complex64::new(along_x, along_y) / (2.0 * step_m)
+            })
+            .sum();
+        linear + turned + measured
+    }
+}
+
+/// Which uniform flow the edges leave free, in the canonical frame.
+#[derive(Clone, Copy, Debug, PartialEq)]
+enum FreeFlow {
+    /// None.
+    No,
+    /// Along one axis only: a unit number.
+    Along(Complex64),
+    /// In any direction.
+    Any,
+}
+
+fn free_flow(shape: &Shape) -> FreeFlow {
+    use Axis::{OneEdge, Open, TwoEdges};
+    use Kind::{FixedHead, NoFlow};
+    let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
+    match *shape {
+        Shape::DiskExterior { .. } => FreeFlow::Any,
+        Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
+        Shape::Axes { x, y } => match (x, y) {
+            (Open, Open) => FreeFlow::Any,
+            (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),
+            (OneEdge(NoFlow), Open | OneEdge(FixedHead)) => FreeFlow::Along(y_axis),
+            (
+                TwoEdges {
+                    kinds: [NoFlow, NoFlow],
+                    ..
+                },
+                Open | OneEdge(FixedHead),
+            ) => FreeFlow::Along(y_axis),
+            _ => FreeFlow::No,
+        },
+    }
+}
+
+/// Finds the head before pumping of one aquifer.
+///
+/// `notes` receives what the reader should know of it.
+pub(super) fn solve(
+    site: &Site,
+    outline: &Outline,
+    green: &dyn Green,
+    notes: &mut Vec<String>,
+) -> Result<AmbientHead, Vec<AmbientError>> {
+    let stated = stated_gradient(site)?;
+    let mut head = fixed_by_rivers(outline);
+    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+    let canonical = outline.frame.gradient_to_canonical(stated);
+    let free = match free_flow(&outline.shape) {
+        FreeFlow::No => Complex64::new(0.0, 0.0),
+        FreeFlow::Any => canonical,
+        FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
+    };
+    head.slope += free;
+    if let Shape::DiskExterior { radius_m } = outline.shape {
+        head.lake_radius_m = Some(radius_m);
+    }
+    let Some(ambient) = &site.ambient else {
+        return if has_river {
+            Ok(head)
+        } else {
+            Err(vec![AmbientError::Missing])
+        };
+    };
+    if has_river {
+        let compared = Comparison {
+            site,
+            outline,
+            green,
+            head: &head,
+        };
+        compared.check(ambient, stated, notes)?;
+    } else {
+        fix_level(&mut head, ambient, outline, stated, notes)?;
+    }
+    Ok(head)
+}
+
+/// ∇h of the plan's `[ambient]`, in the site's frame.
+fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
+    match &site.ambient {
+        Some(ambient) if ambient.gradient > 0.0 => match ambient.toward_deg {
+            Some(azimuth) => Ok(-ambient.gradient * direction_of_azimuth(azimuth)),
+            None => Err(vec![AmbientError::NoDirection {
+                gradient: ambient.gradient,
+            }]),
+        },
+        _ => Ok(Vector::zeros()),
+    }
+}
+
+/// The head that the rivers fix, without any uniform flow.
+fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
+    let kinds = outline.shape.side_kinds();
+    let rivers: Vec<(usize, &Piece)> = kinds
+        .iter()
+        .zip(&outline.sides)
+        .enumerate()
+        .filter(|(_, (kind, _))| **kind == Kind::FixedHead)
+        .flat_map(|(side, (_, pieces))| pieces.iter().map(move |piece| (side, piece)))
+        .collect();
+    let mut head = AmbientHead {
+        level_m: rivers.first().map_or(0.0, |(_, piece)| piece.stage_m),
+        slope: Complex64::new(0.0, 0.0),
+        lake_radius_m: None,
+        per_radian_m: 0.0,
+        measured: Vec::new(),
+    };
+    if let [(0, piece)] = rivers.as_slice() {
+        // A half-plane's river may fall along its side, x = 0.
+        head.slope = Complex64::new(0.0, piece.stage_slope);
+        return head;
+    }
+    if let [(first_side, first), (second_side, second)] = rivers.as_slice() {
+        let rise_m = second.stage_m - first.stage_m;
+        if let Some(across) = across_one_axis(&outline.shape, *first_side, *second_side) {
+            head.slope = across * rise_m;
+            return head;
+        }
+        if let (Shape::Wedge { angle_rad, .. }, true) = (outline.shape, first_side != second_side) {
+            head.per_radian_m = rise_m / angle_rad;
+            return head;
+        }
+    }
+    head.measured = rivers
+        .iter()
+        .map(|(side, piece)| (*side, piece.along.clone(), piece.stage_m - head.level_m))
+        .filter(|(_, _, rise_m)| *rise_m != 0.0)
+        .collect();
+    head
+}
+
+/// 1/width along the axis between two opposite rivers, where these are the
+/// only ones.
+fn across_one_axis(shape: &Shape, first: usize, second: usize) -> Option<Complex64> {
+    let Shape::Axes { x, y } = *shape else {
+        return None;
+    };
+    match (first, second, x, y) {
+        (0, 1, Axis::TwoEdges { width_m, .. }, _) => Some(Complex64::new(width_m.recip(), 0.0)),
+        (2, 3, _, Axis::TwoEdges { width_m, .. }) => Some(Complex64::new(0.0, width_m.recip())),
+        _ => None,
+    }
+}
+
+/// Without a river `[ambient]` fixes the level.
+fn fix_level(
+    head: &mut AmbientHead,
+    ambient: &Ambient,
+    outline: &Outline,
+    stated: Vector,
+    notes: &mut Vec<String>,
+) -> Result<(), Vec<AmbientError>> {
+    let mut faults = Vec::new();
+    let free = outline.frame.gradient_to_site(head.slope);
+    let off = (stated - free).norm();
+    if off > GRADIENT_TOLERANCE * stated.norm() && stated.norm() > NO_GRADIENT {
+        faults.push(AmbientError::AcrossBarrier { stated, free });
+    } else if off > 1e-9 * stated.norm() {
+        notes.push(straightened(stated, free));
+    }
+    match (ambient.head, ambient.at) {
+        (None, _) => faults.push(AmbientError::NoLevel),
+        (Some(level), Some(at)) => {
+            let linear = head.slope.conj() * outline.frame.to_canonical(at);
+            head.level_m = level.si() - linear.re;
+        }
+        (Some(level), None) if head.slope.norm() == 0.0 => head.level_m = level.si(),
+        (Some(_), None) => faults.push(AmbientError::NoPlace),
+    }
+    if faults.is_empty() {
+        Ok(())
+    } else {
+        Err(faults)
+    }
+}
+
+fn straightened(stated: Vector, used: Vector) -> String {
+    format!(
+        "The ambient flow is taken toward azimuth {:.2}° with gradient {:.6}, as the edges need; \
+         [ambient] says {:.2}° and {:.6}.",
+        azimuth_deg(-used),
+        used.norm(),
+        azimuth_deg(-stated),
+        stated.norm()
+    )
+}
+
+/// Azimuth of a direction, 0° to 360° clockwise from grid north.
+pub(super) fn azimuth_deg(direction: Vector) -> f64 {
+    direction
+        .x
+        .atan2(direction.y)
+        .to_degrees()
+        .rem_euclid(360.0)
+}
+
+/// What the plan states against what the edges fix.
+struct Comparison<'a> {
+    site: &'a Site,
+    outline: &'a Outline,
+    green: &'a dyn Green,
+    head: &'a AmbientHead,
+}
+
+impl Comparison<'_> {
+    fn check(
+        &self,
+        ambient: &Ambient,
+        stated: Vector,
+        notes: &mut Vec<String>,
+    ) -> Result<(), Vec<AmbientError>> {
+        let place = match ambient.at {
+            Some(at) if self.outline.holds(at) => at,
+            Some(at) => return self.outside(at, notes),
+            None => self.middle_of_wells(),
+        };
+        let z = self.outline.frame.to_canonical(place);
+        let mut faults = Vec::new();
+        if let Some(level) = ambient.head {
+            let fixed_m = self.head.head_m(z, self.green, &self.outline.shape);
+            if ambient.at.is_none() && !self.is_level() {
+                faults.push(AmbientError::NoPlace);
+            } else if (level.si() - fixed_m).abs() > HEAD_TOLERANCE_M {
+                faults.push(AmbientError::HeadDiffers {
+                    stated_m: level.si(),
+                    fixed_m,
+                });
+            }
+        }
+        if stated.norm() > NO_GRADIENT {
+            let step_m = 1e-3 * self.outline.distance_to_edge_m(place);
+            let gradient = self.head.gradient(z, self.green, step_m);
+            let fixed = self.outline.frame.gradient_to_site(gradient);
+            let off = (stated - fixed).norm();
+            if off > GRADIENT_TOLERANCE * stated.norm() {
+                faults.push(AmbientError::GradientDiffers { stated, fixed });
+            } else if off > 1e-9 * stated.norm() {
+                notes.push(straightened(stated, fixed));
+            }
+        }
+        if faults.is_empty() {
+            Ok(())
+        } else {
+            Err(faults)
+        }
+    }
+
+    /// With several aquifers `at` lies in one of them and says nothing of the
+    /// others.
+    fn outside(&self, at: Point, notes: &mut Vec<String>) -> Result<(), Vec<AmbientError>> {
+        if self.outline.wells.len() == self.site.wells.len() {
+            return Err(vec![AmbientError::Outside { at }]);
+        }
+        notes.push(
+            "[ambient] is given at a place in another aquifer; here the rivers alone fix the head."
+                .to_owned(),
+        );
+        Ok(())
+    }
+
+    fn is_level(&self) -> bool {
+        let head = self.head;
+        head.slope.norm() == 0.0 && head.per_radian_m == 0.0 && head.measured.is_empty()
+    }
+
+    fn middle_of_wells(&self) -> Point {
+        let places = self
+            .outline
+            .wells
+            .iter()
+            .filter_map(|&well| self.site.wells.get(well));
+        let (sum, count) = places.fold((Vector::zeros(), 0.0), |(sum, count), well| {
+            (sum + well.at.coords, count + 1.0)
+        });
+        Point::from(sum / f64::max(count, 1.0))
+    }
+}

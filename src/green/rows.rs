@@ -1,0 +1,450 @@
+//! The strip, the half-strip and the box: rows of images that never end, each
+//! summed in closed form.
+//!
+//! Between edges at x = 0 and x = L the images of a well repeat with the
+//! period P = 2L (like edges) or 4L (unlike edges). One such row, seen from a
+//! distance y, is ln abs(2 sin(κ(z − z₀)/2)) with κ = 2π/P. Written with
+//! t = e^(−κ abs(y − y₀)),
+//!
+//!   2 ln abs(2 sin(κ(z − z₀)/2)) = κ abs(y − y₀) + ln(1 − 2t cos κ(x − x₀) + t²),
+//!
+//! which neither overflows nor loses digits far from the row. Edges across y
+//! make a row of each image yₖ of the well, with sign σₖ; the rows fade like
+//! e^(−κ abs(y − yₖ)), and all of them together are the theta function ϑ₁ of
+//! the box (DLMF 20.5.10). Where x has a river, the signs of a row add up to
+//! nothing and the κ abs(y − y₀) cancel. Where both its edges are barriers,
+//! they add up to the flow averaged across the strip, which is that of a
+//! one-dimensional aquifer:
+//!
+//!   G = g(y, y₀)/L − Σ σₖ sⱼ ln(1 − 2tₖ cos κ(x − xⱼ) + tₖ²)/(4π).
+//!
+//! With barriers all round, G is Neumann's function of the box: its mean is
+//! zero and a uniform source 1/(LH) feeds the well, which cancels where
+//! pumping and injection balance.
+//!
+//! Near the well 1 − 2t cos u + t² = (1 − t)² + 4t sin²(u/2) keeps its digits.
+//! Accuracy: absolute error ≤ 64ε (1 + κ abs(y − y₀)) + 1e-16, the last term
+//! for the rows left out.
+//! Cost: a dozen operations a row and one logarithm a pair; a strip is one
+//! row, a half-strip two, a square box some 25 (like edges) or 50.
+//! Source: Muskat (1937), *Flow of Homogeneous Fluids*, for the strip (from
+//! memory); the theta form is classical.
+
+use std::f64::consts::{FRAC_1_PI, LN_2, TAU};
+use std::ops::Range;
+
+use num_complex::Complex64;
+use pulp::Simd;
+
+use super::batch::{self, PairKernel, TERMS};
+use super::lanes::Lanes;
+use super::logarithm::Ratio;
+use super::mirrors::{self, AxisImage};
+use super::{Green, Image, Source};
+use crate::outline::{Axis, Kind};
+
+/// Rows farther than this many κ⁻¹ add less than e^(−40) = 4e-18 each.
+const FADED: f64 = 40.0;
+
+/// Powers of two that t is held between, so that t⁴ stays a normal number.
+const POWER_LIMIT: f64 = 240.0;
+
+/// The Green's function of 0 < x < L, with any edges across y.
+#[derive(Clone, Debug)]
+pub struct Rows {
+    width: f64,
+    kinds: [Kind; 2],
+    y_axis: Axis,
+    /// 2π over the period.
+    kappa: f64,
+}
+
+impl Rows {
+    /// The rows between edges of the given kinds at 0 and `width`.
+    pub fn new(width: f64, kinds: [Kind; 2], y_axis: Axis) -> Self {
+        let kappa = TAU / mirrors::period(width, kinds);
+        Self {
+            width,
+            kinds,
+            y_axis,
+            kappa,
+        }
+    }
+
+    /// The images of the well's y that are felt inside the aquifer; the well's
+    /// own row comes first.
+    fn rows_of(&self, y: f64) -> Vec<AxisImage> {
+        mirrors::images_within(self.y_axis, y, FADED / self.kappa)
+    }
+
+    fn columns_of(&self, x: f64) -> Vec<AxisImage> {
+        mirrors::images_of_one_period(self.width, self.kinds, x)
+    }
+
+    fn has_no_river_across_x(&self) -> bool {
+        self.kinds == [Kind::NoFlow; 2]
+    }
+
+    /// Σ σₖ sⱼ f(z − z_kj, whether z is above row k) over all images.
+    fn sum_over_images(
+        &self,
+        at: Complex64,
+        pole: Complex64,
+        above: impl Fn(&AxisImage) -> bool,
+        term: impl Fn(Complex64, bool) -> Complex64,
+    ) -> Complex64 {
+        let columns = self.columns_of(pole.re);
+        let rows = self.rows_of(pole.im);
+        rows.iter()
+            .flat_map(|row| columns.iter().map(move |column| (row, column)))
+            .map(|(row, column)| {
+                let image = Complex64::new(column.position, row.position);
+                row.sign * column.sign * term(at - image, above(row))
+            })
+            .sum()
+    }
+
+    /// e^(iκ distance), or e^(−iκ distance) below the row: abs ≤ 1.
+    fn fading(&self, distance: Complex64, above: bool) -> Complex64 {
+        let turn = if above { self.kappa } else { -self.kappa };
+        (Complex64::i() * turn * distance).exp()
+    }
+
+    /// Stream function −Σ σₖ sⱼ arg(1 − e^(±iκ(z − z_kj)))/(2π) of the images;
+    /// `above_well` chooses the branch of the well's own row.
+    fn stream(&self, at: Complex64, pole: Complex64, above_well: bool) -> f64 {
+        let above = |row: &AxisImage| match row.order {
+            0 => above_well,
+            _ => row.position < pole.im,
+        };
+        let logarithm = |distance, above| (1.0 - self.fading(distance, above)).ln();
+        -0.5 * FRAC_1_PI * self.sum_over_images(at, pole, above, logarithm).im
+    }
+
+    /// The flow averaged across the strip: −g″ = δ(y − y₀) along y.
+    fn mean_slope(&self, y: f64, y0: f64) -> f64 {
+        use Kind::{FixedHead, NoFlow};
+        let below = if y < y0 { 1.0 } else { 0.0 };
+        match self.y_axis {
+            Axis::TwoEdges { width_m, kinds } => match kinds {
+                [FixedHead, FixedHead] => below - y0 / width_m,
+                [FixedHead, NoFlow] => below,
+                [NoFlow, FixedHead] => below - 1.0,
+                [NoFlow, NoFlow] => y / width_m - (1.0 - below),
+            },
+            _ => below,
+        }
+    }
+}
+
+/// A source: terms of the well alone.
+pub struct Prepared {
+    half_sin: f64,
+    half_cos: f64,
+    sin: f64,
+    cos: f64,
+    rim: f64,
+    y: f64,
+    own: Row,
+    mirrored: Vec<Row>,
+}
+
+/// One row of images: t = e^(−κ abs(y − yₖ)) is `factor` · 2^`power` times the
+/// point's e^(κy) where the row is above all points, e^(−κy) where below.
+struct Row {
+    above: bool,
+    factor: f64,
+    power: f64,
+    sign: f64,
+}
+
+impl Row {
+    fn new(kappa: f64, position: f64, above: bool, sign: f64) -> Self {
+        let exponent = kappa * position;
+        let (factor, power) = split_exponential(if above { -exponent } else { exponent });
+        Self {
+            above,
+            factor,
+            power,
+            sign,
+        }
+    }
+}
+
+/// e^x as (m, k) with e^x = m · 2^k, k whole.
+fn split_exponential(x: f64) -> (f64, f64) {
+    let power = (x / LN_2).round();
+    ((x - power * LN_2).exp(), power)
+}
+
+/// What all rows of one pair share: the cosines of κ(x ∓ x₀).
+struct Cosines<S: Simd> {
+    minus: Lanes<S>,
+    plus: Lanes<S>,
+    /// cos κ(x − x₀) − cos κ(x + x₀) = 2 sin κx sin κx₀.
+    difference: Lanes<S>,
+    /// cos κ(x − x₀) + cos κ(x + x₀) = 2 cos κx cos κx₀.
+    sum: Lanes<S>,
+}
+
+impl PairKernel for Rows {
+    type Prepared = Prepared;
+
+    #[inline(always)]
+    fn is_lifted(&self) -> bool {
+        self.has_no_river_across_x()
+    }
+
+    fn terms(&self, at: Complex64, reference: Complex64) -> [f64; TERMS] {
+        let (half_sin, half_cos) = (0.5 * self.kappa * at.re).sin_cos();
+        let y = at.im - self.y_origin(reference);
+        let (factor, power) = split_exponential(self.kappa * y);
+        let sin = 2.0 * half_sin * half_cos;
+        let cos = 1.0 - 2.0 * half_sin * half_sin;
+        [
+            half_sin,
+            half_cos,
+            sin,
+            cos,
+            factor,
+            factor.recip(),
+            power,
+            y,
+        ]
+    }
+
+    fn prepare(&self, source: &Source, reference: Complex64) -> Prepared {
+        let origin = self.y_origin(reference);
+        let (half_sin, half_cos) = (0.5 * self.kappa * source.pole.re).sin_cos();
+        let rows = self.rows_of(source.pole.im);
+        let mirrored = rows.iter().skip(1).map(|row| {
+            let above = row.position > source.pole.im;
+            Row::new(self.kappa, row.position - origin, above, row.sign)
+        });
+        let y = source.pole.im - origin;
+        Prepared {
+            half_sin,
+            half_cos,
+            sin: 2.0 * half_sin * half_cos,
+            cos: 1.0 - 2.0 * half_sin * half_sin,
+            rim: (self.kappa * source.rim_m).powi(2),
+            y,
+            own: Row::new(self.kappa, y, false, 1.0),
+            mirrored: mirrored.collect(),
+        }
+    }
+
+    #[inline(always)]
+    fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
+        let [half_sin, half_cos, sin, cos, ..] = *terms;
+        let sines = sin * sin.constant(prepared.sin);
+        let cosines = cos * cos.constant(prepared.cos);
+        let cosines = Cosines {
+            minus: cosines + sines,
+            plus: cosines - sines,
+            difference: sines + sines,
+            sum: cosines + cosines,
+        };
+
+        let one = sin.constant(1.0);
+        let mut t = fade(&prepared.own, terms);
+        if self.has_no_river_across_x() {
+            t = t.min(one / t);
+        }
+        let half_sine = half_sin * half_sin.constant(prepared.half_cos)
+            - half_cos * half_cos.constant(prepared.half_sin);
+        let (gap, twice) = (one - t, t + t);
+        let squared = (twice + twice).mul_add(half_sine * half_sine, gap * gap);
+        let rim_squared = t * t.constant(prepared.rim);
+
+        let own = self.row_ratio(t, &cosines, Some([squared, rim_squared]));
+        prepared.mirrored.iter().fold(own, |product, row| {
+            let t = fade(row, terms);
+            let factor = self.row_ratio(t, &cosines, None);
+            if row.sign > 0.0 {
+                product.times(factor)
+            } else {
+                product.over(factor)
+            }
+        })
+    }
+
+    #[inline(always)]
+    fn plain_part<S: Simd>(
+        &self,
+        prepared: &Prepared,
+        terms: &[Lanes<S>; TERMS],
+    ) -> Option<Lanes<S>> {
+        use Kind::{FixedHead, NoFlow};
+        if !self.has_no_river_across_x() {
+            return None;
+        }
+        let [.., y] = *terms;
+        let y0 = y.constant(prepared.y);
+        let (low, high) = (y.min(y0), y.max(y0));
+        let mean = match self.y_axis {
+            Axis::TwoEdges { width_m, kinds } => {
+                let end = y.constant(width_m);
+                match kinds {
+                    [FixedHead, FixedHead] => low * (end - high) / end,
+                    [FixedHead, NoFlow] => low,
+                    [NoFlow, FixedHead] => end - high,
+                    [NoFlow, NoFlow] => {
+                        y.mul_add(y, y0 * y0) / (end + end) - high + y.constant(width_m / 3.0)
+                    }
+                }
+            }
+            _ => low,
+        };
+        Some(mean * y.constant(self.width.recip()))
+    }
+}
+
+impl Rows {
+    /// Along an open axis far distances are measured from among the wells, so
+    /// that κy stays small; edges across y fix the origin.
+    fn y_origin(&self, reference: Complex64) -> f64 {
+        match self.y_axis {
+            Axis::Open => reference.im,
+            _ => 0.0,
+        }
+    }
+
+    /// Images with sign −1 over images with sign +1 in one period of a row.
+    /// In the well's own row `well` holds the factor of the well itself, free
+    /// of cancellation, and that of its rim.
+    #[inline(always)]
+    fn row_ratio<S: Simd>(
+        &self,
+        t: Lanes<S>,
+        cosines: &Cosines<S>,
+        well: Option<[Lanes<S>; 2]>,
+    ) -> Ratio<S> {
+        use Kind::{FixedHead, NoFlow};
+        let one = t.constant(1.0);
+        let (sum, twice) = (t.mul_add(t, one), t + t);
+        let quadruple = || (twice + twice) * sum;
+        let ratio = |others: Lanes<S>, difference: Lanes<S>| match well {
+            Some([squared, rim_squared]) => {
+                Ratio::of_well(squared, rim_squared, others, difference)
+            }
+            None => Ratio {
+                denominator: (sum - twice * cosines.minus) * others,
+                difference,
+            },
+        };
+        match self.kinds {
+            [FixedHead, FixedHead] => ratio(one, twice * cosines.difference),
+            [FixedHead, NoFlow] => ratio(
+                twice.mul_add(cosines.plus, sum),
+                quadruple() * cosines.difference,
+            ),
+            [NoFlow, FixedHead] => ratio(sum - twice * cosines.plus, quadruple() * cosines.sum),
+            [NoFlow, NoFlow] => {
+                let others = sum - twice * cosines.plus;
+                let minus = well.map_or(sum - twice * cosines.minus, |[squared, _]| squared);
+                ratio(others, one - minus * others)
+            }
+        }
+    }
+}
+
+/// t = e^(−κ abs(y − yₖ)) of a row at some points.
+#[inline(always)]
+fn fade<S: Simd>(row: &Row, terms: &[Lanes<S>; TERMS]) -> Lanes<S> {
+    let [_, _, _, _, up, down, power, _] = *terms;
+    let (point, power) = if row.above {
+        (up, power.constant(row.power) + power)
+    } else {
+        (down, power.constant(row.power) - power)
+    };
+    let limit = power.constant(POWER_LIMIT);
+    let power = power.min(limit).max(power.constant(-POWER_LIMIT));
+    point * point.constant(row.factor) * power.power_of_two()
+}
+
+impl Green for Rows {
+    fn value_outside_rim(&self, at: Complex64, pole: Complex64, rim_m: f64) -> f64 {
+        batch::single(self, at, pole, rim_m)
+    }
+
+    fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64 {
+        let above = |row: &AxisImage| at.im >= row.position;
+        let slope = |distance, above| {
+            let fading = self.fading(distance, above);
+            let turn = if above { -self.kappa } else { self.kappa };
+            Complex64::i() * turn * fading / (1.0 - fading)
+        };
+        let images = self.sum_over_images(at, pole, above, slope);
+        let mean = if self.has_no_river_across_x() {
+            self.mean_slope(at.im, pole.im) / self.width
+        } else {
+            0.0
+        };
+        -0.5 * FRAC_1_PI * images.conj() + Complex64::new(0.0, mean)
+    }
+
+    fn share(&self, side: usize, along: Range<f64>, pole: Complex64) -> f64 {
+        let change = |from: Complex64, to: Complex64, above_well: bool| {
+            self.stream(to, pole, above_well) - self.stream(from, pole, above_well)
+        };
+        let kind = self.side_kind(side);
+        if kind == Some(Kind::NoFlow) || along.is_empty() {
+            return 0.0;
+        }
+        match side {
+            0 | 1 => {
+                let x = if side == 0 { 0.0 } else { self.width };
+                let level = |y: f64| Complex64::new(x, y);
+                // The side passes the well's own row, where the branch of the
+                // stream function changes.
+                let middle = pole.im.clamp(along.start, along.end);
+                let below = change(level(along.start), level(middle), false);
+                let above = change(level(middle), level(along.end), true);
+                let swing = below + above;
+                if side == 0 { swing } else { -swing }
+            }
+            _ => {
+                let (y, inward) = match self.y_axis {
+                    Axis::TwoEdges { width_m, .. } if side == 3 => (width_m, 1.0),
+                    _ => (0.0, -1.0),
+                };
+                let along_x = |x: f64| Complex64::new(x, y);
+                let swing = change(along_x(along.start), along_x(along.end), y > pole.im);
+                let mean = if self.has_no_river_across_x() {
+                    let slope = self.mean_slope(y, pole.im);
+                    -inward * slope * (along.end - along.start) / self.width
+                } else {
+                    0.0
+                };
+                inward * swing + mean
+            }
+        }
+    }
+
+    fn superpose(&self, sources: &[Source], points: &[Complex64], sums: &mut [f64]) {
+        batch::superpose(self, sources, points, sums);
+    }
+
+    fn nearest_images(&self, pole: Complex64, count: usize) -> Vec<Image> {
+        let order = u32::try_from(count).unwrap_or(u32::MAX).min(64);
+        let x_axis = Axis::TwoEdges {
+            width_m: self.width,
+            kinds: self.kinds,
+        };
+        let rows = mirrors::images_up_to(self.y_axis, pole.im, order);
+        let columns = mirrors::images_up_to(x_axis, pole.re, order);
+        super::nearest(pole, super::product_of(&columns, &rows), count)
+    }
+}
+
+impl Rows {
+    fn side_kind(&self, side: usize) -> Option<Kind> {
+        match (side, self.y_axis) {
+            (0 | 1, _) => self.kinds.get(side).copied(),
+            (_, Axis::Open) => None,
+            (_, Axis::OneEdge(kind)) => Some(kind),
+            (_, Axis::TwoEdges { kinds, .. }) => kinds.get(side - 2).copied(),
+        }
+    }
+}
