@@ -20,7 +20,7 @@ import pathlib
 import sys
 
 HERE = pathlib.Path(__file__).resolve().parent
-NO_TABLES = {"check"}
+NO_TABLES = {"check", "potential"}
 
 
 def text(value):
