@@ -10,5 +10,10 @@
     reason = "a test fails by panic"
 )]
 
+mod dlmf;
+mod ferris_1962;
+mod milne_thomson_1940;
 mod projections;
+mod reference_tables;
+mod shapes;
 mod table;
