@@ -1,1 +1,5 @@
-fn main() {}
+//! The `mirrorwell` program; everything it does is in the library.
+
+fn main() -> std::process::ExitCode {
+    mirrorwell::commands::start()
+}

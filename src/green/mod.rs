@@ -14,6 +14,8 @@ mod mirrors;
 mod rows;
 mod wedge;
 
+pub use logarithm::ln_lanes;
+
 use std::f64::consts::FRAC_1_PI;
 use std::ops::Range;
 

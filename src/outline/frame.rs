@@ -97,6 +97,13 @@ impl Frame {
         self.stretch.undo(Point::new(stretched.re, stretched.im))
     }
 
+    /// A canonical displacement, as it reads in the site.
+    pub fn direction_to_site(&self, step: Complex64) -> Vector {
+        let stretched = step * self.turn;
+        let stretched = Point::new(stretched.re, stretched.im);
+        self.stretch.undo(stretched).coords
+    }
+
     /// A gradient of the site, as ∂/∂x + i ∂/∂y of the canonical frame.
     pub fn gradient_to_canonical(&self, gradient: Vector) -> Complex64 {
         let stretched = self.stretch.apply_to_gradient(gradient);

@@ -1,11 +1,43 @@
 //! Joins the edges, carries their free ends on, finds the aquifers that hold
 //! the wells, and names their shapes.
+//!
+//! Method: everything is stretched to an isotropic aquifer first (`frame`).
+//! Line ends within 1 mm are joined (`scene`), free ends carried on
+//! (`extend`), all strokes cut at their crossings (`arrangement`), and the
+//! face of every well found (`faces`). The sides of each face (`boundary`) are
+//! compared with the shapes that have a closed form (`recognise`), their
+//! stages set (`stages`), and wells and neighbours put in place (`placement`).
+//! `region` and `clip` answer where an outline lies.
+//! Limits: at most 4000 straight pieces; sides count as parallel or square to
+//! within 1 mm over the plan's extent; every other outline is refused by name.
 
+mod arrangement;
+mod boundary;
+mod clip;
+mod drawn;
+mod error;
+mod extend;
+mod faces;
 mod frame;
+mod heading;
+mod limits;
+mod names;
+mod placement;
+mod recognise;
+mod refuse;
+mod region;
+mod scene;
 mod shape;
+mod stages;
+mod stroke;
+mod walk;
+mod words;
 
+pub use error::{Named, OutlineError};
 pub use frame::{Frame, Stretch};
 pub use shape::{Axis, Kind, Piece, Shape, argument_in_wedge};
+
+use crate::site::{Refusal, Site};
 
 /// One aquifer: the part of the plane that holds some of the wells.
 #[derive(Clone, Debug)]
@@ -23,14 +55,45 @@ pub struct Outline {
     pub neighbours: Vec<usize>,
 }
 
-impl Outline {
-    /// Whether a point lies in the aquifer or on its edge.
-    pub fn holds(&self, _point: crate::site::Point) -> bool {
-        true
-    }
+/// The aquifers that hold the wells, in the order of their first wells.
+///
+/// # Errors
+/// Every fault of the plan's geometry in one go: see `OutlineError`.
+pub fn find(site: &Site) -> Result<Vec<Outline>, Vec<Refusal>> {
+    faultless(site).map_err(|errors| errors.into_iter().map(Refusal::from).collect())
+}
 
-    /// Distance of a point to the nearest edge, metres of the site.
-    pub fn distance_to_edge_m(&self, _point: crate::site::Point) -> f64 {
-        1.0
+/// The aquifers, or everything that is wrong.
+fn faultless(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
+    let wild = limits::wild_numbers(site);
+    let mut errors = limits::not_covered(site);
+    if !wild.is_empty() {
+        errors.extend(wild);
+        return Err(errors);
     }
+    let outlines = match outlines(site) {
+        Ok(outlines) => outlines,
+        Err(others) => {
+            errors.extend(others);
+            Vec::new()
+        }
+    };
+    if errors.is_empty() {
+        Ok(outlines)
+    } else {
+        Err(errors)
+    }
+}
+
+/// The outlines of a site whose numbers are finite.
+fn outlines(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
+    let scene = scene::Scene::read(site)?;
+    let faults = drawn::faults(site, &scene.strokes);
+    if !faults.is_empty() {
+        return Err(faults);
+    }
+    let strokes = extend::strokes(&scene);
+    let arrangement = arrangement::Arrangement::of(&scene, &strokes);
+    let faces = faces::Faces::of(site, &scene, arrangement);
+    placement::outlines(site, &scene, &strokes, &faces)
 }

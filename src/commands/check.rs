@@ -1,0 +1,258 @@
+//! `mirrorwell check`: what a plan says, without writing anything.
+
+use std::fmt::Write as _;
+
+use serde_json::{Value, json};
+
+use super::console::{Console, wrapped};
+use super::failure::Failure;
+use super::source::{PlanArgument, solve};
+use crate::field::WellField;
+use crate::findings::{Oddity, Solution, WellsAndNeighbours, oddities};
+use crate::layers::words::{Words, one_line};
+use crate::layers::{CAUTION, Properties, Units};
+use crate::outline::Kind;
+use crate::plan::{Plan, PlanFaults};
+
+/// What the command takes.
+#[derive(Debug, clap::Args)]
+#[command(after_help = "Example: look a plan over before running it:\n  \
+                        mirrorwell check my-plan.toml")]
+pub struct Arguments {
+    #[command(flatten)]
+    plan: PlanArgument,
+
+    /// Print one JSON document, also when the plan is refused
+    #[arg(long)]
+    json: bool,
+}
+
+/// Reads and solves the plan, and says what was found.
+pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
+    let solved = arguments
+        .plan
+        .read()
+        .and_then(|plan| solve(&plan).map(|solution| (plan, solution)));
+    match solved {
+        Ok((plan, solution)) => {
+            let report = Report::of(&plan, &solution);
+            let text = if arguments.json {
+                pretty(&report.json())?
+            } else {
+                report.text(&arguments.plan.name())
+            };
+            Ok(console.result(&text)?)
+        }
+        Err(Failure::Plan(faults)) if arguments.json => {
+            console.result(&pretty(&refused(&faults))?)?;
+            Err(Failure::Said)
+        }
+        Err(failure) => Err(failure),
+    }
+}
+
+/// A document for other programs.
+fn pretty(document: &Value) -> Result<String, Failure> {
+    serde_json::to_string_pretty(document)
+        .map(|text| text + "\n")
+        .map_err(|error| Failure::Refused(error.to_string()))
+}
+
+/// The document of a refused plan.
+fn refused(faults: &PlanFaults) -> Value {
+    json!({"solvable": false, "faults": faults.list(), "caution": CAUTION})
+}
+
+/// What was found.
+struct Report<'a> {
+    plan: &'a Plan,
+    solution: &'a Solution,
+    notes: Vec<String>,
+    oddities: Vec<String>,
+}
+
+impl<'a> Report<'a> {
+    fn of(plan: &'a Plan, solution: &'a Solution) -> Self {
+        let found = WellsAndNeighbours::of(solution);
+        let words = Words::new(solution.site(), Units(plan.units));
+        let oddities = oddities(solution, &found.wells, &found.neighbours)
+            .iter()
+            .map(|oddity| sentence(&words, oddity))
+            .collect();
+        Self {
+            plan,
+            solution,
+            notes: crate::layers::notes(plan, solution),
+            oddities,
+        }
+    }
+
+    fn text(&self, name: &str) -> String {
+        let site = self.solution.site();
+        let words = Words::new(site, Units(self.plan.units));
+        let mut text = format!("{}\n", one_line(&self.plan.title));
+        let mut line = |label: &str, value: &str| {
+            text.push_str(&wrapped(value, &format!("{label:<14}"), &" ".repeat(14)));
+        };
+        line("plan", name);
+        line("grid", &self.plan.crs.name());
+        for field in self.solution.fields() {
+            line("outline", &one_line(&field.outline().words(site)));
+            line(
+                "method",
+                &format!(
+                    "{}, right to {:.0e} {}",
+                    field.method(),
+                    words.units().length(field.error_bound_m()),
+                    words.units().length_ending()
+                ),
+            );
+            line("steady state", &steady_state(self.solution, field));
+        }
+        line(
+            "wells",
+            &format!(
+                "{}, and {} neighbours",
+                site.wells.len(),
+                site.neighbours.len()
+            ),
+        );
+        list(&mut text, "Notes", &self.notes);
+        list(&mut text, "What looks wrong", &self.oddities);
+        if self.oddities.is_empty() {
+            text.push_str("\nNothing looks wrong.\n");
+        }
+        let _ = write!(text, "\n{}", wrapped(CAUTION, "", ""));
+        text
+    }
+
+    fn json(&self) -> Value {
+        let site = self.solution.site();
+        let outlines: Vec<Value> = self
+            .solution
+            .fields()
+            .iter()
+            .map(|field| {
+                Properties::new(Units(self.plan.units))
+                    .with("shape", field.outline().shape.name())
+                    .with("words", field.outline().words(site))
+                    .with("method", field.method())
+                    .length("error_bound", field.error_bound_m())
+                    .with("steady_state", steady_state(self.solution, field))
+                    .into()
+            })
+            .collect();
+        json!({
+            "solvable": true,
+            "title": self.plan.title,
+            "plan_sha256": self.plan.sha256,
+            "crs": self.plan.crs.name(),
+            "units": self.plan.units.name(),
+            "outlines": outlines,
+            "wells": site.wells.len(),
+            "neighbours": site.neighbours.len(),
+            "notes": self.notes,
+            "looks_wrong": self.oddities,
+            "caution": CAUTION,
+        })
+    }
+}
+
+/// A heading with a list, or nothing.
+fn list(text: &mut String, heading: &str, items: &[String]) {
+    if !items.is_empty() {
+        let _ = writeln!(text, "\n{heading}");
+        for item in items {
+            text.push_str(&wrapped(item, "- ", "  "));
+        }
+    }
+}
+
+/// Why the steady state of an aquifer exists.
+fn steady_state(solution: &Solution, field: &WellField) -> String {
+    let site = solution.site();
+    let outline = field.outline();
+    let kinds = outline.shape.side_kinds();
+    let mut rivers: Vec<String> = Vec::new();
+    for (kind, pieces) in kinds.iter().zip(&outline.sides) {
+        for piece in pieces.iter().filter(|_| *kind == Kind::FixedHead) {
+            if let Some(edge) = site.edges.get(piece.edge) {
+                let name = one_line(&edge.name);
+                if !rivers.contains(&name) {
+                    rivers.push(name);
+                }
+            }
+        }
+    }
+    match (rivers.is_empty(), site.aquifer.influence_radius) {
+        (false, _) => format!("exists: {} holds the head", rivers.join(" and ")),
+        (true, Some(_)) => {
+            "assumed: no edge holds the head, so each cone ends at the influence radius".into()
+        }
+        (true, None) => "exists: pumping and injection balance".into(),
+    }
+}
+
+/// What looks wrong, as a sentence.
+fn sentence(words: &Words<'_>, oddity: &Oddity) -> String {
+    match *oddity {
+        Oddity::NoRoof => {
+            "no `roof` is given, so it is not checked whether the aquifer stays confined".into()
+        }
+        Oddity::UnusualTransmissivity(m2_d) => format!(
+            "a transmissivity of {m2_d:.3} m²/d is unusual for a well field (1 to 100,000 m²/d): are the units right?"
+        ),
+        Oddity::UnconfinedBeforePumping {
+            well,
+            ambient_m,
+            roof_m,
+        } => format!(
+            "{}: the head before pumping, {}, is below the aquifer's roof at {}: the aquifer is not confined there",
+            words.well(well),
+            words.length(ambient_m),
+            words.length(roof_m)
+        ),
+        Oddity::IdleWell(well) => {
+            format!("{} neither pumps nor injects", words.well(well))
+        }
+        Oddity::WideWell(well, radius_m) => format!(
+            "{}: a borehole radius of {} is unusual: is it given in the right unit?",
+            words.well(well),
+            words.length(radius_m)
+        ),
+        Oddity::WellsAtOnePlace(a, b, distance_m) => format!(
+            "{} and {} stand only {} apart: are they one well?",
+            words.well(a),
+            words.well(b),
+            words.length(distance_m)
+        ),
+        Oddity::LowestLevelAboveHead {
+            well,
+            lowest_m,
+            ambient_m,
+        } => format!(
+            "{}: the lowest level, {}, is above the head before pumping, {}",
+            words.well(well),
+            words.length(lowest_m),
+            words.length(ambient_m)
+        ),
+        Oddity::BelowBase {
+            well,
+            level_m,
+            base_m,
+        } => format!(
+            "{}: the level in the well would be {}, below the aquifer's base at {}: no such rate is possible",
+            words.well(well),
+            words.length(level_m),
+            words.length(base_m)
+        ),
+        Oddity::NeighbourOutside(neighbour) => format!(
+            "{} lies outside every aquifer that holds a well: nothing can be said of it",
+            words.neighbour(neighbour)
+        ),
+        Oddity::NeighbourWithoutLimit(neighbour) => format!(
+            "{} has no `allowed_drawdown` to be judged by",
+            words.neighbour(neighbour)
+        ),
+    }
+}

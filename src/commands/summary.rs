@@ -1,0 +1,220 @@
+//! What `run` prints: short, and for people.
+
+use std::fmt::Write as _;
+use std::path::Path;
+
+use comfy_table::{CellAlignment, Table};
+
+use super::console::wrapped;
+use crate::findings::Balance;
+use crate::layers::words::{Words, one_line, percent};
+use crate::layers::{CAUTION, OUTPUTS, Planned};
+
+/// Rows of a table that are printed; the layers hold all.
+const MOST_ROWS: usize = 40;
+/// Flags that are printed; `findings.json` holds all.
+const MOST_FLAGS: usize = 25;
+
+/// The summary of a run whose files are in `out`.
+pub fn of(planned: &Planned<'_>, out: &Path) -> String {
+    let mut text = format!("{}\n", one_line(&planned.plan.title));
+    text.push_str(&recognised(planned));
+    text.push_str(&totals(planned));
+    text.push('\n');
+    text.push_str(&wells(planned));
+    if !planned.findings.neighbours.is_empty() {
+        text.push('\n');
+        text.push_str(&neighbours(planned));
+    }
+    text.push('\n');
+    text.push_str(&flags(planned));
+    text.push('\n');
+    text.push_str(&files(out));
+    text.push('\n');
+    text.push_str(&wrapped(CAUTION, "", ""));
+    text
+}
+
+/// Which aquifers were found, and how they were solved.
+pub fn recognised(planned: &Planned<'_>) -> String {
+    let site = planned.solution.site();
+    let mut text = String::new();
+    for field in planned.solution.fields() {
+        let sentence = format!(
+            "{}; {}",
+            one_line(&field.outline().words(site)),
+            field.method()
+        );
+        text.push_str(&wrapped(&capitalised(&sentence), "", "  "));
+    }
+    text
+}
+
+/// A sentence with a capital at its head.
+fn capitalised(sentence: &str) -> String {
+    let mut characters = sentence.chars();
+    characters.next().map_or_else(String::new, |first| {
+        first.to_uppercase().chain(characters).collect()
+    })
+}
+
+/// What is pumped, injected and given by rivers.
+fn totals(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let rates = planned.findings.wells.iter().map(|well| well.pumping_m3_d);
+    let pumped: f64 = rates.clone().filter(|rate| *rate > 0.0).sum();
+    let injected: f64 = -rates.filter(|rate| *rate < 0.0).sum::<f64>();
+    let mut text = format!("Pumping {}", words.rate(pumped));
+    if injected > 0.0 {
+        let _ = write!(text, ", injecting {}", words.rate(injected));
+    }
+    let site = planned.solution.site();
+    let given: Vec<String> = planned
+        .findings
+        .boundaries
+        .iter()
+        .zip(&site.edges)
+        .filter(|(finding, _)| finding.inflow_m3_d() != 0.0)
+        .map(|(finding, edge)| {
+            format!(
+                "{} {}",
+                one_line(&edge.name),
+                words.rate(finding.inflow_m3_d())
+            )
+        })
+        .collect();
+    let balance = |balance: &Balance| balance.inflow_m3_d.is_some();
+    if planned.findings.balances.iter().any(balance) {
+        let _ = write!(text, "; to the wells from {}", given.join(", "));
+    }
+    wrapped(&text, "", "  ")
+}
+
+/// A table with a plain heading and numbers to the right.
+fn table(heading: &[&str], unit_row: &[String]) -> Table {
+    let mut table = Table::new();
+    table.load_preset("     ──            ");
+    table.set_header(
+        heading
+            .iter()
+            .zip(unit_row)
+            .map(|(name, unit)| format!("{name}\n{unit}")),
+    );
+    for column in table.column_iter_mut().skip(1) {
+        column.set_cell_alignment(CellAlignment::Right);
+    }
+    table
+}
+
+/// The table without spaces at line ends.
+fn printed(table: &Table) -> String {
+    table
+        .to_string()
+        .lines()
+        .map(|line| format!("{}\n", line.trim_end()))
+        .collect()
+}
+
+/// How many rows were left out, and where they are.
+fn left_out(count: usize, most: usize, place: &str) -> String {
+    if count > most {
+        format!("… and {} more in {place}\n", count - most)
+    } else {
+        String::new()
+    }
+}
+
+/// The table of wells.
+fn wells(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let units = planned.units();
+    let length = || units.length_ending().to_owned();
+    let heading = [
+        "Well", "pumping", "level", "drawdown", "own", "others", "loss", "share",
+    ];
+    let unit_row = [
+        String::new(),
+        units.rate_words().to_owned(),
+        length(),
+        length(),
+        length(),
+        length(),
+        length(),
+        "of others".to_owned(),
+    ];
+    let mut table = table(&heading, &unit_row);
+    let wells = &planned.findings.wells;
+    for finding in wells.iter().take(MOST_ROWS) {
+        table.add_row([
+            words.well(finding.well),
+            words.bare_rate(finding.pumping_m3_d),
+            words.bare_length(finding.level_m()),
+            words.bare_length(finding.drawdown_m()),
+            words.bare_length(finding.own_m),
+            words.bare_length(finding.interference_m),
+            words.bare_length(finding.well_loss_m),
+            finding
+                .interference_share
+                .map_or_else(|| "–".into(), percent),
+        ]);
+    }
+    printed(&table) + &left_out(wells.len(), MOST_ROWS, "wells.geojson")
+}
+
+/// The table of neighbours.
+fn neighbours(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let length = || planned.units().length_ending().to_owned();
+    let heading = ["Neighbour", "drawdown", "allowed", "mostly by", "its part"];
+    let unit_row = [String::new(), length(), length(), String::new(), length()];
+    let mut table = table(&heading, &unit_row);
+    let site = planned.solution.site();
+    let findings = &planned.findings.neighbours;
+    let rows = findings.iter().zip(&site.neighbours).take(MOST_ROWS);
+    for (finding, neighbour) in rows {
+        let none = || "–".to_owned();
+        let worst = finding.worst.as_ref();
+        let cause = worst.and_then(|worst| {
+            let well = worst.largest_cause?;
+            Some((words.well(well), *worst.by_well_m.get(well)?))
+        });
+        table.add_row([
+            one_line(&neighbour.name),
+            worst.map_or_else(
+                || "outside".to_owned(),
+                |worst| words.bare_length(worst.drawdown_m),
+            ),
+            finding
+                .allowed_m
+                .map_or_else(none, |m| words.bare_length(m)),
+            cause.as_ref().map_or_else(none, |(name, _)| name.clone()),
+            cause.map_or_else(none, |(_, part_m)| words.bare_length(part_m)),
+        ]);
+    }
+    printed(&table) + &left_out(findings.len(), MOST_ROWS, "neighbours.geojson")
+}
+
+/// The flags, most severe first.
+fn flags(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let flags = &planned.findings.flags;
+    if flags.is_empty() {
+        return "No flag: every limit of the plan is kept.\n".into();
+    }
+    let mut text = String::from("Flags, most severe first\n");
+    for flag in flags.iter().take(MOST_FLAGS) {
+        let _ = writeln!(text, "  {}: {}", flag.code.name(), words.who(flag.who));
+        text.push_str(&wrapped(&words.flag(flag), "    ", "    "));
+    }
+    text + &left_out(flags.len(), MOST_FLAGS, "findings.json")
+}
+
+/// Where the files are.
+fn files(out: &Path) -> String {
+    let names: Vec<&str> = OUTPUTS.iter().map(|(name, _)| *name).collect();
+    wrapped(
+        &names.join(", "),
+        &format!("Written to {}: ", one_line(&out.display().to_string())),
+        "  ",
+    )
+}

@@ -1,0 +1,143 @@
+//! The map's aquifers cut into triangles, with heads and drawdowns at their
+//! nodes: what contours, bands and areas are read from.
+
+use crate::contours::{self, Bump, ContourError, Mesh, MeshError, Region, ScalarField};
+use crate::field::WellField;
+use crate::site::Point;
+
+use super::{MapWindow, Solution};
+
+/// The heads of one aquifer, as something to contour.
+pub struct Heads<'a>(pub &'a WellField);
+
+impl ScalarField for Heads<'_> {
+    fn values(&self, points: &[Point]) -> Vec<f64> {
+        self.0.heads_m(points)
+    }
+}
+
+/// The drawdowns in one aquifer, as something to contour.
+pub struct Drawdowns<'a>(pub &'a WellField);
+
+impl ScalarField for Drawdowns<'_> {
+    fn values(&self, points: &[Point]) -> Vec<f64> {
+        self.0.drawdowns_m(points)
+    }
+}
+
+/// Why a map cannot be surveyed.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+pub enum SurveyError {
+    /// The aquifer cannot be cut into triangles.
+    #[error(transparent)]
+    Mesh(#[from] MeshError),
+    /// A field cannot be contoured.
+    #[error(transparent)]
+    Field(#[from] ContourError),
+}
+
+/// One aquifer on the map.
+pub struct SurveyedAquifer<'a> {
+    /// Its heads.
+    pub field: &'a WellField,
+    /// Its triangles within the map.
+    pub mesh: Mesh,
+    /// Heads at the nodes, metres.
+    pub heads_m: Vec<f64>,
+    /// Drawdowns at the nodes, metres.
+    pub drawdowns_m: Vec<f64>,
+}
+
+/// The whole map.
+pub struct Survey<'a> {
+    /// The rectangle and grid.
+    pub window: MapWindow,
+    /// The aquifers that reach into it.
+    pub aquifers: Vec<SurveyedAquifer<'a>>,
+}
+
+impl<'a> Survey<'a> {
+    /// Surveys every aquifer within the window.
+    ///
+    /// # Errors
+    /// [`SurveyError`] where a mesh cannot be made or a head is no number.
+    pub fn of(solution: &'a Solution, window: MapWindow) -> Result<Self, SurveyError> {
+        let mut aquifers = Vec::new();
+        for field in solution.fields() {
+            let polygons = field.outline().clip(window.extent);
+            if polygons.0.is_empty() {
+                continue;
+            }
+            let region = Region {
+                polygons,
+                extent: window.extent,
+                spacing_m: window.spacing_m,
+            };
+            let mesh = contours::mesh(&region, &bumps(solution, field))?;
+            let heads_m = contours::sample(&mesh, &Heads(field))?;
+            let drawdowns_m = contours::sample(&mesh, &Drawdowns(field))?;
+            aquifers.push(SurveyedAquifer {
+                field,
+                mesh,
+                heads_m,
+                drawdowns_m,
+            });
+        }
+        Ok(Self { window, aquifers })
+    }
+
+    /// Smallest and largest head at a node, metres; none without nodes.
+    pub fn head_range_m(&self) -> Option<[f64; 2]> {
+        range(self.aquifers.iter().flat_map(|aquifer| &aquifer.heads_m))
+    }
+
+    /// Smallest and largest drawdown at a node, metres; none without nodes.
+    pub fn drawdown_range_m(&self) -> Option<[f64; 2]> {
+        range(
+            self.aquifers
+                .iter()
+                .flat_map(|aquifer| &aquifer.drawdowns_m),
+        )
+    }
+
+    /// Area of the map where the head is below a level, m².
+    ///
+    /// # Errors
+    /// As [`contours::area_below`].
+    pub fn area_below_m2(&self, level_m: f64) -> Result<f64, ContourError> {
+        let areas = self.aquifers.iter().map(|aquifer| {
+            contours::area_below(
+                &aquifer.mesh,
+                &aquifer.heads_m,
+                &Heads(aquifer.field),
+                level_m,
+            )
+        });
+        areas.sum()
+    }
+}
+
+/// The wells of an aquifer as peaks.
+fn bumps(solution: &Solution, field: &WellField) -> Vec<Bump> {
+    field
+        .outline()
+        .wells
+        .iter()
+        .filter_map(|&well| solution.site().wells.get(well))
+        .map(|well| Bump {
+            at: well.at,
+            rim_m: well.radius.si(),
+        })
+        .collect()
+}
+
+/// Smallest and largest of the values that are numbers.
+fn range<'v>(values: impl Iterator<Item = &'v f64>) -> Option<[f64; 2]> {
+    values
+        .copied()
+        .filter(|value| value.is_finite())
+        .fold(None, |range, value| match range {
+            None => Some([value, value]),
+            Some([low, high]) => Some([f64::min(low, value), f64::max(high, value)]),
+        })
+}

@@ -1,0 +1,139 @@
+//! `boundaries.geojson`: the rivers and barriers as far as they bound an
+//! aquifer within the map, with the water they give to the wells.
+//!
+//! One feature a river or barrier, its parts joined; where its parts lie
+//! apart they are several features, each with the whole inflow.
+
+use serde_json::Value;
+
+use super::geojson::Layer;
+use super::units::Properties;
+use super::{LayerError, Planned};
+use crate::site::{Edge, EdgeKind, EdgeShape, Point, Vector};
+
+/// The layer.
+pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
+    let mut layer = Layer::new(planned.plan);
+    let site = planned.solution.site();
+    for (finding, edge) in planned.findings.boundaries.iter().zip(&site.edges) {
+        let kind = match edge.kind {
+            EdgeKind::River { .. } => "river",
+            EdgeKind::Barrier => "barrier",
+        };
+        for line in lines(planned, finding.edge) {
+            let properties = Properties::new(planned.units())
+                .with("name", edge.name.as_str())
+                .with("kind", kind)
+                .rate("inflow", finding.inflow_m3_d());
+            layer.add_line(&line, properties)?;
+        }
+    }
+    Ok(layer.finish())
+}
+
+/// The course of an edge within the map: once where two aquifers share it,
+/// in one line where its parts join. An edge that bounds no aquifer is drawn
+/// as the plan gives it.
+pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
+    let mut lines: Vec<Vec<Point>> = Vec::new();
+    let mut bounds = false;
+    for field in planned.solution.fields() {
+        let outline = field.outline();
+        for (side, pieces) in outline.sides.iter().enumerate() {
+            let of_edge = pieces
+                .iter()
+                .enumerate()
+                .filter(|(_, piece)| piece.edge == edge);
+            for (piece, _) in of_edge {
+                bounds = true;
+                for line in outline.piece_lines(side, piece, planned.survey.window.extent) {
+                    if line.len() > 1 && !lines.iter().any(|known| same_course(known, &line)) {
+                        lines.push(line);
+                    }
+                }
+            }
+        }
+    }
+    if bounds {
+        joined(lines)
+    } else {
+        planned
+            .solution
+            .site()
+            .edges
+            .get(edge)
+            .map_or(vec![], as_given)
+    }
+}
+
+/// An edge as the plan gives it; a circle as its polygon of 128 sides.
+fn as_given(edge: &Edge) -> Vec<Vec<Point>> {
+    match &edge.shape {
+        EdgeShape::Line(line) => vec![line.clone()],
+        EdgeShape::Circle { centre, radius } => {
+            let rim = (0..=128).map(|step| {
+                let (sin, cos) = (f64::from(step) / 128.0 * std::f64::consts::TAU).sin_cos();
+                centre + Vector::new(cos, sin) * radius.si()
+            });
+            vec![rim.collect()]
+        }
+    }
+}
+
+/// Lines whose ends meet, made one.
+fn joined(mut lines: Vec<Vec<Point>>) -> Vec<Vec<Point>> {
+    let mut done = Vec::new();
+    while !lines.is_empty() {
+        let mut line = lines.remove(0);
+        while let Some((next, reversed)) = successor(&line, &lines) {
+            let mut more = lines.remove(next);
+            if reversed {
+                more.reverse();
+            }
+            line.extend(more.into_iter().skip(1));
+        }
+        line.reverse();
+        while let Some((next, reversed)) = successor(&line, &lines) {
+            let mut more = lines.remove(next);
+            if reversed {
+                more.reverse();
+            }
+            line.extend(more.into_iter().skip(1));
+        }
+        done.push(line);
+    }
+    done
+}
+
+/// The line that begins, or reversed ends, where this one ends.
+fn successor(line: &[Point], lines: &[Vec<Point>]) -> Option<(usize, bool)> {
+    let end = *line.last()?;
+    if line.first().is_some_and(|&first| near(first, end)) {
+        return None;
+    }
+    lines.iter().enumerate().find_map(|(index, other)| {
+        if near(*other.first()?, end) {
+            Some((index, false))
+        } else if near(*other.last()?, end) {
+            Some((index, true))
+        } else {
+            None
+        }
+    })
+}
+
+/// Whether two lines run between the same ends, to a millimetre.
+fn same_course(a: &[Point], b: &[Point]) -> bool {
+    let ends = |line: &[Point]| Some((*line.first()?, *line.last()?));
+    match (ends(a), ends(b)) {
+        (Some((a0, a1)), Some((b0, b1))) => {
+            (near(a0, b0) && near(a1, b1)) || (near(a0, b1) && near(a1, b0))
+        }
+        _ => false,
+    }
+}
+
+/// Whether two points are the same to a millimetre.
+fn near(a: Point, b: Point) -> bool {
+    (a - b).norm() < 1e-3
+}

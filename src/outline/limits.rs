@@ -1,0 +1,67 @@
+//! What is refused before any geometry is done.
+
+use super::error::{Named, OutlineError};
+use super::names;
+use super::scene::{edge_places, neighbour_places};
+use crate::site::{EdgeKind, Point, Site};
+
+/// Largest coordinate in the local frame, metres.
+const FARTHEST_M: f64 = 1e8;
+
+/// Capabilities that a plan asks for and the closed forms do not have.
+pub(super) fn not_covered(site: &Site) -> Vec<OutlineError> {
+    let mut errors = Vec::new();
+    if site.wells.is_empty() {
+        errors.push(OutlineError::NoWell);
+    }
+    let metres_a_day = site.aquifer.recharge.si();
+    if metres_a_day != 0.0 {
+        errors.push(OutlineError::Recharge { metres_a_day });
+    }
+    for (index, edge) in site.edges.iter().enumerate() {
+        if let EdgeKind::River {
+            bank_resistance: Some(resistance),
+            ..
+        } = &edge.kind
+            && resistance.si() != 0.0
+        {
+            errors.push(OutlineError::BankResistance {
+                river: names::edge(site, index),
+                days: resistance.si(),
+            });
+        }
+    }
+    errors
+}
+
+/// Numbers with which geometry cannot be done.
+pub(super) fn wild_numbers(site: &Site) -> Vec<OutlineError> {
+    let edges = site.edges.iter().enumerate().map(|(index, edge)| {
+        let places = edge_places(&edge.shape);
+        (names::edge(site, index), places)
+    });
+    let wells = site.wells.iter().enumerate();
+    let wells = wells.map(|(index, well)| (names::well(site, index), vec![well.at]));
+    let neighbours = site.neighbours.iter().enumerate().map(|(index, part)| {
+        let places = neighbour_places(&part.place).to_vec();
+        (names::neighbour(site, index), places)
+    });
+    let is_wild = |(_, places): &(Named, Vec<Point>)| {
+        let tame = |value: &f64| value.abs() <= FARTHEST_M;
+        !places.iter().flat_map(|place| place.iter()).all(tame)
+    };
+    let mut errors: Vec<OutlineError> = edges
+        .chain(wells)
+        .chain(neighbours)
+        .filter(is_wild)
+        .map(|(part, _)| OutlineError::WildCoordinate { part })
+        .collect();
+    let ratio = site
+        .aquifer
+        .anisotropy
+        .map_or(1.0, |anisotropy| anisotropy.ratio);
+    if !(ratio.is_finite() && ratio >= 1.0) {
+        errors.push(OutlineError::WildAnisotropy { ratio });
+    }
+    errors
+}

@@ -1,0 +1,80 @@
+//! Says in words what an outline is.
+
+use super::names;
+use super::shape::{Axis, Kind, Shape};
+use super::{Outline, Piece};
+use crate::site::Site;
+
+impl Outline {
+    /// The rivers or barriers that make a canonical side: "river Ostra", or
+    /// "river Ostra and river Lower Ostra".
+    pub fn side_name(&self, site: &Site, side: usize) -> String {
+        let mut edges: Vec<String> = Vec::new();
+        let pieces: &[Piece] = self.sides.get(side).map_or(&[], Vec::as_slice);
+        for piece in pieces {
+            let name = names::edge(site, piece.edge).words;
+            if !edges.contains(&name) {
+                edges.push(name);
+            }
+        }
+        names::listed(&edges)
+    }
+
+    /// The outline in one line: "strip 1,240 m wide between river Ostra
+    /// (fixed head) and barrier granite edge (no flow)".
+    pub fn words(&self, site: &Site) -> String {
+        let kinds = self.shape.side_kinds();
+        let sides: Vec<String> = kinds
+            .iter()
+            .enumerate()
+            .map(|(side, kind)| format!("{} ({})", self.side_name(site, side), kind_words(*kind)))
+            .collect();
+        let sides = names::listed(&sides);
+        let name = self.shape.name();
+        let stretched = if self.frame.stretch == super::Stretch::none() {
+            ""
+        } else {
+            ", lengths and angles stretched to isotropy"
+        };
+        let text = match self.shape {
+            Shape::Axes { x, y } => match (width(x), width(y)) {
+                (None, None) if kinds.is_empty() => name.to_owned(),
+                (None, None) if kinds.len() == 1 => format!("{name} beside {sides}"),
+                (None, None) => format!("{name} between {sides}"),
+                (Some(width), None) | (None, Some(width)) => {
+                    format!("{name} {width} wide between {sides}")
+                }
+                (Some(width), Some(length)) => format!("{name} {width} by {length} within {sides}"),
+            },
+            Shape::Wedge { angle_rad, .. } => {
+                format!("{name} of {} between {sides}", names::angle(angle_rad))
+            }
+            Shape::Disk { radius_m } => {
+                format!(
+                    "{name} of radius {} inside {sides}",
+                    names::length(radius_m)
+                )
+            }
+            Shape::DiskExterior { radius_m } => {
+                let radius = names::length(radius_m);
+                format!("{name} of radius {radius}: {sides}")
+            }
+        };
+        text + stretched
+    }
+}
+
+/// The width across an axis in words, where it has two edges.
+fn width(axis: Axis) -> Option<String> {
+    match axis {
+        Axis::TwoEdges { width_m, .. } => Some(names::length(width_m)),
+        Axis::Open | Axis::OneEdge(_) => None,
+    }
+}
+
+fn kind_words(kind: Kind) -> &'static str {
+    match kind {
+        Kind::FixedHead => "fixed head",
+        Kind::NoFlow => "no flow",
+    }
+}
