@@ -12,8 +12,15 @@
 
 mod dlmf;
 mod ferris_1962;
+mod glover_balmer_1954;
+mod kruseman_de_ridder_1990;
 mod milne_thomson_1940;
+mod newsom_wilson_1988;
+mod nist_sp_811;
+mod plans;
 mod projections;
 mod reference_tables;
 mod shapes;
 mod table;
+mod thiem_1906;
+mod walton_1962;
