@@ -67,19 +67,34 @@ fn shapes() -> Vec<(&'static str, Shape)> {
     let axes = |x, y| Shape::Axes { x, y };
     vec![
         ("half-plane", axes(Axis::OneEdge(River), Axis::Open)),
-        ("strip, two rivers", axes(between(1200.0, [River, River]), Axis::Open)),
-        ("strip, river and barrier", axes(between(1200.0, [River, Barrier]), Axis::Open)),
+        (
+            "strip, two rivers",
+            axes(between(1200.0, [River, River]), Axis::Open),
+        ),
+        (
+            "strip, river and barrier",
+            axes(between(1200.0, [River, Barrier]), Axis::Open),
+        ),
         (
             "box, four rivers",
-            axes(between(1200.0, [River, River]), between(1300.0, [River, River])),
+            axes(
+                between(1200.0, [River, River]),
+                between(1300.0, [River, River]),
+            ),
         ),
         (
             "box, a river and three barriers",
-            axes(between(1200.0, [River, Barrier]), between(1300.0, [Barrier, Barrier])),
+            axes(
+                between(1200.0, [River, Barrier]),
+                between(1300.0, [Barrier, Barrier]),
+            ),
         ),
         (
             "wedge of 70°, two rivers",
-            Shape::Wedge { angle_rad: 70.0_f64.to_radians(), kinds: [River, River] },
+            Shape::Wedge {
+                angle_rad: 70.0_f64.to_radians(),
+                kinds: [River, River],
+            },
         ),
         ("circle", Shape::Disk { radius_m: 2000.0 }),
     ]
@@ -109,7 +124,12 @@ fn wells() -> Vec<Source> {
         .collect()
 }
 
-fn superpose(green: &dyn Green, sources: &[Source], points: &[Complex64], single: bool) -> Vec<f64> {
+fn superpose(
+    green: &dyn Green,
+    sources: &[Source],
+    points: &[Complex64],
+    single: bool,
+) -> Vec<f64> {
     let mut sums = vec![0.0; points.len()];
     if single {
         green.superpose(sources, points, &mut sums);
@@ -139,10 +159,15 @@ fn time(mut work: impl FnMut()) -> f64 {
 /// The floor: 20 logarithms a node with the vector kernel of the library,
 /// added up.
 fn logarithms(single: bool) {
-    let values: Vec<f64> = (0..SIDE * SIDE).map(|node| 1.0 + 1e-3 * node as f64).collect();
+    let values: Vec<f64> = (0..SIDE * SIDE)
+        .map(|node| 1.0 + 1e-3 * node as f64)
+        .collect();
     let mut sums = vec![0.0; values.len()];
     if single {
-        Arch::new().dispatch(Logarithms { values: &values, sums: &mut sums });
+        Arch::new().dispatch(Logarithms {
+            values: &values,
+            sums: &mut sums,
+        });
     } else {
         values
             .par_chunks(2048)
