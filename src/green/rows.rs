@@ -49,6 +49,9 @@ const FADED: f64 = 40.0;
 /// Powers of two that t is held between, so that t⁴ stays a normal number.
 const POWER_LIMIT: f64 = 240.0;
 
+/// Up to this many κ⁻¹ of height, e^(κy) needs no exponent of its own.
+const SHORT: f64 = 600.0;
+
 /// The Green's function of 0 < x < L, with any edges across y.
 #[derive(Clone, Debug)]
 pub struct Rows {
@@ -57,17 +60,24 @@ pub struct Rows {
     y_axis: Axis,
     /// 2π over the period.
     kappa: f64,
+    /// Whether e^(κy) is an ordinary number all over the aquifer.
+    is_short: bool,
 }
 
 impl Rows {
     /// The rows between edges of the given kinds at 0 and `width`.
     pub fn new(width: f64, kinds: [Kind; 2], y_axis: Axis) -> Self {
         let kappa = TAU / mirrors::period(width, kinds);
+        let is_short = match y_axis {
+            Axis::TwoEdges { width_m, .. } => kappa * width_m < SHORT,
+            _ => false,
+        };
         Self {
             width,
             kinds,
             y_axis,
             kappa,
+            is_short,
         }
     }
 
@@ -159,9 +169,9 @@ struct Row {
 }
 
 impl Row {
-    fn new(kappa: f64, position: f64, above: bool, sign: f64) -> Self {
-        let exponent = kappa * position;
-        let (factor, power) = split_exponential(if above { -exponent } else { exponent });
+    fn new(rows: &Rows, position: f64, above: bool, sign: f64) -> Self {
+        let exponent = rows.kappa * position;
+        let (factor, power) = rows.exponential(if above { -exponent } else { exponent });
         Self {
             above,
             factor,
@@ -171,10 +181,15 @@ impl Row {
     }
 }
 
-/// e^x as (m, k) with e^x = m · 2^k, k whole.
-fn split_exponential(x: f64) -> (f64, f64) {
-    let power = (x / LN_2).round();
-    ((x - power * LN_2).exp(), power)
+impl Rows {
+    /// e^x as (m, k) with e^x = m · 2^k, k whole; k = 0 in a short aquifer.
+    fn exponential(&self, x: f64) -> (f64, f64) {
+        if self.is_short {
+            return (x.exp(), 0.0);
+        }
+        let power = (x / LN_2).round();
+        ((x - power * LN_2).exp(), power)
+    }
 }
 
 /// What all rows of one pair share: the cosines of κ(x ∓ x₀).
@@ -198,7 +213,7 @@ impl PairKernel for Rows {
     fn terms(&self, at: Complex64, reference: Complex64) -> [f64; TERMS] {
         let (half_sin, half_cos) = (0.5 * self.kappa * at.re).sin_cos();
         let y = at.im - self.y_origin(reference);
-        let (factor, power) = split_exponential(self.kappa * y);
+        let (factor, power) = self.exponential(self.kappa * y);
         let sin = 2.0 * half_sin * half_cos;
         let cos = 1.0 - 2.0 * half_sin * half_sin;
         [
@@ -219,7 +234,7 @@ impl PairKernel for Rows {
         let rows = self.rows_of(source.pole.im);
         let mirrored = rows.iter().skip(1).map(|row| {
             let above = row.position > source.pole.im;
-            Row::new(self.kappa, row.position - origin, above, row.sign)
+            Row::new(self, row.position - origin, above, row.sign)
         });
         let y = source.pole.im - origin;
         Prepared {
@@ -229,7 +244,7 @@ impl PairKernel for Rows {
             cos: 1.0 - 2.0 * half_sin * half_sin,
             rim: (self.kappa * source.rim_m).powi(2),
             y,
-            own: Row::new(self.kappa, y, false, 1.0),
+            own: Row::new(self, y, false, 1.0),
             mirrored: mirrored.collect(),
         }
     }
@@ -247,7 +262,11 @@ impl PairKernel for Rows {
         };
 
         let one = sin.constant(1.0);
-        let mut t = fade(&prepared.own, terms);
+        let limit = f64::exp2(POWER_LIMIT);
+        let mut t = self
+            .fade(&prepared.own, terms)
+            .min(sin.constant(limit))
+            .max(sin.constant(limit.recip()));
         if self.has_no_river_across_x() {
             t = t.min(one / t);
         }
@@ -260,7 +279,7 @@ impl PairKernel for Rows {
         let (others, difference) = self.other_images(t, &cosines, squared);
         let mut product = Ratio::of_well(squared, rim_squared, others, difference);
         for row in &prepared.mirrored {
-            let t = fade(row, terms);
+            let t = self.fade(row, terms);
             let nearest = t.mul_add(t, one) - (t + t) * cosines.minus;
             let (others, difference) = self.other_images(t, &cosines, nearest);
             let factor = Ratio::of_image(nearest * others, difference);
@@ -343,20 +362,24 @@ impl Rows {
             }
         }
     }
-}
 
-/// t = e^(−κ abs(y − yₖ)) of a row at some points.
-#[inline(always)]
-fn fade<S: Simd>(row: &Row, terms: &[Lanes<S>; TERMS]) -> Lanes<S> {
-    let [_, _, _, _, up, down, power, _] = *terms;
-    let (point, power) = if row.above {
-        (up, power.constant(row.power) + power)
-    } else {
-        (down, power.constant(row.power) - power)
-    };
-    let limit = power.constant(POWER_LIMIT);
-    let power = power.min(limit).max(power.constant(-POWER_LIMIT));
-    point * point.constant(row.factor) * power.power_of_two()
+    /// t = e^(−κ abs(y − yₖ)) of a row at some points.
+    #[inline(always)]
+    fn fade<S: Simd>(&self, row: &Row, terms: &[Lanes<S>; TERMS]) -> Lanes<S> {
+        let [_, _, _, _, up, down, power, _] = *terms;
+        let (point, power) = if row.above {
+            (up, power.constant(row.power) + power)
+        } else {
+            (down, power.constant(row.power) - power)
+        };
+        let t = point * point.constant(row.factor);
+        if self.is_short {
+            return t;
+        }
+        let limit = power.constant(POWER_LIMIT);
+        let power = power.min(limit).max(power.constant(-POWER_LIMIT));
+        t * power.power_of_two()
+    }
 }
 
 impl Green for Rows {

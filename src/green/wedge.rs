@@ -105,8 +105,8 @@ pub(super) fn images_in_wedge(angle: f64, kinds: [Kind; 2], pole: Complex64) -> 
     // Going once round must bring back the well with its own sign.
     let copies = whole as u32;
     let consistent = (wedges - whole).abs() < 1e-9 * wedges
-        && copies % 2 == 0
-        && (first * second > 0.0 || copies % 4 == 0);
+        && copies.is_multiple_of(2)
+        && (first * second > 0.0 || copies.is_multiple_of(4));
     if !consistent {
         return Vec::new();
     }

@@ -248,9 +248,10 @@ impl Crs {
     }
 
     /// Whether a place projects back onto the grid coordinates it came from,
-    /// to 1 mm: false where the inverse has left its branch.
+    /// to 2 m, twice what the list lets pass: false where the inverse has left
+    /// its branch.
     fn comes_back(&self, longitude: f64, latitude: f64, x: f64, y: f64) -> bool {
-        const SLACK_M: f64 = 1e-3;
+        const SLACK_M: f64 = 2.0;
         self.projection
             .forward(longitude, latitude)
             .is_some_and(|(again_x, again_y)| {

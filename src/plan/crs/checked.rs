@@ -105,3 +105,57 @@ fn accepted(rest: &str) -> Option<Accepted<'_>> {
     }
     Some(found)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn every_line_of_the_list_is_read() {
+        let lines = LIST.lines().filter(|line| !line.starts_with('#'));
+        let unread: Vec<&str> = lines.filter(|line| row(line).is_none()).collect();
+        assert!(unread.is_empty(), "{unread:?}");
+    }
+
+    /// A floor under the sweep: a list that shrinks is a fault of the sweep.
+    #[test]
+    fn four_thousand_codes_are_accepted() {
+        let accepted: u32 = LIST
+            .lines()
+            .filter_map(row)
+            .filter(|(_, verdict)| matches!(verdict, Verdict::Accepted(_)))
+            .map(|(codes, _)| codes.end() - codes.start() + 1)
+            .sum();
+        assert!(accepted >= 4_000, "{accepted}");
+    }
+
+    #[test]
+    fn every_suggested_code_is_itself_accepted() {
+        let rows: Vec<_> = LIST.lines().filter_map(row).collect();
+        let accepted: std::collections::HashSet<u32> = rows
+            .iter()
+            .filter(|(_, verdict)| matches!(verdict, Verdict::Accepted(_)))
+            .flat_map(|(codes, _)| codes.clone())
+            .collect();
+        for (codes, verdict) in &rows {
+            if let Verdict::Refused {
+                alternative: Some(code),
+            } = verdict
+            {
+                assert!(accepted.contains(code), "{codes:?} suggests {code}");
+            }
+        }
+    }
+
+    #[test]
+    fn a_domain_across_the_antimeridian_holds_both_its_sides() {
+        let domain = Domain {
+            west: 174.0,
+            south: 0.0,
+            east: 186.0,
+            north: 84.0,
+        };
+        assert!(domain.holds(179.0, 10.0) && domain.holds(-179.0, 10.0));
+        assert!(!domain.holds(-173.0, 10.0) && !domain.holds(173.0, 10.0));
+    }
+}

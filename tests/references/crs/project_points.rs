@@ -1,49 +1,51 @@
-//! Projects points with the definitions and the projection library the
-//! program uses, for `sweep_epsg.py` to compare against PROJ.
+//! Projects points exactly as the program does, also by codes it refuses, for
+//! `sweep_epsg.py` to compare against PROJ.
 //!
-//! Reads lines `code,longitude,latitude,x,y` (degrees on WGS 84; x and y in the
-//! grid's own unit) and writes for each `x,y,longitude,latitude`: the point
+//! Reads lines `code,shift,longitude,latitude,x,y`: degrees on WGS 84, x and y
+//! in the grid's own unit, `shift` a datum shift of numbers with semicolons
+//! between or empty. Writes for each `x,y,longitude,latitude`: the point
 //! projected, and the grid coordinates taken back to degrees. What cannot be
-//! computed is written as `nan`.
+//! computed is written as `NaN`.
+
+#[path = "../../../src/plan/crs/definition.rs"]
+mod definition;
 
 use std::collections::HashMap;
 use std::io::{BufWriter, Write, stdin, stdout};
 
-use proj4rs::Proj;
-use proj4rs::adaptors::transform_vertex_2d;
+use definition::Projection;
 
-const NOT_COMPUTED: (f64, f64) = (f64::NAN, f64::NAN);
-
-fn definition(code: u16) -> Option<Proj> {
-    Proj::from_proj_string(crs_definitions::from_code(code)?.proj4).ok()
+fn projection(code: &str, shift: &str) -> Option<Projection> {
+    let definition = crs_definitions::from_code(code.parse().ok()?)?;
+    let shift = shift.replace(';', ",");
+    let shift = (!shift.is_empty()).then_some(shift.as_str());
+    Projection::new(definition.proj4, shift).ok()
 }
 
 fn main() -> Result<(), Box<dyn std::error::Error>> {
-    let degrees = Proj::from_proj_string("+proj=longlat +datum=WGS84 +no_defs")?;
     let mut known = HashMap::new();
     let mut output = BufWriter::new(stdout().lock());
     for line in stdin().lines() {
         let line = line?;
-        let mut fields = line.split(',');
-        let code: u16 = fields.next().unwrap_or_default().parse()?;
-        let numbers = fields.map(str::parse).collect::<Result<Vec<f64>, _>>()?;
-        let [longitude, latitude, x, y] = numbers.try_into().map_err(|_| "five fields a line")?;
-        let grid = known.entry(code).or_insert_with(|| definition(code));
-        let (forward, backward) = grid.as_ref().map_or((NOT_COMPUTED, NOT_COMPUTED), |grid| {
-            let place = (longitude.to_radians(), latitude.to_radians());
-            (
-                transform_vertex_2d(&degrees, grid, place).unwrap_or(NOT_COMPUTED),
-                transform_vertex_2d(grid, &degrees, (x, y)).unwrap_or(NOT_COMPUTED),
-            )
-        });
-        writeln!(
-            output,
-            "{},{},{},{}",
-            forward.0,
-            forward.1,
-            backward.0.to_degrees(),
-            backward.1.to_degrees()
-        )?;
+        let fields: Vec<&str> = line.split(',').collect();
+        let [code, shift, numbers @ ..] = fields.as_slice() else {
+            return Err("a code, a shift and four numbers a line".into());
+        };
+        let numbers: Vec<f64> = numbers
+            .iter()
+            .map(|n| n.parse())
+            .collect::<Result<_, _>>()?;
+        let [longitude, latitude, x, y] = numbers.try_into().map_err(|_| "four numbers a line")?;
+        let grid = known
+            .entry(format!("{code},{shift}"))
+            .or_insert_with(|| projection(code, shift));
+        let none = (f64::NAN, f64::NAN);
+        let forward = grid
+            .as_ref()
+            .and_then(|grid| grid.forward(longitude, latitude));
+        let backward = grid.as_ref().and_then(|grid| grid.backward(x, y));
+        let ((x, y), (longitude, latitude)) = (forward.unwrap_or(none), backward.unwrap_or(none));
+        writeln!(output, "{x},{y},{longitude},{latitude}")?;
     }
     Ok(())
 }

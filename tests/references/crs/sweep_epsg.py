@@ -20,6 +20,8 @@ or the bare area, whichever is the widest that is no worse than the bare area.
 """
 
 import argparse
+import collections
+import functools
 import math
 import os
 import pathlib
@@ -32,7 +34,6 @@ os.environ["PROJ_NETWORK"] = "OFF"
 import numpy
 import pyproj
 from pyproj import CRS, Transformer
-from pyproj.aoi import AreaOfInterest
 from pyproj.database import query_crs_info
 from pyproj.enums import PJType
 
@@ -76,38 +77,106 @@ def axes_fit(crs):
     return directions in (["east", "north"], ["north", "north"], ["south", "south"])
 
 
+@functools.cache
+def from_wgs84(datum):
+    """PROJ's way from WGS 84 to a geographic system; None where only ballpark."""
+    try:
+        return Transformer.from_crs(4326, datum, always_xy=True, allow_ballpark=False, only_best=False)
+    except pyproj.exceptions.ProjError:
+        return None
+
+
 def proj_points(code, area):
-    """For each candidate box its points and PROJ's answer; None where PROJ has none."""
+    """The unit and, for each candidate box, its points and PROJ's answer; None
+    where PROJ has no answer or the axes do not fit."""
     crs = CRS.from_epsg(code)
-    if not axes_fit(crs):
+    datum = crs.geodetic_crs
+    shift = from_wgs84(datum) if axes_fit(crs) else None
+    if shift is None:
         return None
     try:
-        transformer = Transformer.from_crs(
-            4326, crs, always_xy=True, allow_ballpark=False, only_best=False
-        )
-        local = Transformer.from_crs(
-            4326, crs, always_xy=True, allow_ballpark=False, only_best=False,
-            area_of_interest=AreaOfInterest(area.west, area.south, area.east, area.north),
-        )
+        grid = Transformer.from_crs(datum, crs, always_xy=True)
     except pyproj.exceptions.ProjError:
         return None
     swept = []
     for box in boxes(area):
         longitude, latitude = sample(box)
-        x, y = transformer.transform(longitude, latitude)
-        swept.append((box, longitude, latitude, x, y))
-    return crs.axis_info[0].unit_conversion_factor, local.accuracy, swept
+        x, y = grid.transform(*shift.transform(longitude, latitude))
+        swept.append((longitude, latitude, x, y))
+    return Asked(crs.axis_info[0].unit_conversion_factor, datum, list(boxes(area)), swept)
 
 
-def ask_program(rows):
+Asked = collections.namedtuple("Asked", "unit datum boxes swept")
+Answer = collections.namedtuple("Answer", "box difference shift")
+
+
+def operation_at(datum, longitude, latitude):
+    """The datum operation PROJ uses at a place."""
+    transformer = from_wgs84(datum)
+    transformer.transform((longitude + 180.0) % 360.0 - 180.0, latitude)
+    try:
+        return transformer.get_last_used_operation()
+    except pyproj.exceptions.ProjError:
+        return transformer  # there is only one
+
+
+def operations(datum, box):
+    """The definitions of the datum operations PROJ uses at nine points of a box."""
+    return {
+        operation_at(datum, longitude, latitude).definition
+        for longitude in numpy.linspace(box[0], box[2], 5)[1:4].tolist()
+        for latitude in numpy.linspace(box[1], box[3], 5)[1:4].tolist()
+    }
+
+
+def as_towgs84(definition):
+    """The seven numbers, position vector convention, of a PROJ operation from
+    WGS 84; None where it is not one similarity."""
+    steps = [step for step in definition.split(" step ") if "proj=helmert" in step or "proj=molobadekas" in step]
+    if not steps:
+        return "0;0;0" if "grid" not in definition and "push" not in definition else None
+    if len(steps) > 1 or "grid" in definition or "t_epoch" in definition:
+        return None
+    value = {key: word for key, _, word in (part.partition("=") for part in steps[0].split())}
+    number_of = lambda key: float(value.get(key, 0.0))
+    move = numpy.array([number_of(key) for key in "xyz"])
+    turn = numpy.array([number_of(key) for key in ("rx", "ry", "rz")])
+    if not steps[0].startswith("inv "):
+        if any(turn) or "s" in value:
+            return None
+        move = -move  # PROJ writes a bare move the way it goes, from WGS 84
+    if value.get("convention") == "coordinate_frame":
+        turn = -turn
+    if value["proj"] == "molobadekas":
+        # Turning and scaling about a point p is the same about 0 after a move.
+        pivot = numpy.array([number_of(key) for key in ("px", "py", "pz")])
+        rx, ry, rz = turn * math.pi / 648000.0
+        turned = numpy.array([[1.0, -rz, ry], [rz, 1.0, -rx], [-ry, rx, 1.0]]) @ pivot
+        move = move + pivot - (1.0 + number_of("s") * 1e-6) * turned
+    numbers = [*move, *turn, number_of("s")]
+    if not any(numbers[3:]):
+        numbers = numbers[:3]
+    return ";".join(f"{round(n, 9):.12g}" for n in numbers)
+
+
+def ask_program(asked, shifts):
+    """The program's answers by (code, shift), as arrays box x point x 4."""
+    pairs = [(code, shift) for code in asked for shift in shifts[code]]
+    lines = (
+        f"{code},{shift},{lon!r},{lat!r},{x!r},{y!r}"
+        for code, shift in pairs
+        for points in asked[code].swept
+        for lon, lat, x, y in zip(*(axis.tolist() for axis in points))
+    )
     program = ["cargo", "run", "--quiet", "--example", "project_points"]
-    text = "\n".join(",".join(repr(float(v)) if i else str(v) for i, v in enumerate(r)) for r in rows)
-    done = subprocess.run(program, cwd=ROOT, input=text, text=True, capture_output=True, check=True)
-    return numpy.array([[float(v) for v in line.split(",")] for line in done.stdout.splitlines()])
+    done = subprocess.run(program, cwd=ROOT, input="\n".join(lines), text=True, stdout=subprocess.PIPE, check=True)
+    numbers = numpy.fromstring(done.stdout.replace("\n", ","), sep=",")
+    answers = numbers.reshape(len(pairs), -1, POINTS_EACH_WAY**2, 4)
+    return dict(zip(pairs, answers))
 
 
-def largest_difference_m(unit, swept, answers):
-    _, longitude, latitude, x, y = swept
+def largest_difference_m(unit, points, answers):
+    longitude, latitude, x, y = points
     forward = numpy.hypot(answers[:, 0] - x, answers[:, 1] - y) * unit
     east = (answers[:, 2] - longitude + 180.0) % 360.0 - 180.0
     east = east * METRES_A_DEGREE * numpy.cos(numpy.radians(latitude))
@@ -120,27 +189,38 @@ def grade(difference_m):
     return 0 if difference_m <= SILENT_M else 1 if difference_m <= NOTED_M else 2
 
 
-def judge(unit, swept, answers):
+def judge(asked, shift, answers):
     """The widest box that grades as well as the bare area, and its difference."""
-    differences = [largest_difference_m(unit, s, a) for s, a in zip(swept, answers)]
+    differences = [largest_difference_m(asked.unit, *pair) for pair in zip(asked.swept, answers)]
     best = grade(differences[-1])
     if best == 2:
         return None
-    for s, difference in zip(swept, differences):
-        if grade(difference) <= best:
-            return s[0], difference
-    return None
+    return next(
+        Answer(box, difference, shift)
+        for box, difference in zip(asked.boxes, differences)
+        if grade(difference) == best
+    )
 
 
-def shift_note(code, accuracy_m):
-    """The registered accuracy of a datum shift that is no mere identity, if coarse."""
-    with warnings.catch_warnings():
-        warnings.simplefilter("ignore")
-        text = CRS.from_epsg(code).to_proj4()
-    steps = Transformer.from_crs(4326, CRS.from_epsg(code).geodetic_crs, always_xy=True, only_best=False,
-                                 area_of_interest=None).definition
-    del text
-    return accuracy_m if "helmert" in (steps or "") and accuracy_m >= 2.0 else 0.0
+def judge_all(asked, shifts):
+    """The best answer of each code over its candidate shifts, the first of equals."""
+    answers = ask_program(asked, shifts)
+    best = {}
+    for code, question in asked.items():
+        found = [judge(question, shift, answers[code, shift]) for shift in shifts[code]]
+        found = [answer for answer in found if answer]
+        if found:
+            best[code] = min(found, key=lambda answer: answer.difference)
+    return best
+
+
+def coarse_shift_m(asked):
+    """The registered accuracy of the shift in the middle of the area, where it
+    is no mere identity and coarser than 2 m; else 0."""
+    west, south, east, north = asked.boxes[-1]
+    operation = operation_at(asked.datum, (west + east) / 2.0, (south + north) / 2.0)
+    moved = "helmert" in operation.definition or "molobadekas" in operation.definition
+    return operation.accuracy if moved and operation.accuracy > 2.0 else 0.0
 
 
 def overlap(first, second):
@@ -203,6 +283,7 @@ HEADER = """\
 #
 # accepted: code or range, west south east north in degrees (east may pass 180),
 #   then if they apply  d<largest difference, mm>  s<accuracy of the datum shift, m>
+#   t<the shift PROJ uses, where the definition's own is another>
 # refused: code or range, "refused", the nearest accepted code or 0
 """
 
@@ -225,35 +306,38 @@ def sweep():
             for code, info in sorted(infos.items())
             if code < 65536 and (found := proj_points(code, info.area_of_use))
         }
-    rows = [
-        (code, *values)
-        for code, (_, _, swept) in asked.items()
-        for s in swept
-        for values in zip(*s[1:])
-    ]
-    each = POINTS_EACH_WAY**2
-    answers = ask_program(rows).reshape(len(asked), -1, each, 4)
-    accepted = {}
-    for (code, (unit, accuracy, swept)), answer in zip(asked.items(), answers):
-        if found := judge(unit, swept, answer):
-            accepted[code] = (*found, shift_note(code, accuracy))
-    return infos, accepted
+    accepted = judge_all(asked, {code: [""] for code in asked})
+    # Where the definition's own datum shift is not what PROJ uses, PROJ's is tried.
+    again, shifts = {}, {}
+    for code, question in asked.items():
+        if code in accepted and grade(accepted[code].difference) == 0:
+            continue
+        candidates = {as_towgs84(text) for text in operations(question.datum, question.boxes[-1])} - {None}
+        if candidates:
+            again[code], shifts[code] = question, sorted(candidates)
+    for code, answer in judge_all(again, shifts).items():
+        if code not in accepted or grade(answer.difference) < grade(accepted[code].difference):
+            accepted[code] = answer
+    coarse = {code: coarse_shift_m(asked[code]) for code in accepted}
+    return infos, accepted, coarse
 
 
-def listing(infos, accepted):
+def listing(infos, accepted, coarse):
     rows = []
     for code, info in sorted(infos.items()):
         if code in accepted:
-            box, difference, shift = accepted[code]
-            rest = " ".join(number(value) for value in box)
-            if grade(difference) == 1:
-                rest += f" d{math.ceil(difference * 1000.0)}"
-            if shift:
-                rest += f" s{number(shift)}"
+            answer = accepted[code]
+            rest = " ".join(number(value) for value in answer.box)
+            if grade(answer.difference) == 1:
+                rest += f" d{math.ceil(answer.difference * 1000.0)}"
+            if coarse[code]:
+                rest += f" s{number(coarse[code])}"
+            if answer.shift:
+                rest += " t" + answer.shift.replace(";", ",")
         else:
             rest = f"refused {alternative(info, accepted, infos)}"
         rows.append((code, rest))
-    grades = [grade(difference) for _, difference, _ in accepted.values()]
+    grades = [grade(answer.difference) for answer in accepted.values()]
     header = HEADER.format(
         proj=pyproj.proj_version_str,
         epsg=pyproj.database.get_database_metadata("EPSG.VERSION"),
