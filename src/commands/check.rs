@@ -109,14 +109,12 @@ impl<'a> Report<'a> {
             );
             line("steady state", &steady_state(self.solution, field));
         }
-        line(
-            "wells",
-            &format!(
-                "{}, and {} neighbours",
-                site.wells.len(),
-                site.neighbours.len()
-            ),
+        let counts = format!(
+            "{} and {}",
+            counted(site.wells.len(), "well"),
+            counted(site.neighbours.len(), "neighbour")
         );
+        line("holds", &counts);
         list(&mut text, "Notes", &self.notes);
         list(&mut text, "What looks wrong", &self.oddities);
         if self.oddities.is_empty() {
@@ -156,6 +154,12 @@ impl<'a> Report<'a> {
             "caution": CAUTION,
         })
     }
+}
+
+/// "1 well", "5 wells".
+fn counted(count: usize, what: &str) -> String {
+    let plural = if count == 1 { "" } else { "s" };
+    format!("{count} {what}{plural}")
 }
 
 /// A heading with a list, or nothing.
