@@ -29,7 +29,7 @@ fn a_plan_with_several_faults_shows_them_all() {
 
 #[test]
 fn a_map_of_too_many_nodes_is_refused() {
-    let plan = format!("{SMALL}\n[map]\nextent = [0.0, -1e6, 1e6, 1e6]\nspacing = 1.0\n");
+    let plan = format!("{SMALL}\n[map]\nextent = [0.0, -3000.0, 6000.0, 3000.0]\nspacing = 1.0\n");
     insta::assert_snapshot!(refusal(plan));
 }
 

@@ -258,3 +258,40 @@ fn wells_on_both_banks_of_a_river_do_not_touch_each_other() {
     assert_eq!(row[1], 0.0);
     assert_eq!(row[2], 0.0);
 }
+
+/// Longitude and latitude of the wells by PROJ, which the program does not
+/// use: `pyproj.Transformer.from_crs(code, 4326, always_xy=True)`, pyproj 3.7.
+#[test]
+fn wells_lie_where_another_projection_library_puts_them() {
+    let by_proj: [(Option<&str>, &[[f64; 2]]); 2] = [
+        (
+            None,
+            &[
+                [13.814_702_031_6, 48.395_062_876_0],
+                [13.815_719_894_2, 48.397_772_395_3],
+                [13.818_373_364_9, 48.399_868_940_3],
+                [13.811_891_875_6, 48.399_712_218_5],
+                [13.806_028_615_8, 48.396_232_736_8],
+            ],
+        ),
+        (
+            Some("us_units.toml"),
+            &[
+                [-73.079_449_023_2, 40.855_781_862_9],
+                [-73.080_137_799_6, 40.858_257_723_8],
+            ],
+        ),
+    ];
+    for (plan, expected) in by_proj {
+        let examples = Path::new(env!("CARGO_MANIFEST_DIR")).join("examples");
+        let text = plan.map(|plan| fs::read_to_string(examples.join(plan)).unwrap());
+        let layer = json(&layers(text.as_deref())("wells.geojson"));
+        for (feature, place) in layer["features"].as_array().unwrap().iter().zip(expected) {
+            let position = positions(&feature["geometry"]["coordinates"])[0];
+            for (degrees, by_proj) in position.iter().zip(place) {
+                // Half of the eighth decimal: 0.6 mm.
+                assert!((degrees - by_proj).abs() <= 0.51e-8, "{degrees} {by_proj}");
+            }
+        }
+    }
+}

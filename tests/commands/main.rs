@@ -4,6 +4,13 @@
 //! it; numbers in them are checked against sources elsewhere (`published`,
 //! `properties`).
 
+#![allow(
+    clippy::unwrap_used,
+    clippy::expect_used,
+    clippy::indexing_slicing,
+    reason = "a test that meets something unexpected should fail"
+)]
+
 mod bad_input;
 mod check;
 mod files;

@@ -65,6 +65,7 @@ fn every_example_runs() {
         let folder = folder();
         let path = examples.join(plan);
         let output = outcome(folder.path(), &["run", path.to_str().unwrap()]);
+        assert!(output.status.success(), "{}", transcript(&output));
         insta::assert_snapshot!(plan.replace('/', "_"), transcript(&output));
     }
 }
