@@ -1,18 +1,18 @@
 //! `boundaries.geojson`: the rivers and barriers as far as they bound an
-//! aquifer within the map, with the water they give to the wells.
+//! aquifer within the map and as far as the plan draws them, with the water they give to the wells.
 //!
 //! One feature a river or barrier, its parts joined; where its parts lie
 //! apart they are several features, each with the whole inflow.
 
-use serde_json::Value;
+use geojson::FeatureCollection;
 
 use super::geojson::Layer;
 use super::units::Properties;
 use super::{LayerError, Planned};
-use crate::site::{Edge, EdgeKind, EdgeShape, Point, Vector};
+use crate::site::{Edge, EdgeKind, EdgeShape, Extent, Point, Vector};
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     let site = planned.solution.site();
     for (finding, edge) in planned.findings.boundaries.iter().zip(&site.edges) {
@@ -37,6 +37,7 @@ pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
 pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
     let mut lines: Vec<Vec<Point>> = Vec::new();
     let mut bounds = false;
+    let extent = extent_with(planned, edge);
     for field in planned.solution.fields() {
         let outline = field.outline();
         for (side, pieces) in outline.sides.iter().enumerate() {
@@ -46,7 +47,7 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
                 .filter(|(_, piece)| piece.edge == edge);
             for (piece, _) in of_edge {
                 bounds = true;
-                for line in outline.piece_lines(side, piece, planned.survey.window.extent) {
+                for line in outline.piece_lines(side, piece, extent) {
                     if line.len() > 1 && !lines.iter().any(|known| same_course(known, &line)) {
                         lines.push(line);
                     }
@@ -64,6 +65,18 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
             .get(edge)
             .map_or(vec![], as_given)
     }
+}
+
+/// The map's extent, widened to hold what the plan draws of an edge: no river
+/// that gives water is left out for lying off the map.
+fn extent_with(planned: &Planned<'_>, edge: usize) -> Extent {
+    let mut extent = planned.survey.window.extent;
+    let drawn = planned.solution.site().edges.get(edge).map(as_given);
+    for place in drawn.into_iter().flatten().flatten() {
+        extent.min = extent.min.inf(&place);
+        extent.max = extent.max.sup(&place);
+    }
+    extent
 }
 
 /// An edge as the plan gives it; a circle as its polygon of 128 sides.

@@ -2,6 +2,7 @@
 //! `drawdown_bands.geojson`.
 
 use geo::{LineString, MultiPolygon};
+use geojson::FeatureCollection;
 use serde_json::Value;
 
 use super::geojson::Layer;
@@ -58,7 +59,7 @@ fn refusal(error: &LevelError) -> Refusal {
 }
 
 /// The head contours.
-pub fn head_lines(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn head_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     for line in all_head_lines(planned)? {
         let name = format!("head_{}", planned.units().length_ending());
@@ -70,7 +71,7 @@ pub fn head_lines(planned: &Planned<'_>) -> Result<Value, LayerError> {
 }
 
 /// The drawdown contours.
-pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn drawdown_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     for line in drawdown_cuts(planned)?.iter().flat_map(Cuts::lines) {
         let name = format!("drawdown_{}", planned.units().length_ending());
@@ -82,7 +83,7 @@ pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Value, LayerError> {
 }
 
 /// The bands between the drawdown contours.
-pub fn drawdown_bands(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn drawdown_bands(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     let ending = planned.units().length_ending();
     for band in all_drawdown_bands(planned)? {

@@ -8,11 +8,13 @@
 //! Limits: a layer across the antimeridian is not cut there.
 //! Source: RFC 7946 (2016), sections 3.1, 3.1.6, 5, 6.1, 11.2.
 
-use serde_json::{Map, Value, json};
+use geojson::{Feature, FeatureCollection, Geometry};
+use serde_json::Map;
 
 use super::LayerError;
 use super::caution::CAUTION;
-use super::units::{Properties, number};
+use super::rings;
+use super::units::Properties;
 use crate::plan::Plan;
 use crate::site::Point;
 
@@ -31,7 +33,7 @@ pub type Position = [f64; 2];
 /// A layer in the making.
 pub struct Layer<'a> {
     plan: &'a Plan,
-    features: Vec<Value>,
+    features: Vec<Feature>,
     bounds: Option<[f64; 4]>,
 }
 
@@ -48,7 +50,7 @@ impl<'a> Layer<'a> {
     /// Adds a point.
     pub fn add_point(&mut self, at: Point, properties: Properties) -> Result<(), LayerError> {
         let position = self.position(at)?;
-        self.add("Point", json!(position), properties);
+        self.add(Geometry::new_point(position), properties);
         Ok(())
     }
 
@@ -56,7 +58,7 @@ impl<'a> Layer<'a> {
     pub fn add_line(&mut self, line: &[Point], properties: Properties) -> Result<(), LayerError> {
         let positions = self.line(line)?;
         if positions.len() > 1 {
-            self.add("LineString", coordinates(&positions), properties);
+            self.add(Geometry::new_line_string(positions), properties);
         }
         Ok(())
     }
@@ -72,46 +74,42 @@ impl<'a> Layer<'a> {
         for rings in polygons {
             let mut polygon = Vec::with_capacity(rings.len());
             for (index, ring) in rings.iter().enumerate() {
-                let ring = self.ring(ring, index == 0)?;
-                polygon.push(coordinates(&ring));
+                polygon.push(self.ring(ring, index == 0)?);
             }
-            written.push(Value::Array(polygon));
+            written.extend(rings::resolved(polygon));
         }
-        match (written.pop(), written.is_empty()) {
-            (None, _) => {}
-            (Some(only), true) => self.add("Polygon", only, properties),
-            (Some(last), false) => {
-                written.push(last);
-                self.add("MultiPolygon", Value::Array(written), properties);
-            }
+        match written.as_slice() {
+            [] => {}
+            [only] => self.add(Geometry::new_polygon(only.iter().cloned()), properties),
+            several => self.add(
+                Geometry::new_multi_polygon(several.iter().map(|polygon| polygon.iter().cloned())),
+                properties,
+            ),
         }
         Ok(())
     }
 
     /// The finished layer.
-    pub fn finish(self) -> Value {
-        let mut layer = Map::new();
-        layer.insert("type".into(), "FeatureCollection".into());
-        if let Some(bounds) = self.bounds {
-            layer.insert("bbox".into(), bounds.iter().map(|&b| number(b)).collect());
+    pub fn finish(self) -> FeatureCollection {
+        FeatureCollection {
+            bbox: self.bounds.map(|bounds| bounds.to_vec()),
+            features: self.features,
+            foreign_members: Some(Map::from_iter([("caution".into(), CAUTION.into())])),
         }
-        layer.insert("caution".into(), CAUTION.into());
-        layer.insert("features".into(), Value::Array(self.features));
-        Value::Object(layer)
     }
 
-    fn add(&mut self, kind: &str, coordinates: Value, properties: Properties) {
-        self.features.push(json!({
-            "type": "Feature",
-            "properties": Value::from(properties),
-            "geometry": {"type": kind, "coordinates": coordinates},
-        }));
+    fn add(&mut self, geometry: Geometry, properties: Properties) {
+        self.features.push(Feature {
+            geometry: Some(geometry),
+            properties: Some(properties.into()),
+            ..Feature::default()
+        });
     }
 
     /// A place, rounded, and counted in the layer's bounds.
     fn position(&mut self, at: Point) -> Result<Position, LayerError> {
         let exact = longitude_latitude(self.plan, at)?;
-        let position = exact.map(|degrees| (degrees * 1e8).round() / 1e8 + 0.0);
+        let position = exact.map(|degrees| (degrees * rings::STEPS).round() / rings::STEPS + 0.0);
         let [longitude, latitude] = position;
         self.bounds = Some(match self.bounds {
             None => [longitude, latitude, longitude, latitude],
@@ -169,11 +167,6 @@ pub fn longitude_latitude(plan: &Plan, at: Point) -> Result<Position, LayerError
             reason: "it lies beyond the coordinate system".into(),
         })
     }
-}
-
-/// Positions as a JSON array.
-fn coordinates(positions: &[Position]) -> Value {
-    positions.iter().map(|position| json!(position)).collect()
 }
 
 /// Twice the area within a ring, positive when it runs counter-clockwise.

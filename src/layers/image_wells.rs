@@ -1,6 +1,6 @@
 //! `image_wells.geojson`: the nearest images of each well, for audit.
 
-use serde_json::Value;
+use geojson::FeatureCollection;
 
 use super::geojson::Layer;
 use super::units::Properties;
@@ -11,7 +11,7 @@ const IMAGES_A_WELL: usize = 8;
 
 /// The layer. An image so far away that the plan's coordinate system has no
 /// place for it is left out.
-pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     let site = planned.solution.site();
     for (index, well) in site.wells.iter().enumerate() {

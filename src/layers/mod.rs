@@ -10,6 +10,7 @@ mod image_wells;
 mod interference_csv;
 mod map_svg;
 mod neighbours;
+mod rings;
 mod units;
 mod wells;
 pub mod words;
@@ -148,7 +149,7 @@ pub fn make_all(planned: &Planned<'_>) -> Result<Vec<OutputFile>, LayerError> {
 }
 
 /// JSON on one line, with a line end.
-fn json(value: &Value) -> Result<Vec<u8>, LayerError> {
+fn json(value: &impl serde::Serialize) -> Result<Vec<u8>, LayerError> {
     let mut bytes = serde_json::to_vec(value)?;
     bytes.push(b'\n');
     Ok(bytes)

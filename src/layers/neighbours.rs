@@ -1,6 +1,6 @@
 //! `neighbours.geojson`: every neighbour with the drawdown at its worst point.
 
-use serde_json::Value;
+use geojson::FeatureCollection;
 
 use super::geojson::Layer;
 use super::units::Properties;
@@ -9,7 +9,7 @@ use crate::findings::Who;
 use crate::site::Place;
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     let site = planned.solution.site();
     for (finding, neighbour) in planned.findings.neighbours.iter().zip(&site.neighbours) {

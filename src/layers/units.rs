@@ -143,6 +143,12 @@ impl From<Properties> for Value {
     }
 }
 
+impl From<Properties> for Map<String, Value> {
+    fn from(properties: Properties) -> Self {
+        properties.map
+    }
+}
+
 /// A number, or null where there is none or it is not finite. Minus zero
 /// reads as zero.
 pub fn number(value: impl Into<Option<f64>>) -> Value {

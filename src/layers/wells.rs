@@ -1,6 +1,6 @@
 //! `wells.geojson`: every well with its level and how its drawdown comes about.
 
-use serde_json::Value;
+use geojson::FeatureCollection;
 
 use super::geojson::Layer;
 use super::units::Properties;
@@ -8,7 +8,7 @@ use super::{LayerError, Planned, flag_codes};
 use crate::findings::Who;
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<Value, LayerError> {
+pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
     let site = planned.solution.site();
     for (finding, well) in planned.findings.wells.iter().zip(&site.wells) {

@@ -6,8 +6,8 @@ use super::shape::{Axis, Shape};
 use super::{Outline, Piece};
 use crate::site::Point;
 
-/// Share of a place's distance by which it may lie outside and still count
-/// as on the edge.
+/// Share of a place's distance, plus one metre, by which it may lie outside
+/// and still count as on the edge.
 const ON_EDGE: f64 = 1e-9;
 
 impl Outline {
@@ -15,14 +15,14 @@ impl Outline {
     /// within 1e-9 of its distance from the canonical origin.
     pub fn holds(&self, point: Point) -> bool {
         let z = self.frame.to_canonical(point);
-        let slack = ON_EDGE * z.norm();
+        let slack = ON_EDGE * (1.0 + z.norm());
         match self.shape {
             Shape::Axes { x, y } => within(x, z.re, slack) && within(y, z.im, slack),
             Shape::Wedge { angle_rad, .. } => {
                 let from_first = z.arg().rem_euclid(std::f64::consts::TAU);
                 // Just below the first side the argument is almost a full turn.
                 let below = std::f64::consts::TAU - from_first;
-                from_first <= angle_rad + ON_EDGE || below <= ON_EDGE
+                z.norm() <= ON_EDGE || from_first <= angle_rad + ON_EDGE || below <= ON_EDGE
             }
             Shape::Disk { radius_m } => z.norm() <= radius_m + slack,
             Shape::DiskExterior { radius_m } => z.norm() + slack >= radius_m,
