@@ -6,7 +6,7 @@ use serde_json::{Value, json};
 
 use super::console::{Console, wrapped};
 use super::failure::Failure;
-use super::source::{PlanArgument, solve};
+use super::source::{PlanArgument, solve, wells_and_neighbours};
 use crate::field::WellField;
 use crate::findings::{Oddity, Solution, WellsAndNeighbours, oddities};
 use crate::layers::words::{Words, one_line};
@@ -29,13 +29,14 @@ pub struct Arguments {
 
 /// Reads and solves the plan, and says what was found.
 pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
-    let solved = arguments
-        .plan
-        .read()
-        .and_then(|plan| solve(&plan).map(|solution| (plan, solution)));
+    let solved = arguments.plan.read().and_then(|plan| {
+        let solution = solve(&plan)?;
+        let found = wells_and_neighbours(&plan, &solution)?;
+        Ok((plan, solution, found))
+    });
     match solved {
-        Ok((plan, solution)) => {
-            let report = Report::of(&plan, &solution);
+        Ok((plan, solution, found)) => {
+            let report = Report::of(&plan, &solution, &found);
             let text = if arguments.json {
                 pretty(&report.json())?
             } else {
@@ -72,8 +73,7 @@ struct Report<'a> {
 }
 
 impl<'a> Report<'a> {
-    fn of(plan: &'a Plan, solution: &'a Solution) -> Self {
-        let found = WellsAndNeighbours::of(solution);
+    fn of(plan: &'a Plan, solution: &'a Solution, found: &WellsAndNeighbours) -> Self {
         let words = Words::new(solution.site(), Units(plan.units));
         let oddities = oddities(solution, &found.wells, &found.neighbours)
             .iter()
@@ -109,14 +109,12 @@ impl<'a> Report<'a> {
             );
             line("steady state", &steady_state(self.solution, field));
         }
-        line(
-            "wells",
-            &format!(
-                "{}, and {} neighbours",
-                site.wells.len(),
-                site.neighbours.len()
-            ),
+        let counts = format!(
+            "{} and {}",
+            counted(site.wells.len(), "well"),
+            counted(site.neighbours.len(), "neighbour")
         );
+        line("holds", &counts);
         list(&mut text, "Notes", &self.notes);
         list(&mut text, "What looks wrong", &self.oddities);
         if self.oddities.is_empty() {
@@ -156,6 +154,12 @@ impl<'a> Report<'a> {
             "caution": CAUTION,
         })
     }
+}
+
+/// "1 well", "5 wells".
+fn counted(count: usize, what: &str) -> String {
+    let plural = if count == 1 { "" } else { "s" };
+    format!("{count} {what}{plural}")
 }
 
 /// A heading with a list, or nothing.

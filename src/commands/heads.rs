@@ -5,8 +5,8 @@ use std::path::PathBuf;
 use super::console::Console;
 use super::failure::Failure;
 use super::points::{self, NamedPoint};
-use super::source::{PlanArgument, solve};
-use crate::findings::{Solution, WellsAndNeighbours, edge_between};
+use super::source::{PlanArgument, solve, wells_and_neighbours};
+use crate::findings::{Solution, edge_between};
 use crate::layers::{Units, safe_cell};
 use crate::plan::Plan;
 use crate::site::{Place, Point};
@@ -49,7 +49,7 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     }
     let rows = match wanted {
         Some(wanted) => at_points(&plan, &solution, wanted),
-        None => at_wells_and_neighbours(&plan, &solution),
+        None => at_wells_and_neighbours(&plan, &solution)?,
     };
     let table =
         table(&rows, Units(plan.units)).map_err(|error| Failure::Refused(error.to_string()))?;
@@ -124,9 +124,9 @@ fn note_on(solution: &Solution, place: Point, head_m: f64) -> String {
 }
 
 /// Levels in the wells, and heads at the neighbours' worst points.
-fn at_wells_and_neighbours(plan: &Plan, solution: &Solution) -> Vec<Row> {
+fn at_wells_and_neighbours(plan: &Plan, solution: &Solution) -> Result<Vec<Row>, Failure> {
     let site = solution.site();
-    let found = WellsAndNeighbours::of(solution);
+    let found = wells_and_neighbours(plan, solution)?;
     let wells = found.wells.iter().zip(&site.wells).map(|(finding, well)| {
         let (x, y) = plan.to_plan_xy(well.at);
         Row {
@@ -163,5 +163,5 @@ fn at_wells_and_neighbours(plan: &Plan, solution: &Solution) -> Vec<Row> {
             note: note.into(),
         }
     });
-    wells.chain(neighbours).collect()
+    Ok(wells.chain(neighbours).collect())
 }

@@ -6,7 +6,6 @@ use std::path::Path;
 use comfy_table::{CellAlignment, Table};
 
 use super::console::wrapped;
-use crate::findings::Balance;
 use crate::layers::words::{Words, one_line, percent};
 use crate::layers::{CAUTION, OUTPUTS, Planned};
 
@@ -38,16 +37,31 @@ pub fn of(planned: &Planned<'_>, out: &Path) -> String {
 /// Which aquifers were found, and how they were solved.
 pub fn recognised(planned: &Planned<'_>) -> String {
     let site = planned.solution.site();
+    let words = Words::of(planned);
     let mut text = String::new();
+    let several = planned.solution.fields().len() > 1;
     for field in planned.solution.fields() {
-        let sentence = format!(
+        let mut sentence = format!(
             "{}; {}",
             one_line(&field.outline().words(site)),
             field.method()
         );
+        if several {
+            let _ = write!(sentence, "; {}", held_wells(&words, &field.outline().wells));
+        }
         text.push_str(&wrapped(&capitalised(&sentence), "", "  "));
     }
     text
+}
+
+/// The wells of one aquifer among several.
+fn held_wells(words: &Words<'_>, wells: &[usize]) -> String {
+    let named: Vec<String> = wells.iter().take(5).map(|&well| words.well(well)).collect();
+    let more = match wells.len().saturating_sub(named.len()) {
+        0 => String::new(),
+        more => format!(" and {more} more"),
+    };
+    format!("holds {}{more}", named.join(", "))
 }
 
 /// A sentence with a capital at its head.
@@ -83,9 +97,8 @@ fn totals(planned: &Planned<'_>) -> String {
             )
         })
         .collect();
-    let balance = |balance: &Balance| balance.inflow_m3_d.is_some();
-    if planned.findings.balances.iter().any(balance) {
-        let _ = write!(text, "; to the wells from {}", given.join(", "));
+    if !given.is_empty() {
+        let _ = write!(text, "; taken from {}", given.join(", "));
     }
     wrapped(&text, "", "  ")
 }

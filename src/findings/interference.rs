@@ -10,7 +10,33 @@ use rayon::prelude::*;
 
 use super::Solution;
 use super::neighbour::NeighbourFinding;
-use crate::site::Point;
+use crate::site::{Point, Refusal, Site, Subject};
+
+/// Entries of the tables of wells by wells, neighbours and edges, at most:
+/// more than a spreadsheet or a GIS takes in.
+pub const MOST_ENTRIES: usize = 4_000_000;
+
+/// Refuses sites whose tables would be too large.
+///
+/// # Errors
+/// When wells × (wells + neighbours + edges) exceeds [`MOST_ENTRIES`].
+pub fn refuse_large(site: &Site) -> Result<(), Refusal> {
+    let (wells, neighbours, edges) = (site.wells.len(), site.neighbours.len(), site.edges.len());
+    let entries = wells * (wells + neighbours + edges);
+    if entries <= MOST_ENTRIES {
+        return Ok(());
+    }
+    Err(Refusal {
+        subject: Subject::Plan,
+        what: format!(
+            "{wells} wells, {neighbours} neighbours and {edges} rivers and barriers make tables of {entries} entries; {MOST_ENTRIES} is the most"
+        ),
+        why: Some("every well is weighed against every well, neighbour and edge".into()),
+        remedy: "plan the well field in parts, or join wells that stand close together into one"
+            .into(),
+        related: vec![],
+    })
+}
 
 /// Drawdowns by causing well (columns) at affected wells, then neighbours
 /// (rows), metres.

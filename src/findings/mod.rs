@@ -16,9 +16,10 @@ mod well;
 mod window;
 mod worst;
 
+use crate::site::Refusal;
 pub use boundary::{Balance, BoundaryFinding};
 pub use flag::{Cause, Flag, FlagCode, Measure, Who};
-pub use interference::InterferenceMatrix;
+pub use interference::{InterferenceMatrix, MOST_ENTRIES};
 pub use neighbour::{NeighbourFinding, Worst};
 pub use oddities::{Oddity, oddities};
 pub use outside::edge_between;
@@ -28,7 +29,19 @@ pub use solution::Solution;
 pub use survey::{Drawdowns, Heads, Survey, SurveyError, SurveyedAquifer};
 pub use well::{WellFinding, interference_share};
 pub use window::{MOST_NODES, MapWindow};
+
 pub use worst::{Peak, RateChange, worst_point};
+
+/// Why findings cannot be worked out.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+pub enum FindingsError {
+    /// The plan asks for too much.
+    #[error(transparent)]
+    Refused(#[from] Refusal),
+    /// The map cannot be surveyed.
+    #[error(transparent)]
+    Survey(SurveyError),
+}
 
 /// What is found without a map: wells and neighbours.
 pub struct WellsAndNeighbours {
@@ -42,14 +55,18 @@ pub struct WellsAndNeighbours {
 
 impl WellsAndNeighbours {
     /// Works them out.
-    pub fn of(solution: &Solution) -> Self {
+    ///
+    /// # Errors
+    /// When the interference table would have more than [`MOST_ENTRIES`].
+    pub fn of(solution: &Solution) -> Result<Self, Refusal> {
+        interference::refuse_large(solution.site())?;
         let neighbours = neighbour::all(solution);
         let interference = InterferenceMatrix::of(solution, &neighbours);
-        Self {
+        Ok(Self {
             wells: well::all(solution, &interference),
             interference,
             neighbours,
-        }
+        })
     }
 }
 
@@ -75,16 +92,17 @@ impl Findings {
     /// Works everything out; the area below the roof is measured on the map.
     ///
     /// # Errors
-    /// Where the contour of the roof cannot be drawn.
-    pub fn of(solution: &Solution, survey: &Survey<'_>) -> Result<Self, SurveyError> {
+    /// As [`WellsAndNeighbours::of`], and where the contour of the roof
+    /// cannot be drawn.
+    pub fn of(solution: &Solution, survey: &Survey<'_>) -> Result<Self, FindingsError> {
         let WellsAndNeighbours {
             wells,
             interference,
             neighbours,
-        } = WellsAndNeighbours::of(solution);
+        } = WellsAndNeighbours::of(solution)?;
         let boundaries = boundary::all(solution);
         let balances = boundary::balances(solution, &boundaries);
-        let roof = roof::finding(solution, &wells, survey)?;
+        let roof = roof::finding(solution, &wells, survey).map_err(FindingsError::Survey)?;
         let flags = rules::flags(&rules::Judged {
             solution,
             matrix: &interference,

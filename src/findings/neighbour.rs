@@ -1,6 +1,8 @@
 //! Each neighbour against its limit: its worst point, the drawdown there, and
 //! every well's part in it.
 
+use rayon::prelude::*;
+
 use super::Solution;
 use super::worst::worst_point;
 use crate::site::{Neighbour, Point};
@@ -46,7 +48,7 @@ pub fn all(solution: &Solution) -> Vec<NeighbourFinding> {
     solution
         .site()
         .neighbours
-        .iter()
+        .par_iter()
         .enumerate()
         .map(|(index, neighbour)| NeighbourFinding {
             neighbour: index,

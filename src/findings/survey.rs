@@ -3,16 +3,19 @@
 
 use crate::contours::{self, Bump, ContourError, Mesh, MeshError, Region, ScalarField};
 use crate::field::WellField;
-use crate::site::Point;
+use crate::site::{Point, direction_of_azimuth};
 
 use super::{MapWindow, Solution};
+
+/// A place this far from an aquifer counts as on its edge, metres.
+const HAIR_M: f64 = 1e-6;
 
 /// The heads of one aquifer, as something to contour.
 pub struct Heads<'a>(pub &'a WellField);
 
 impl ScalarField for Heads<'_> {
     fn values(&self, points: &[Point]) -> Vec<f64> {
-        self.0.heads_m(points)
+        on_edge_too(self.0, points, WellField::heads_m)
     }
 }
 
@@ -21,8 +24,30 @@ pub struct Drawdowns<'a>(pub &'a WellField);
 
 impl ScalarField for Drawdowns<'_> {
     fn values(&self, points: &[Point]) -> Vec<f64> {
-        self.0.drawdowns_m(points)
+        on_edge_too(self.0, points, WellField::drawdowns_m)
     }
+}
+
+/// Values in an aquifer and on its edge. A vertex of the edge that rounding
+/// has put outside takes the value a micrometre away, on the side where there
+/// is one: heads differ by less than 1e-7 m there.
+fn on_edge_too(
+    field: &WellField,
+    points: &[Point],
+    evaluate: impl Fn(&WellField, &[Point]) -> Vec<f64>,
+) -> Vec<f64> {
+    let mut values = evaluate(field, points);
+    for (value, &point) in values.iter_mut().zip(points) {
+        if value.is_nan() {
+            let around: Vec<Point> = (0..8)
+                .map(|step| direction_of_azimuth(45.0 * f64::from(step)))
+                .map(|direction| point + direction * HAIR_M)
+                .collect();
+            let near = evaluate(field, &around);
+            *value = near.into_iter().find(|v| !v.is_nan()).unwrap_or(*value);
+        }
+    }
+    values
 }
 
 /// Why a map cannot be surveyed.

@@ -71,10 +71,11 @@ pub trait Green: Send + Sync {
 
     /// The limit of G(z, pole) + ln abs(z − pole)/(2π) at the pole.
     ///
-    /// Read off on a rim so small that nothing but the logarithm varies
-    /// across it; the two logarithms of 1e-20 cancel to 1e-15.
+    /// Read off on a rim of a micrometre, on which G is −ln(rim)/(2π) + the
+    /// regular part exactly; the two logarithms cancel to 1e-15. The pole must
+    /// be farther than that from the edges.
     fn regular_part(&self, pole: Complex64) -> f64 {
-        const RIM_M: f64 = 1e-20;
+        const RIM_M: f64 = 1e-6;
         self.value_outside_rim(pole, pole, RIM_M) + RIM_M.ln() * 0.5 * FRAC_1_PI
     }
 

@@ -40,9 +40,10 @@ impl Wedge {
         }
     }
 
-    /// w = −i ln z; the apex, where w is infinite, counts as 1e-300 m away.
+    /// w = −i ln z; the apex, where w is infinite, counts as 1e-150 m away.
     fn map(&self, z: Complex64) -> Complex64 {
-        Complex64::new(argument_in_wedge(z, self.angle), -z.norm().max(1e-300).ln())
+        let distance = 0.5 * z.norm_sqr().max(1e-300).ln();
+        Complex64::new(argument_in_wedge(z, self.angle), -distance)
     }
 }
 

@@ -5,6 +5,7 @@
 //! A line that is straight in the plan's grid is not straight in longitude
 //! and latitude, where GeoJSON draws it. Long segments are therefore halved
 //! until each strays by less than 1 cm.
+//! Limits: a layer across the antimeridian is not cut there.
 //! Source: RFC 7946 (2016), sections 3.1, 3.1.6, 5, 6.1, 11.2.
 
 use serde_json::{Map, Value, json};

@@ -103,7 +103,8 @@ impl<'a> Words<'a> {
     /// whom, and what would clear it.
     pub fn flag(&self, flag: &Flag) -> String {
         let mut text = self.measure(&flag.measure);
-        if let Some(cause) = flag.cause {
+        // With one well alone there is nothing to say of causes.
+        if let Some(cause) = flag.cause.filter(|_| self.site.wells.len() > 1) {
             text.push_str(&self.cause(flag, cause));
         }
         text.push('.');

@@ -1,5 +1,6 @@
 //! The shapes of aquifer that have a name, each in its own canonical frame.
 
+use std::f64::consts::{PI, TAU};
 use std::ops::Range;
 
 use num_complex::Complex64;
@@ -132,14 +133,12 @@ pub struct Piece {
 /// arg z between 0 and `angle`. Rounding may put a point of a side just
 /// outside; the cut lies opposite the wedge, so that it still counts as on it.
 pub fn argument_in_wedge(z: Complex64, angle: f64) -> f64 {
-    let half = 0.5 * angle;
-    let from_axis = (z * Complex64::from_polar(1.0, -half)).arg();
     let direct = z.arg();
-    let near_first_side = (0.0..0.25 * angle.min(std::f64::consts::PI)).contains(&direct);
-    let argument = if near_first_side {
-        direct
+    let is_past_the_cut = direct < 0.5 * angle - PI;
+    let argument = if is_past_the_cut {
+        direct + TAU
     } else {
-        from_axis + half
+        direct
     };
     argument.clamp(0.0, angle)
 }

@@ -114,14 +114,22 @@ fn on_piece(
             mean_m,
         }));
     }
-    let (stage_m, slope) = line_through(&known);
+    straight_fall(&known).map_err(|worst| {
+        Box::new(OutlineError::StageNotLinear {
+            river: river(),
+            departure: names::length(worst),
+        })
+    })
+}
+
+/// Stage at position 0 and slope of a straight fall through known stages, or
+/// the largest departure from it where that exceeds 1 mm.
+fn straight_fall(known: &[(f64, f64)]) -> Result<(f64, f64), f64> {
+    let (stage_m, slope) = line_through(known);
     let departure = |at: &(f64, f64)| (stage_m + slope * at.0 - at.1).abs();
     let worst = known.iter().map(departure).fold(0.0, f64::max);
     if worst > TOUCH_M {
-        return Err(Box::new(OutlineError::StageNotLinear {
-            river: river(),
-            departure: names::length(worst),
-        }));
+        return Err(worst);
     }
     Ok((stage_m, slope))
 }

@@ -202,6 +202,29 @@ impl Crs {
         self.note.clone()
     }
 
+    /// Refuses a place where the grid's lengths cannot be taken for metres or
+    /// feet: wrong by more than 2 %. Survey grids are within 0.3 %; world maps
+    /// are not. The limit is our choice.
+    ///
+    /// # Errors
+    /// [`CrsError::Distorted`], and those of [`Crs::to_longitude_latitude`].
+    pub fn check_lengths(&self, x: f64, y: f64) -> Result<(), CrsError> {
+        const MOST: f64 = 0.02;
+        let length_error = self.length_error(x, y)?;
+        if length_error <= MOST {
+            return Ok(());
+        }
+        let (longitude, latitude) = self.to_longitude_latitude(x, y)?;
+        Err(CrsError::Distorted {
+            crs: self.name.clone(),
+            x,
+            y,
+            length_error,
+            most: MOST,
+            utm_zone: utm_zone(longitude, latitude),
+        })
+    }
+
     /// By how much lengths in the grid are wrong at a place, in the worst
     /// direction: |scale − 1|. About 0.0004 in a UTM zone; 0.5 in a world map
     /// at middle latitudes, where no distance can be trusted.

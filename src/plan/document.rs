@@ -119,6 +119,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
         map: map.unwrap_or_default(),
     };
     let origin = origin_near_wells(&site);
+    check_place(&plan, &site, origin, reading);
     move_site(&mut site, -origin.coords);
     Some(Plan {
         title,
@@ -199,6 +200,18 @@ fn stem(name: &str) -> String {
         || name.to_owned(),
         |stem| stem.to_string_lossy().into_owned(),
     )
+}
+
+/// Refuses a site where the plan's grid is no grid of metres or feet.
+fn check_place(plan: &Section<'_>, site: &Site, origin: Point, reading: &mut Reading<'_>) {
+    let Some(crs) = reading.crs.as_ref().filter(|_| !site.wells.is_empty()) else {
+        return;
+    };
+    let per_unit = crs.metres_per_unit();
+    let checked = crs.check_lengths(origin.x / per_unit, origin.y / per_unit);
+    if let (Err(error), Some(value)) = (checked, plan.value(&CRS)) {
+        reading.refuse(crs_fault(value.place, &error));
+    }
 }
 
 /// Whole metres near the middle of the wells.

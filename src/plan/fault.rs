@@ -45,6 +45,9 @@ impl Fault {
 
     pub(super) fn absence(mut self) -> Self {
         self.is_absence = true;
+        if self.place.range().is_empty() {
+            self.label = "the plan begins here".to_owned();
+        }
         self
     }
 

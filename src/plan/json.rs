@@ -201,3 +201,61 @@ impl<'t> Parser<'t> {
         Ok(number)
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// The tree as `serde_json` would have it.
+    fn plain(value: &Value) -> serde_json::Value {
+        match &value.node {
+            Node::Number(number) => serde_json::json!(number),
+            Node::Text(text) => serde_json::json!(text),
+            Node::List(items) => items.iter().map(plain).collect(),
+            Node::Table(entries) => entries
+                .iter()
+                .map(|entry| (entry.key.clone(), plain(&entry.value)))
+                .collect(),
+            Node::Null | Node::Boolean | Node::Date => serde_json::Value::Null,
+        }
+    }
+
+    #[test]
+    fn values_know_their_place_and_escapes_are_read() {
+        let text = " { \"a\\u00e9\" : [1.5e3, \"\\n\"] }";
+        let value = parse(text, 0).unwrap();
+        assert_eq!(plain(&value), serde_json::json!({ "aé": [1500.0, "\n"] }));
+        let list = value.get("aé").unwrap();
+        assert_eq!(&text[list.place.range()], "[1.5e3, \"\\n\"]");
+    }
+
+    #[test]
+    fn nesting_without_end_is_refused_before_the_stack_is_full() {
+        assert!(parse(&"[".repeat(1_000_000), 0).is_err());
+        assert!(parse(&"{\"a\":".repeat(1_000_000), 0).is_err());
+    }
+
+    #[test]
+    fn a_number_is_rounded_to_the_nearest_float() {
+        // The decimal expansion of 1 + 2⁻⁵² + 2⁻⁵³, a tie but for its last digit.
+        let text = "1.00000000000000033306690738754696212708950042724609376";
+        let value = parse(text, 0).unwrap();
+        assert_eq!(plain(&value), serde_json::json!(1.0 + 2.0 * f64::EPSILON));
+    }
+
+    proptest::proptest! {
+        /// `serde_json` judges what is JSON and what it says.
+        #[test]
+        fn texts_are_accepted_exactly_where_serde_json_accepts_them(
+            text in "[\\[\\]{}:,\"\\\\ \n0-9.eE+\\-a-fnrtul]{0,12}",
+        ) {
+            let judge = serde_json::from_str::<serde_json::Value>(&text);
+            let out_of_range = judge.as_ref().is_err_and(|error| error.to_string().contains("out of range"));
+            let parsed = parse(&text, 0);
+            let twice = parsed.as_ref().is_err_and(|error| error.what.contains("twice"));
+            if !out_of_range && !twice {
+                proptest::prop_assert_eq!(parsed.is_ok(), judge.is_ok(), "{}", text);
+            }
+        }
+    }
+}

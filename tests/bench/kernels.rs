@@ -4,13 +4,15 @@
 //! beside them the floor, one vectorised logarithm a node and well, and the
 //! same half-plane sum in numpy (`half_plane_numpy.py`), run in this session.
 //!
-//! Run: `cargo bench --bench kernels`. It prints a table in Markdown.
+//! Run: `cargo bench --bench kernels`. After criterion's own report it prints a
+//! table in Markdown. PYTHON names an interpreter that has numpy.
 
 use std::hint::black_box;
 use std::path::Path;
 use std::process::Command;
-use std::time::Instant;
+use std::time::Duration;
 
+use criterion::{Criterion, Throughput};
 use mirrorwell::green::{self, Green, Source};
 use mirrorwell::outline::{Axis, Kind, Shape};
 use num_complex::Complex64;
@@ -19,46 +21,75 @@ use rayon::prelude::*;
 
 const SIDE: usize = 1000;
 const WELLS: usize = 20;
-/// Repeats of each timing; the median counts.
-const REPEATS: usize = 9;
+const PAIRS: u64 = (SIDE * SIDE * WELLS) as u64;
+const FLOOR: &str = "floor: one vectorised logarithm";
+const THREADS: [&str; 2] = ["one thread", "all cores"];
 
 fn main() {
-    // `cargo test` builds benches and runs them with --test or none; only
-    // `cargo bench` passes --bench.
-    if !std::env::args().any(|argument| argument == "--bench") {
-        println!("benchmarks run under `cargo bench` only");
-        return;
-    }
-    let cores = rayon::current_num_threads();
-    println!("1000 x 1000 nodes, 20 wells, {cores} threads; nanoseconds a node and well\n");
-    println!("| what | one thread | x floor | all cores | x floor |");
-    println!("|---|---|---|---|---|");
-    let floor = [true, false].map(|single| time(|| logarithms(single)));
-    row("floor: one vectorised logarithm", floor, floor);
-    let mut half_plane = floor;
+    let mut criterion = Criterion::default()
+        .sample_size(10)
+        .warm_up_time(Duration::from_millis(500))
+        .measurement_time(Duration::from_secs(2))
+        .configure_from_args();
+    let points = nodes();
+    let sources = wells();
+    let mut names = vec![FLOOR];
+    measure(&mut criterion, FLOOR, logarithms);
     for (name, shape) in shapes() {
-        let green = green::of(&shape, None).expect("a steady state");
-        let points = nodes();
-        let sources = wells();
-        let times = [true, false].map(|single| {
-            time(|| {
-                black_box(superpose(green.as_ref(), &sources, &points, single));
-            })
+        let Ok(green) = green::of(&shape, None) else {
+            continue;
+        };
+        names.push(name);
+        measure(&mut criterion, name, |single| {
+            black_box(superpose(green.as_ref(), &sources, &points, single));
         });
-        if name == "half-plane" {
-            half_plane = times;
-        }
-        row(name, times, floor);
     }
-    numpy(half_plane);
+    criterion.final_summary();
+    // `cargo test --benches` runs each work once, unmeasured.
+    if std::env::args().any(|argument| argument == "--bench") {
+        print_table(&names);
+    }
 }
 
-fn row(name: &str, [one, all]: [f64; 2], floor: [f64; 2]) {
-    println!(
-        "| {name} | {one:.2} | {:.2} | {all:.2} | {:.2} |",
-        one / floor[0],
-        all / floor[1]
-    );
+/// Measures some work on one thread and on all cores.
+fn measure(criterion: &mut Criterion, name: &str, work: impl Fn(bool)) {
+    let mut group = criterion.benchmark_group(name);
+    group.throughput(Throughput::Elements(PAIRS));
+    for threads in THREADS {
+        group.bench_function(threads, |bencher| {
+            bencher.iter(|| work(threads == THREADS[0]));
+        });
+    }
+    group.finish();
+}
+
+/// The medians as nanoseconds a node and well, beside the floor and numpy.
+fn print_table(names: &[&str]) {
+    let cores = rayon::current_num_threads();
+    println!("\n1000 x 1000 nodes, 20 wells, {cores} threads; nanoseconds a node and well\n");
+    println!("| what | one thread | × floor | all cores | × floor |");
+    println!("|---|---|---|---|---|");
+    let median = |name: &str| THREADS.map(|threads| median_ns(name, threads).unwrap_or(f64::NAN));
+    let floor = median(FLOOR);
+    for name in names {
+        let [one, all] = median(name);
+        let [times_one, times_all] = [one / floor[0], all / floor[1]];
+        println!("| {name} | {one:.2} | {times_one:.2} | {all:.2} | {times_all:.2} |");
+    }
+    numpy(median("half-plane"));
+}
+
+/// The median that criterion has just written, as nanoseconds a pair.
+fn median_ns(name: &str, threads: &str) -> Option<f64> {
+    let folder = std::env::var("CARGO_TARGET_DIR").unwrap_or_else(|_| "target".to_owned());
+    let path = Path::new(&folder)
+        .join("criterion")
+        .join(name.replace([':', '/'], "_"))
+        .join(threads)
+        .join("new/estimates.json");
+    let text = std::fs::read_to_string(path).ok()?;
+    let estimates: serde_json::Value = serde_json::from_str(&text).ok()?;
+    Some(estimates.pointer("/median/point_estimate")?.as_f64()? / PAIRS as f64)
 }
 
 fn shapes() -> Vec<(&'static str, Shape)> {
@@ -140,20 +171,6 @@ fn superpose(
             .for_each(|(points, sums)| green.superpose(sources, points, sums));
     }
     sums
-}
-
-/// Median nanoseconds a node and well, after one run to warm up.
-fn time(mut work: impl FnMut()) -> f64 {
-    work();
-    let mut times: Vec<f64> = (0..REPEATS)
-        .map(|_| {
-            let start = Instant::now();
-            work();
-            start.elapsed().as_secs_f64()
-        })
-        .collect();
-    times.sort_by(f64::total_cmp);
-    times[REPEATS / 2] * 1e9 / (SIDE * SIDE * WELLS) as f64
 }
 
 /// The floor: 20 logarithms a node with the vector kernel of the library,

@@ -64,7 +64,8 @@ fn rates_agree_with_nist_sp_811() {
     );
 }
 
-/// The project's own reference values, recomputed there from definitions.
+/// From the gallon of 231 in³, the inch of 0.0254 m and the day, recomputed with
+/// exact fractions.
 #[test]
 fn trade_units_of_flow_agree_with_their_definitions() {
     let close = 1e-10;

@@ -15,6 +15,7 @@ mod ferris_1962;
 mod glover_balmer_1954;
 mod kruseman_de_ridder_1990;
 mod milne_thomson_1940;
+mod muskat_1937;
 mod newsom_wilson_1988;
 mod nist_sp_811;
 mod plans;

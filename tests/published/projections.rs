@@ -150,6 +150,17 @@ fn length_error_is_that_of_snyder_1987() {
     assert!((error - 1.0).abs() < 0.01, "{error}");
 }
 
+/// The same source: a world map at latitude 52.5 draws 1 m as 1.64 m.
+#[test]
+fn a_world_map_is_refused_for_its_lengths() {
+    let world = Crs::from_epsg(3857).unwrap();
+    let refusal = world.check_lengths(1_492_229.0, 6_894_723.0).unwrap_err();
+    assert!(refusal.to_string().contains("64."), "{refusal}");
+    assert!(refusal.help().contains("EPSG:32633"), "{}", refusal.help());
+    let utm = Crs::from_epsg(32633).unwrap();
+    assert_eq!(utm.check_lengths(412_300.0, 5_361_200.0), Ok(()));
+}
+
 /// EPSG 16033: zone 33 spans 12 to 18 degrees east.
 #[test]
 fn the_utm_zone_of_a_place_is_found() {

@@ -5,11 +5,13 @@
 //! is convex, and Newton's steps from above reach the clearing rate without
 //! passing it: each step clears the worst point of the last.
 
+use rayon::prelude::*;
+
 use super::Judged;
 use crate::findings::flag::{Cause, Flag, FlagCode, Measure, Who};
 use crate::findings::neighbour::{NeighbourFinding, Worst};
 use crate::findings::remedy::{CommonFactor, NewRate, Rates, Remedy};
-use crate::findings::worst::{RateChange, worst_point};
+use crate::findings::worst::{Peak, RateChange, worst_point};
 
 /// Steps until the worst point stays where it is; a few are usual.
 const STEPS: usize = 60;
@@ -18,7 +20,7 @@ const CLEARED_M: f64 = 1e-10;
 
 /// One flag a neighbour over its limit.
 pub fn flags(judged: &Judged<'_>) -> Vec<Flag> {
-    let over = judged.neighbours.iter().filter_map(|finding| {
+    let over = judged.neighbours.par_iter().filter_map(|finding| {
         finding.excess_m()?;
         let worst = finding.worst.as_ref()?;
         let allowed_m = finding.allowed_m?;
@@ -60,19 +62,23 @@ fn clearing_rate(judged: &Judged<'_>, finding: &NeighbourFinding, well: usize) -
     let rate_m3_d = site.wells.get(well)?.pumping.si();
     let allowed_m = finding.allowed_m?;
     let mut factor = 1.0;
+    let worst = finding.worst.as_ref()?;
+    let mut peak = Peak {
+        at: worst.at,
+        drawdown_m: worst.drawdown_m,
+    };
     for _ in 0..STEPS {
-        let peak = worst_point(judged.solution, place, Some(RateChange { well, factor }))?;
         let excess_m = peak.drawdown_m - allowed_m;
         if excess_m <= CLEARED_M {
             return Some(NewRate::scaled(well, rate_m3_d, factor));
         }
-        let part_m = judged.solution.drawdown_by_m(well, peak.at);
-        factor -= excess_m / part_m;
+        factor -= excess_m / judged.solution.drawdown_by_m(well, peak.at);
         // Also false for NaN: nothing is invented where the well has no part.
         let can_be_reached = factor >= 0.0;
         if !can_be_reached {
             return None;
         }
+        peak = worst_point(judged.solution, place, Some(RateChange { well, factor }))?;
     }
     None
 }

@@ -95,9 +95,11 @@ impl Canvas {
 
     /// Adds text with a halo that keeps it readable on the map.
     pub fn text(&mut self, [x, y]: [f64; 2], text: &str, attributes: &str) {
+        let text = escaped(text);
+        // Two texts, since not every viewer can paint a stroke under a fill.
         self.add(&format!(
-            "<text x=\"{x:.1}\" y=\"{y:.1}\" class=\"halo\" {attributes}>{}</text>",
-            escaped(text)
+            "<text x=\"{x:.1}\" y=\"{y:.1}\" class=\"halo\" {attributes}>{text}</text>\
+             <text x=\"{x:.1}\" y=\"{y:.1}\" {attributes}>{text}</text>"
         ));
     }
 
@@ -128,7 +130,7 @@ impl Canvas {
 }
 
 /// Halos and the patterns of rises and of areas over their limit.
-const STYLE: &str = "<style>.halo{paint-order:stroke;stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>
+const STYLE: &str = "<style>.halo{stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>
 <defs>
 <pattern id=\"rise\" width=\"6\" height=\"6\" patternUnits=\"userSpaceOnUse\"><circle cx=\"3\" cy=\"3\" r=\"1\" fill=\"#24302f\"/></pattern>
 <pattern id=\"over\" width=\"7\" height=\"7\" patternUnits=\"userSpaceOnUse\" patternTransform=\"rotate(45)\"><path d=\"M0 0V7\" stroke=\"#24302f\" stroke-width=\"1.6\"/></pattern>

@@ -20,9 +20,9 @@ const TOOTH: f64 = 13.0;
 
 /// The colour of a band by its place from the lightest (0) to the darkest (1).
 pub fn band_colour(share: f64) -> String {
-    let mix = |light: f64, dark: f64| (light + (dark - light) * share).round();
+    let mix = |light: f64, dark: f64| (light + (dark - light) * share).round() as u8;
     let [[lr, lg, lb], [dr, dg, db]] = [LIGHT, DARK];
-    format!("rgb({} {} {})", mix(lr, dr), mix(lg, dg), mix(lb, db))
+    format!("#{:02x}{:02x}{:02x}", mix(lr, dr), mix(lg, dg), mix(lb, db))
 }
 
 /// How dark a band is: its place among the levels of drawdown.

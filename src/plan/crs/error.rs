@@ -64,6 +64,25 @@ pub enum CrsError {
         /// The area: west, south, east, north in degrees.
         area: [f64; 4],
     },
+    /// A map projection in whose grid lengths are wrong at the place.
+    #[error(
+        "in {crs} lengths at x = {x}, y = {y} are wrong by {:.1} %, more than {:.0} %",
+        .length_error * 100.0, .most * 100.0
+    )]
+    Distorted {
+        /// The system's name.
+        crs: String,
+        /// Easting, in the system's unit.
+        x: f64,
+        /// Northing, in the system's unit.
+        y: f64,
+        /// |scale − 1| at the place.
+        length_error: f64,
+        /// The largest that is accepted.
+        most: f64,
+        /// The code of the UTM zone there.
+        utm_zone: u32,
+    },
     /// A coordinate that is no number.
     #[error("the coordinates ({first}, {second}) are not finite numbers")]
     NotFinite {
@@ -112,6 +131,10 @@ impl CrsError {
             Self::DegreesOutside { area, .. } => format!(
                 "check the order (longitude first) and the code; the area is {}",
                 area_text(area)
+            ),
+            Self::Distorted { utm_zone, .. } => format!(
+                "transform the coordinates to the UTM zone of the site, \"EPSG:{utm_zone}\", and \
+                 write that; or {LOCAL}"
             ),
             Self::NotFinite { .. } => "write two finite numbers".to_owned(),
             Self::LocalOrigin { .. } => "write origin = [longitude, latitude] in degrees, \

@@ -1,0 +1,188 @@
+//! What `run` writes to the disk, and what it leaves alone.
+
+use std::collections::BTreeMap;
+use std::fs;
+use std::path::Path;
+
+use crate::support::{SMALL, folder, mirrorwell, outcome};
+
+/// Every file of a folder, by name.
+fn files(folder: &Path) -> BTreeMap<String, Vec<u8>> {
+    fs::read_dir(folder)
+        .unwrap()
+        .map(|entry| entry.unwrap())
+        .map(|entry| {
+            (
+                entry.file_name().into_string().unwrap(),
+                fs::read(entry.path()).unwrap(),
+            )
+        })
+        .collect()
+}
+
+#[test]
+fn the_files_of_the_contract_are_written_and_no_others() {
+    let folder = folder();
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    let names: Vec<String> = files(&folder.path().join("mirrorwell-out"))
+        .into_keys()
+        .collect();
+    assert_eq!(
+        names,
+        [
+            "boundaries.geojson",
+            "drawdown_bands.geojson",
+            "drawdown_contours.geojson",
+            "findings.json",
+            "head_contours.geojson",
+            "image_wells.geojson",
+            "interference.csv",
+            "neighbours.geojson",
+            "wells.geojson",
+        ]
+    );
+    // Nothing is left beside the folder.
+    assert_eq!(fs::read_dir(folder.path()).unwrap().count(), 1);
+}
+
+#[test]
+fn the_same_plan_gives_the_same_bytes_at_any_number_of_threads() {
+    let folder = folder();
+    for (threads, out) in [("1", "one"), ("2", "two"), ("7", "seven")] {
+        assert!(
+            outcome(folder.path(), &["run", "--threads", threads, "--out", out])
+                .status
+                .success()
+        );
+    }
+    let one = files(&folder.path().join("one"));
+    assert!(one == files(&folder.path().join("two")));
+    assert!(one == files(&folder.path().join("seven")));
+}
+
+#[test]
+fn a_second_run_replaces_the_files_of_the_first() {
+    let folder = folder();
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    let demo = files(&folder.path().join("mirrorwell-out"));
+    fs::write(folder.path().join("plan.toml"), SMALL).unwrap();
+    assert!(
+        outcome(folder.path(), &["run", "plan.toml"])
+            .status
+            .success()
+    );
+    let small = files(&folder.path().join("mirrorwell-out"));
+    assert!(demo.keys().eq(small.keys()));
+    assert!(demo["findings.json"] != small["findings.json"]);
+}
+
+#[test]
+fn a_refused_run_leaves_the_last_good_run_s_files_as_they_were() {
+    let folder = folder();
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    let before = files(&folder.path().join("mirrorwell-out"));
+    fs::write(
+        folder.path().join("plan.toml"),
+        SMALL.replace("radius = 0.15", "radius = -1.0"),
+    )
+    .unwrap();
+    let output = outcome(folder.path(), &["run", "plan.toml"]);
+    assert_eq!(output.status.code(), Some(2));
+    assert!(before == files(&folder.path().join("mirrorwell-out")));
+}
+
+#[test]
+fn files_that_are_not_a_run_s_are_left_alone() {
+    let folder = folder();
+    let out = folder.path().join("mirrorwell-out");
+    fs::create_dir(&out).unwrap();
+    fs::write(out.join("notes.txt"), "mine").unwrap();
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    let after = files(&out);
+    assert_eq!(after["notes.txt"], b"mine");
+    assert_eq!(after.len(), 10);
+}
+
+#[test]
+fn a_file_in_the_place_of_the_folder_is_refused_and_left_alone() {
+    let folder = folder();
+    fs::write(folder.path().join("taken"), "mine").unwrap();
+    let output = outcome(folder.path(), &["run", "--out", "taken"]);
+    assert_eq!(output.status.code(), Some(2));
+    assert_eq!(fs::read(folder.path().join("taken")).unwrap(), b"mine");
+}
+
+#[test]
+fn the_folder_in_which_one_stands_can_be_the_target() {
+    let folder = folder();
+    assert!(
+        outcome(folder.path(), &["run", "--out", "."])
+            .status
+            .success()
+    );
+    assert!(
+        outcome(folder.path(), &["run", "--out", "."])
+            .status
+            .success()
+    );
+    assert_eq!(files(folder.path()).len(), 9);
+}
+
+#[cfg(unix)]
+#[test]
+fn a_link_to_a_folder_stays_a_link() {
+    let folder = folder();
+    fs::create_dir(folder.path().join("real")).unwrap();
+    std::os::unix::fs::symlink("real", folder.path().join("link")).unwrap();
+    assert!(
+        outcome(folder.path(), &["run", "--out", "link"])
+            .status
+            .success()
+    );
+    assert!(folder.path().join("link").is_symlink());
+    assert_eq!(files(&folder.path().join("real")).len(), 9);
+}
+
+#[cfg(unix)]
+#[test]
+fn others_may_read_the_folder_as_the_user_s_mask_says() {
+    use std::os::unix::fs::PermissionsExt;
+    let folder = folder();
+    assert!(outcome(folder.path(), &["run"]).status.success());
+    let made = fs::metadata(folder.path().join("mirrorwell-out")).unwrap();
+    fs::create_dir(folder.path().join("plain")).unwrap();
+    let plain = fs::metadata(folder.path().join("plain")).unwrap();
+    assert_eq!(made.permissions().mode(), plain.permissions().mode());
+}
+
+#[test]
+fn a_run_killed_at_any_moment_leaves_a_whole_set_of_files() {
+    let folder = folder();
+    fs::write(folder.path().join("plan.toml"), SMALL).unwrap();
+    mirrorwell(folder.path())
+        .args(["run", "plan.toml"])
+        .assert()
+        .success();
+    let out = folder.path().join("mirrorwell-out");
+    let small = files(&out);
+    let target = folder.path().join("demo");
+    assert!(
+        outcome(folder.path(), &["run", "--out", "demo"])
+            .status
+            .success()
+    );
+    let demo = files(&target);
+    for milliseconds in [1, 5, 10, 20, 40, 60, 80, 120] {
+        let mut child = std::process::Command::new(assert_cmd::cargo::cargo_bin("mirrorwell"))
+            .args(["run", "--quiet"])
+            .current_dir(folder.path())
+            .spawn()
+            .unwrap();
+        std::thread::sleep(std::time::Duration::from_millis(milliseconds));
+        let _ = child.kill();
+        child.wait().unwrap();
+        let now = files(&out);
+        assert!(now == small || now == demo, "after {milliseconds} ms");
+    }
+}

@@ -1,0 +1,71 @@
+//! `mirrorwell run`.
+
+use crate::support::{SMALL, folder, mirrorwell, outcome, transcript, with_plan};
+
+#[test]
+fn the_demo_prints_a_summary_for_people() {
+    let folder = folder();
+    insta::assert_snapshot!(transcript(&outcome(folder.path(), &["run"])));
+}
+
+#[test]
+fn a_small_plan_prints_a_summary_for_people() {
+    insta::assert_snapshot!(transcript(&with_plan(SMALL, "run")));
+}
+
+#[test]
+fn quiet_says_nothing_when_all_goes_well() {
+    let folder = folder();
+    let output = outcome(folder.path(), &["run", "--quiet"]);
+    assert_eq!(
+        transcript(&output),
+        "exit status 0\n--- standard output\n--- standard error\n"
+    );
+    assert!(folder.path().join("mirrorwell-out/findings.json").is_file());
+}
+
+#[test]
+fn strict_ends_with_status_3_when_a_limit_is_broken() {
+    let folder = folder();
+    let output = outcome(folder.path(), &["run", "--strict", "--quiet"]);
+    assert_eq!(output.status.code(), Some(3));
+    assert!(String::from_utf8_lossy(&output.stderr).contains("limits are broken"));
+    // The files are there all the same.
+    assert!(folder.path().join("mirrorwell-out/wells.geojson").is_file());
+}
+
+#[test]
+fn strict_ends_with_status_0_when_all_limits_are_kept() {
+    let folder = folder();
+    let plan = SMALL.replace("allowed_drawdown = 0.3", "allowed_drawdown = 3.0");
+    std::fs::write(folder.path().join("plan.toml"), plan).unwrap();
+    mirrorwell(folder.path())
+        .args(["run", "plan.toml", "--strict"])
+        .assert()
+        .code(0);
+}
+
+#[test]
+fn a_plan_that_is_not_there_is_refused() {
+    let folder = folder();
+    let output = outcome(folder.path(), &["run", "nowhere.toml"]);
+    assert_eq!(output.status.code(), Some(2));
+    assert!(String::from_utf8_lossy(&output.stderr).contains("nowhere.toml"));
+}
+
+#[test]
+fn every_example_runs() {
+    let examples = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("examples");
+    for plan in [
+        "box.toml",
+        "us_units.toml",
+        "two_banks.toml",
+        "gis/plan.toml",
+    ] {
+        let folder = folder();
+        let path = examples.join(plan);
+        let output = outcome(folder.path(), &["run", path.to_str().unwrap()]);
+        assert!(output.status.success(), "{}", transcript(&output));
+        insta::assert_snapshot!(plan.replace('/', "_"), transcript(&output));
+    }
+}
