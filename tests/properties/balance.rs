@@ -13,7 +13,7 @@ use crate::drawings::{case_of, drawing, drawing_with_river};
 const SHARE_TOLERANCE: f64 = 1e-12;
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(200))]
+    #![proptest_config(crate::cases(200))]
 
     #[test]
     fn rivers_give_every_well_what_it_pumps((drawing, setting) in case_of(drawing_with_river())) {

@@ -278,6 +278,28 @@ impl Drawing {
     }
 }
 
+impl Drawing {
+    /// Distance of a place of the site from the nearest drawn vertex, metres.
+    pub fn distance_to_corners_m(&self, setting: &Setting, point: Point) -> f64 {
+        let vertices = self.edges.iter().flat_map(|edge| match edge.course {
+            Course::Straight { drawn, .. } => drawn.to_vec(),
+            Course::Round(_) => vec![],
+        });
+        let distances = vertices.map(|vertex| (setting.place(vertex) - point).norm());
+        distances.fold(f64::INFINITY, f64::min)
+    }
+
+    /// The same with one stage on all rivers.
+    pub fn level(&self) -> Self {
+        let mut level = self.clone();
+        let stages_m = level.edges.first().map(|edge| edge.stages_m);
+        for edge in level.edges.iter_mut().skip(1) {
+            edge.stages_m = stages_m.unwrap_or(edge.stages_m);
+        }
+        level
+    }
+}
+
 impl DrawnEdge {
     fn site_edge(&self, index: usize, setting: &Setting) -> Edge {
         let [first, last] = self.stages_m;

@@ -18,7 +18,7 @@ use crate::drawings::{case_of, drawing};
 const PLACES_ON_CIRCLE: usize = 24;
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(150))]
+    #![proptest_config(crate::cases(150))]
 
     #[test]
     fn the_head_is_the_mean_of_the_heads_around_it(

@@ -32,3 +32,14 @@ mod texts;
 
 /// What the closed forms promise of a head, metres.
 const HEAD_TOLERANCE_M: f64 = 1e-9;
+
+/// So many random plans a law, or as many as the environment variable
+/// `PROPTEST_CASES` says. Failing plans are printed, not kept in files.
+fn cases(count: u32) -> proptest::test_runner::Config {
+    let wished = std::env::var("PROPTEST_CASES").ok();
+    proptest::test_runner::Config {
+        cases: wished.and_then(|text| text.parse().ok()).unwrap_or(count),
+        failure_persistence: None,
+        ..proptest::test_runner::Config::default()
+    }
+}

@@ -8,7 +8,7 @@ use crate::HEAD_TOLERANCE_M;
 use crate::drawings::{Setting, case_of, drawing};
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(200))]
+    #![proptest_config(crate::cases(200))]
 
     #[test]
     fn a_moved_turned_mirrored_and_enlarged_plan_has_the_same_heads(

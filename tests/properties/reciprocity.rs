@@ -17,7 +17,7 @@ fn green(solution: &Solution, site: &Site, by: usize, at: usize) -> f64 {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(200))]
+    #![proptest_config(crate::cases(200))]
 
     #[test]
     fn a_well_does_to_another_what_the_other_would_do_to_it(

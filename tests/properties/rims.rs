@@ -39,7 +39,7 @@ fn variation_m(drawing: &Drawing, well: usize, r_m: f64) -> f64 {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(200))]
+    #![proptest_config(crate::cases(200))]
 
     #[test]
     fn the_level_in_a_well_is_the_same_all_over_its_rim((drawing, setting) in case_of(drawing())) {

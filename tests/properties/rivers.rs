@@ -7,7 +7,7 @@ use crate::HEAD_TOLERANCE_M;
 use crate::drawings::{case_of, drawing_with_river};
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(200))]
+    #![proptest_config(crate::cases(200))]
 
     #[test]
     fn the_head_is_the_stage_on_every_river((drawing, setting) in case_of(drawing_with_river())) {

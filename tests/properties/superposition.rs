@@ -6,7 +6,7 @@ use crate::HEAD_TOLERANCE_M;
 use crate::drawings::{DrawnWell, case_of, drawing};
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(150))]
+    #![proptest_config(crate::cases(150))]
 
     #[test]
     fn drawdown_is_the_sum_of_each_wells(

@@ -15,7 +15,7 @@ use mirrorwell::site::Point;
 use num_complex::Complex64;
 use proptest::prelude::*;
 
-use crate::drawings::{Course, Drawing, Setting, azimuth_deg, case_of, drawing};
+use crate::drawings::{Course, Drawing, Setting, case_of, drawing};
 
 /// The units of a plan.
 struct Written {
@@ -86,22 +86,22 @@ impl Written {
                 let _ = writeln!(text, "toward = {:?}", toward.rem_euclid(360.0));
             }
         }
-        for edge in &drawing.edges {
+        for (number, edge) in drawing.edges.iter().enumerate() {
             let key = if edge.kind == FixedHead {
                 "river"
             } else {
                 "barrier"
             };
-            let _ = writeln!(text, "[[{key}]]\nname = \"edge of {:?}\"", edge.normal());
+            let _ = writeln!(text, "[[{key}]]\nname = \"E{number}\"");
             match edge.course {
                 Course::Straight { drawn, .. } => {
                     let [from, to] = drawn.map(|z| self.point(setting.place(z)));
                     let _ = writeln!(text, "line = [{from}, {to}]");
                 }
                 Course::Round(radius) => {
-                    // A circle's radius is in the unit of the grid's coordinates.
+                    // A radius is a distance of the grid, in its unit.
                     let centre = self.point(setting.place(Complex64::ZERO));
-                    let radius = length(radius * setting.scale);
+                    let radius = radius * setting.scale / self.grid_m;
                     let _ = writeln!(
                         text,
                         "circle = {{ centre = {centre}, radius = {radius:?} }}"
@@ -147,7 +147,7 @@ impl Written {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(60))]
+    #![proptest_config(crate::cases(60))]
 
     /// Coordinates of 5e6 m are written to 1e-9 m; where the head slopes most,
     /// at a rim of 0.05 m, Q/(2πT r_w) is some 15, so a head moves 1e-8 m.
@@ -155,7 +155,6 @@ proptest! {
     fn a_plan_says_the_same_as_text_in_metres_and_in_feet(
         (drawing, setting) in case_of(drawing()),
     ) {
-        let _ = azimuth_deg;
         let direct_m = drawing.solve(&setting).heads_m(&drawing.places_in(&setting));
         let metric_m = METRIC.heads_m(&drawing, &setting);
         let us_m = US.heads_m(&drawing, &setting);
