@@ -40,6 +40,29 @@ fn a_map_that_shows_nothing_of_the_aquifer_is_refused() {
 }
 
 #[test]
+fn a_map_that_is_a_mere_line_is_refused() {
+    for extent in ["[20.0, 0.0, 900.0, 0.001]", "[20.0, 0.0, 20.001, 0.001]"] {
+        let refusal = refusal(format!("{SMALL}\n[map]\nextent = {extent}\n"));
+        assert!(
+            refusal.contains("too thin to draw contours on"),
+            "{refusal}"
+        );
+    }
+}
+
+/// A pipe without a writer would be waited for without end.
+#[cfg(unix)]
+#[test]
+fn a_layer_that_is_no_file_is_refused() {
+    let layer = "layer = \"/dev/null\"\nfeature = \"Ostra\"\n";
+    let river = SMALL.find("line").unwrap();
+    let end = river + SMALL[river..].find('\n').unwrap() + 1;
+    let plan = format!("{}{layer}{}", &SMALL[..river], &SMALL[end..]);
+    let refusal = refusal(plan);
+    assert!(refusal.contains("a pipe or a device"), "{refusal}");
+}
+
+#[test]
 fn a_contour_interval_that_gives_too_many_levels_is_refused() {
     let plan = format!("{SMALL}\n[map]\ninterval = 1e-6\n");
     insta::assert_snapshot!(refusal(plan));

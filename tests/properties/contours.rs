@@ -106,8 +106,9 @@ proptest! {
         site.map.spacing = Some(Length::from_si(drawing.size_m * setting.scale / 4.0));
         let solution = mirrorwell::findings::Solution::of(site).expect("one well of the same plan");
         let field = &solution.fields()[0];
-        // Most of the drawdown in the well: a ring far smaller than a cell.
-        let level_m = 0.9 * field.own_drawdown_m(0);
+        // Thiem's ring of three radii, far smaller than a cell.
+        let fall_m = drawing.wells[0].strength_m / std::f64::consts::TAU * 3.0_f64.ln();
+        let level_m = field.own_drawdown_m(0) - fall_m;
         let window = MapWindow::of(&solution).expect("a map of the well");
         let survey = Survey::of(&solution, window).expect("a survey");
         let aquifer = &survey.aquifers[0];
