@@ -117,7 +117,7 @@ fn too_many_nodes(size: Vector, spacing_m: f64, nodes: f64) -> Refusal {
     Refusal {
         subject: Subject::Map(Some("spacing")),
         what: format!(
-            "a map of {:.0} m by {:.0} m with nodes every {spacing_m} m has {nodes:.1e} nodes, more than the {MOST_NODES:.1e} that are drawn",
+            "a map of {:.0} m by {:.0} m with nodes every {spacing_m:?} m has {nodes:.1e} nodes, more than the {MOST_NODES:.1e} that are drawn",
             size.x, size.y
         ),
         why: None,

@@ -125,3 +125,22 @@ fn a_plan_that_is_not_utf_8_is_refused() {
 fn an_empty_plan_is_refused() {
     assert!(refusal("").contains("error"));
 }
+
+/// A foot is 0.3048 m (NIST SP 811, appendix B): 150 ft are 45.720 m.
+#[test]
+fn a_us_plan_reads_its_own_units_beside_metres() {
+    let plan =
+        SMALL.replace("\"metric\"", "\"us\"") + "[ambient]\nhead = 150.0\nat = [90.0, 5.0]\n";
+    let refusal = refusal(plan);
+    for text in ["45.720 m (150.00 ft)", "18.288 m (60.000 ft)"] {
+        assert!(refusal.contains(text), "{refusal}");
+    }
+}
+
+#[test]
+fn more_threads_than_any_machine_has_are_refused() {
+    let folder = folder();
+    let output = outcome(folder.path(), &["run", "--threads", "100000"]);
+    assert_eq!(output.status.code(), Some(2));
+    assert_eq!(std::fs::read_dir(folder.path()).unwrap().count(), 0);
+}

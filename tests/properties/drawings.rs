@@ -626,7 +626,7 @@ impl Dice {
     fn free_slope(&self) -> Complex64 {
         let [a, b] = self.slope;
         match self.form {
-            Form::OpenPlane => Complex64::new(a, b),
+            Form::OpenPlane | Form::Lake => Complex64::new(a, b),
             Form::HalfPlane(FixedHead) | Form::QuarterPlane([FixedHead, NoFlow]) => {
                 Complex64::new(a, 0.0)
             }
