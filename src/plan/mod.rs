@@ -138,9 +138,9 @@ impl Plan {
         let fault = |refusal: &Refusal| {
             let place = self.map.find(&refusal.subject);
             let told = |text: &str| self.units.beside(text);
-            let mut fault = Fault::new(place, &told(&refusal.what), &told(&refusal.remedy));
+            let mut fault = Fault::new(place, told(&refusal.what), told(&refusal.remedy));
             if let Some(why) = &refusal.why {
-                fault = fault.why(&told(why));
+                fault = fault.why(told(why));
             }
             for (subject, label) in &refusal.related {
                 fault = fault.related(self.map.find(subject), label);
