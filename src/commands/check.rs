@@ -97,12 +97,13 @@ impl<'a> Report<'a> {
         line("plan", name);
         line("grid", &self.plan.crs.name());
         for field in self.solution.fields() {
-            line("outline", &one_line(&field.outline().words(site)));
+            let told = |text: &str| self.plan.units.beside(text);
+            line("outline", &told(&one_line(&field.outline().words(site))));
             line(
                 "method",
                 &format!(
                     "{}, right to {:.0e} {}",
-                    field.method(),
+                    told(&field.method()),
                     words.units().length(field.error_bound_m()),
                     words.units().length_ending()
                 ),
@@ -126,6 +127,7 @@ impl<'a> Report<'a> {
 
     fn json(&self) -> Value {
         let site = self.solution.site();
+        let told = |text: &str| self.plan.units.beside(text);
         let outlines: Vec<Value> = self
             .solution
             .fields()
@@ -133,8 +135,8 @@ impl<'a> Report<'a> {
             .map(|field| {
                 Properties::new(Units(self.plan.units))
                     .with("shape", field.outline().shape.name())
-                    .with("words", field.outline().words(site))
-                    .with("method", field.method())
+                    .with("words", told(&field.outline().words(site)))
+                    .with("method", told(&field.method()))
                     .length("error_bound", field.error_bound_m())
                     .with("steady_state", steady_state(self.solution, field))
                     .into()

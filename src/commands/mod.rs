@@ -47,8 +47,9 @@ pub struct Cli {
     quiet: bool,
 
     /// Use this many threads; the results do not depend on it
-    #[arg(long, value_name = "N", global = true)]
-    threads: Option<std::num::NonZeroUsize>,
+    #[arg(long, value_name = "N", global = true,
+          value_parser = clap::value_parser!(u16).range(1..=1024))]
+    threads: Option<u16>,
 }
 
 #[derive(Debug, Subcommand)]
@@ -90,7 +91,7 @@ pub fn start() -> ExitCode {
 fn dispatch(cli: &Cli, console: &Console) -> Result<(), Failure> {
     if let Some(threads) = cli.threads {
         rayon::ThreadPoolBuilder::new()
-            .num_threads(threads.get())
+            .num_threads(usize::from(threads))
             .build_global()
             .map_err(|error| {
                 Failure::Refused(format!("cannot start {threads} threads: {error}"))

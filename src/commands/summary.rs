@@ -46,6 +46,7 @@ pub fn recognised(planned: &Planned<'_>) -> String {
             one_line(&field.outline().words(site)),
             field.method()
         );
+        sentence = planned.plan.units.beside(&sentence);
         if several {
             let _ = write!(sentence, "; {}", held_wells(&words, &field.outline().wells));
         }

@@ -27,7 +27,7 @@ pub enum LevelError {
     },
     /// The interval is far too small for the field.
     #[error(
-        "an interval of {interval} gives {count:.0} contour levels between {min} and {max}, \
+        "an interval of {interval:?} gives {count:.0} contour levels between {min:.4} and {max:.4}, \
          more than 2000; an interval of {workable} would give {workable_count:.0}"
     )]
     TooMany {

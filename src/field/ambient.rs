@@ -13,7 +13,8 @@
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
 //! The harmonic measure of a river seen from x is the share that it would give
-//! to a well at x, so `green` knows it. What the plan states is compared with
+//! to a well at x, so `green` knows it; on the river itself it jumps with the
+//! last digit of x, so x is taken a hair inside. What the plan states is compared with
 //! what the edges fix; a contradiction is refused with both numbers.
 
 use std::ops::Range;
@@ -58,10 +59,11 @@ impl AmbientHead {
             .lake_radius_m
             .map_or(1.0, |radius| 1.0 - radius * radius / z.norm_sqr());
         let turned = self.per_radian_m * shape.angle_of(z);
+        let inside = shape.hair_inside(z);
         let measured: f64 = self
             .measured
             .iter()
-            .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), z))
+            .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), inside))
             .sum();
         self.level_m + linear * bend + turned + measured
     }
@@ -329,7 +331,11 @@ impl Comparison<'_> {
         }
         if stated.norm() > NO_GRADIENT {
             let step_m = 1e-3 * self.outline.distance_to_edge_m(place);
-            let gradient = self.head.gradient(z, self.green, step_m);
+            // Around a lake the flow that a plan states is the one far away.
+            let gradient = match self.head.lake_radius_m {
+                Some(_) => self.head.slope,
+                None => self.head.gradient(z, self.green, step_m),
+            };
             let fixed = self.outline.frame.gradient_to_site(gradient);
             let off = (stated - fixed).norm();
             if off > GRADIENT_TOLERANCE * stated.norm() {

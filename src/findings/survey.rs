@@ -7,8 +7,9 @@ use crate::site::{Point, direction_of_azimuth};
 
 use super::{MapWindow, Solution};
 
-/// A place this far from an aquifer counts as on its edge, metres.
-const HAIR_M: f64 = 1e-6;
+/// A place this far from an aquifer counts as on its edge, metres: what
+/// rounding moves, and then what the chord of a round shore cuts off.
+const HAIRS_M: [f64; 2] = [1e-6, 1e-3];
 
 /// The heads of one aquifer, as something to contour.
 pub struct Heads<'a>(pub &'a WellField);
@@ -30,7 +31,9 @@ impl ScalarField for Drawdowns<'_> {
 
 /// Values in an aquifer and on its edge. A vertex of the edge that rounding
 /// has put outside takes the value a micrometre away, on the side where there
-/// is one: heads differ by less than 1e-7 m there.
+/// is one: heads differ by less than 1e-7 m there. A chord of a lake's shore
+/// lies up to 0.5 mm within the lake; a millimetre away heads differ by a
+/// millimetre times their slope.
 fn on_edge_too(
     field: &WellField,
     points: &[Point],
@@ -39,9 +42,12 @@ fn on_edge_too(
     let mut values = evaluate(field, points);
     for (value, &point) in values.iter_mut().zip(points) {
         if value.is_nan() {
-            let around: Vec<Point> = (0..8)
-                .map(|step| direction_of_azimuth(45.0 * f64::from(step)))
-                .map(|direction| point + direction * HAIR_M)
+            let around: Vec<Point> = HAIRS_M
+                .into_iter()
+                .flat_map(|hair_m| {
+                    let azimuths = (0..8).map(|step| 45.0 * f64::from(step));
+                    azimuths.map(move |azimuth| point + direction_of_azimuth(azimuth) * hair_m)
+                })
                 .collect();
             let near = evaluate(field, &around);
             *value = near.into_iter().find(|v| !v.is_nan()).unwrap_or(*value);

@@ -11,6 +11,10 @@ use crate::site::{EdgeShape, Extent, Place, Point, Refusal, Site, Subject, Vecto
 
 /// More nodes than this are refused.
 pub const MOST_NODES: f64 = 25e6;
+/// The least width of an extent, metres: wells have radii of millimetres.
+const THINNEST_M: f64 = 0.01;
+/// An extent may be so many times as long as it is wide.
+const LONGEST: f64 = 1000.0;
 /// Nodes on the long side, at least, where the plan leaves the choice.
 const NODES_ON_LONG_SIDE: f64 = 150.0;
 /// The margin around wells and neighbours, as a share of their spread.
@@ -34,7 +38,7 @@ impl MapWindow {
     ///
     /// # Errors
     /// When the grid would have more than [`MOST_NODES`] nodes, or the extent
-    /// shows nothing of the aquifer.
+    /// is a mere line or shows nothing of the aquifer.
     pub fn of(solution: &Solution) -> Result<Self, Refusal> {
         let site = solution.site();
         let extent = match site.map.extent {
@@ -52,6 +56,9 @@ impl MapWindow {
             });
         }
         let size = extent.max - extent.min;
+        if size.max() > LONGEST * size.min() || size.min() < THINNEST_M {
+            return Err(too_thin(size));
+        }
         let spacing_m = site
             .map
             .spacing
@@ -87,13 +94,30 @@ impl MapWindow {
     }
 }
 
+/// The refusal of an extent that is hardly more than a line.
+fn too_thin(size: Vector) -> Refusal {
+    Refusal {
+        subject: Subject::Map(Some("extent")),
+        what: format!(
+            "the map's extent is {} m by {} m, too thin to draw contours on",
+            size.x, size.y
+        ),
+        why: None,
+        remedy: format!(
+            "make it at least {THINNEST_M} m wide and no more than {LONGEST} times as long as wide, \
+             or leave `extent` out to have it chosen"
+        ),
+        related: vec![],
+    }
+}
+
 /// The refusal of a grid too fine for its extent.
 fn too_many_nodes(size: Vector, spacing_m: f64, nodes: f64) -> Refusal {
     let enough_m = (size.x * size.y / MOST_NODES * 4.0).sqrt();
     Refusal {
         subject: Subject::Map(Some("spacing")),
         what: format!(
-            "a map of {:.0} m by {:.0} m with nodes every {spacing_m} m has {nodes:.1e} nodes, more than the {MOST_NODES:.1e} that are drawn",
+            "a map of {:.0} m by {:.0} m with nodes every {spacing_m:?} m has {nodes:.1e} nodes, more than the {MOST_NODES:.1e} that are drawn",
             size.x, size.y
         ),
         why: None,

@@ -102,7 +102,8 @@ pub(super) fn images_of_one_period(
     if kinds[0] == kinds[1] {
         images.into_iter().take(2).collect()
     } else {
-        let within = |image: &AxisImage| image.position <= 2.0 * width;
+        // By order, as a coordinate on an edge puts 2L + c within reach too.
+        let within = |image: &AxisImage| image.order < 2 || image.position < coordinate;
         images.into_iter().filter(within).collect()
     }
 }

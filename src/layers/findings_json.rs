@@ -59,11 +59,15 @@ fn outline(planned: &Planned<'_>, field: &WellField) -> Value {
         .filter_map(|&well| planned.solution.site().wells.get(well))
         .map(|well| well.name.as_str())
         .collect();
+    let told = |text: &str| planned.plan.units.beside(text);
     Properties::new(planned.units())
         .with("shape", field.outline().shape.name())
-        .with("method", field.method())
+        .with("method", told(&field.method()))
         .length("error_bound", field.error_bound_m())
-        .with("words", field.outline().words(planned.solution.site()))
+        .with(
+            "words",
+            told(&field.outline().words(planned.solution.site())),
+        )
         .with("wells", names)
         .into()
 }

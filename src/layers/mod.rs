@@ -60,8 +60,9 @@ impl Planned<'_> {
 pub fn notes(plan: &Plan, solution: &Solution) -> Vec<String> {
     let mut notes = plan.notes.clone();
     for note in solution.fields().iter().flat_map(|field| field.notes()) {
-        if !notes.contains(note) {
-            notes.push(note.clone());
+        let note = plan.units.beside(note);
+        if !notes.contains(&note) {
+            notes.push(note);
         }
     }
     notes

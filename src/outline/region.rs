@@ -1,32 +1,44 @@
 //! Where an outline lies: what it holds, and how far its edges are.
 
+use std::f64::consts::TAU;
+
 use num_complex::Complex64;
 
 use super::shape::{Axis, Shape};
 use super::{Outline, Piece};
 use crate::site::Point;
 
-/// Share of a place's distance, plus one metre, by which it may lie outside
-/// and still count as on the edge.
+/// Share of a place's distance by which it may lie outside and still count
+/// as on the edge.
 const ON_EDGE: f64 = 1e-9;
 
 impl Outline {
     /// Whether a place of the site lies in the aquifer or on its edge, to
-    /// within 1e-9 of its distance from the canonical origin.
+    /// within 1e-9 of its distance from the canonical origin and the rounding of
+    /// its coordinates.
     pub fn holds(&self, point: Point) -> bool {
         let z = self.frame.to_canonical(point);
-        let slack = ON_EDGE * (1.0 + z.norm());
+        let slack = ON_EDGE * z.norm() + self.rounding_m(point);
         match self.shape {
             Shape::Axes { x, y } => within(x, z.re, slack) && within(y, z.im, slack),
             Shape::Wedge { angle_rad, .. } => {
-                let from_first = z.arg().rem_euclid(std::f64::consts::TAU);
+                // Near the apex no angle tells a place on a side from one off it.
+                let slack_rad = slack / z.norm().max(slack);
+                let from_first = z.arg().rem_euclid(TAU);
                 // Just below the first side the argument is almost a full turn.
-                let below = std::f64::consts::TAU - from_first;
-                z.norm() <= ON_EDGE || from_first <= angle_rad + ON_EDGE || below <= ON_EDGE
+                let below = TAU - from_first;
+                z.norm() <= slack || from_first <= angle_rad + slack_rad || below <= slack_rad
             }
             Shape::Disk { radius_m } => z.norm() <= radius_m + slack,
             Shape::DiskExterior { radius_m } => z.norm() + slack >= radius_m,
         }
+    }
+
+    /// How far a place may be moved by stretching, shifting and turning it:
+    /// 8ε of the coordinates involved.
+    fn rounding_m(&self, point: Point) -> f64 {
+        let stretched = self.frame.stretch.apply(point);
+        8.0 * f64::EPSILON * (stretched.coords.norm() + self.frame.origin.norm())
     }
 
     /// Distance of a place from the nearest edge of the aquifer, in metres of

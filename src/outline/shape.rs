@@ -96,6 +96,38 @@ impl Shape {
         }
     }
 
+    /// A place of the aquifer, moved off straight sides by 1e-14 of the
+    /// aquifer's width, or of the distance from its corner where it is open:
+    /// what jumps at a side is then asked on the right side of it.
+    pub fn hair_inside(&self, z: Complex64) -> Complex64 {
+        const HAIR: f64 = 1e-14;
+        let corner_m = z.norm().max(f64::MIN_POSITIVE / HAIR);
+        let within = |axis: Axis, value: f64, open_m: f64| match axis {
+            Axis::Open => value,
+            Axis::OneEdge(_) => value.max(HAIR * open_m),
+            Axis::TwoEdges { width_m, .. } => value.clamp(HAIR * width_m, (1.0 - HAIR) * width_m),
+        };
+        match *self {
+            Self::Axes { x, y } => {
+                let open_m = match x {
+                    Axis::TwoEdges { width_m, .. } => width_m,
+                    Axis::Open | Axis::OneEdge(_) => corner_m,
+                };
+                Complex64::new(within(x, z.re, open_m), within(y, z.im, open_m))
+            }
+            Self::Wedge { angle_rad, .. } => {
+                let angle = argument_in_wedge(z, angle_rad);
+                let inside = angle.clamp(HAIR * angle_rad, (1.0 - HAIR) * angle_rad);
+                if inside == angle {
+                    z
+                } else {
+                    Complex64::from_polar(corner_m, inside)
+                }
+            }
+            Self::Disk { .. } | Self::DiskExterior { .. } => z,
+        }
+    }
+
     /// The kinds of the canonical sides, in their order.
     pub fn side_kinds(&self) -> Vec<Kind> {
         match *self {

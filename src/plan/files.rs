@@ -23,7 +23,15 @@ impl LayerStore<'_> {
     /// The bytes of the layer that a plan names.
     pub(super) fn load(&self, layer: &str) -> io::Result<Vec<u8>> {
         match self {
-            Self::Folder(folder) => read(&folder.join(layer)),
+            Self::Folder(folder) => {
+                let path = folder.join(layer);
+                // Asked before it is opened: opening a pipe waits for a writer.
+                let kind = std::fs::metadata(&path)?.file_type();
+                if !kind.is_file() && !kind.is_dir() {
+                    return Err(io::Error::other("it is a pipe or a device, not a file"));
+                }
+                read(&path)
+            }
             Self::BuiltIn(layers) => {
                 let found = layers.iter().find(|(name, _)| *name == layer);
                 let text = found.map(|(_, text)| text.as_bytes().to_vec());

@@ -137,9 +137,10 @@ impl Plan {
     pub fn diagnose(&self, refusals: &[Refusal]) -> PlanFaults {
         let fault = |refusal: &Refusal| {
             let place = self.map.find(&refusal.subject);
-            let mut fault = Fault::new(place, &refusal.what, &refusal.remedy);
+            let told = |text: &str| self.units.beside(text);
+            let mut fault = Fault::new(place, told(&refusal.what), told(&refusal.remedy));
             if let Some(why) = &refusal.why {
-                fault = fault.why(why);
+                fault = fault.why(told(why));
             }
             for (subject, label) in &refusal.related {
                 fault = fault.related(self.map.find(subject), label);

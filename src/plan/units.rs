@@ -4,6 +4,7 @@
 //! as "25 L/s" carries its own. The units and their definitions stand in
 //! `units/table.rs`.
 
+mod beside;
 mod table;
 
 use table::{FOOT, FOOT_2, GPM, INCH, Unit, YEAR};

@@ -40,6 +40,29 @@ fn a_map_that_shows_nothing_of_the_aquifer_is_refused() {
 }
 
 #[test]
+fn a_map_that_is_a_mere_line_is_refused() {
+    for extent in ["[20.0, 0.0, 900.0, 0.001]", "[20.0, 0.0, 20.001, 0.001]"] {
+        let refusal = refusal(format!("{SMALL}\n[map]\nextent = {extent}\n"));
+        assert!(
+            refusal.contains("too thin to draw contours on"),
+            "{refusal}"
+        );
+    }
+}
+
+/// A pipe without a writer would be waited for without end.
+#[cfg(unix)]
+#[test]
+fn a_layer_that_is_no_file_is_refused() {
+    let layer = "layer = \"/dev/null\"\nfeature = \"Ostra\"\n";
+    let river = SMALL.find("line").unwrap();
+    let end = river + SMALL[river..].find('\n').unwrap() + 1;
+    let plan = format!("{}{layer}{}", &SMALL[..river], &SMALL[end..]);
+    let refusal = refusal(plan);
+    assert!(refusal.contains("a pipe or a device"), "{refusal}");
+}
+
+#[test]
 fn a_contour_interval_that_gives_too_many_levels_is_refused() {
     let plan = format!("{SMALL}\n[map]\ninterval = 1e-6\n");
     insta::assert_snapshot!(refusal(plan));
@@ -101,4 +124,23 @@ fn a_plan_that_is_not_utf_8_is_refused() {
 #[test]
 fn an_empty_plan_is_refused() {
     assert!(refusal("").contains("error"));
+}
+
+/// A foot is 0.3048 m (NIST SP 811, appendix B): 150 ft are 45.720 m.
+#[test]
+fn a_us_plan_reads_its_own_units_beside_metres() {
+    let plan =
+        SMALL.replace("\"metric\"", "\"us\"") + "[ambient]\nhead = 150.0\nat = [90.0, 5.0]\n";
+    let refusal = refusal(plan);
+    for text in ["45.720 m (150.00 ft)", "18.288 m (60.000 ft)"] {
+        assert!(refusal.contains(text), "{refusal}");
+    }
+}
+
+#[test]
+fn more_threads_than_any_machine_has_are_refused() {
+    let folder = folder();
+    let output = outcome(folder.path(), &["run", "--threads", "100000"]);
+    assert_eq!(output.status.code(), Some(2));
+    assert_eq!(std::fs::read_dir(folder.path()).unwrap().count(), 0);
 }
