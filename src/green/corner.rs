@@ -90,12 +90,14 @@ impl PairKernel for Corner {
     fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
         let [x, y, ..] = *terms;
         let (a, b) = (x.constant(prepared.x), x.constant(prepared.y));
-        let four = x.constant(4.0);
         let (dx, dy) = (x - a, y - b);
         let squared = dx.mul_add(dx, dy * dy);
         let rim_squared = x.constant(prepared.rim_squared);
         let one = x.constant(1.0);
-        let (across_x, across_y) = (four * a * x, four * b * y);
+        let (across_x, across_y) = (
+            x * x.constant(4.0 * prepared.x),
+            y * y.constant(4.0 * prepared.y),
+        );
         match self {
             Self::River => Ratio::of_well(squared, rim_squared, one, across_x),
             Self::TwoRivers => {

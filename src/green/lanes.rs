@@ -23,8 +23,6 @@ pub(super) struct Mask<S: Simd>(S::m64s);
 const EXPONENT_BITS: u64 = 0x7ff0_0000_0000_0000;
 const MANTISSA_BITS: u64 = 0x000f_ffff_ffff_ffff;
 const ONE_BITS: u64 = 0x3ff0_0000_0000_0000;
-/// The exponent field of 2^e and that of 2^(−e) add up to this.
-const RECIPROCAL_BITS: u64 = 0x7fe0_0000_0000_0000;
 /// 2²⁰, whose mantissa counts whole units in its upper half-word: an integer
 /// or-ed in there reads as that integer plus 2²⁰.
 const TWO_POW_20_BITS: u64 = 0x4130_0000_0000_0000;
@@ -94,13 +92,22 @@ impl<S: Simd> Lanes<S> {
         Self::new(simd, simd.transmute_f64s_u64s(bits))
     }
 
-    /// 2^(−e) for a value m · 2^e with 1 ≤ m < 2; normal positive values only.
+    /// The whole k ≥ 0 and self · 2^(−k) with base ≤ self · 2^(−k) < 2 base;
+    /// k = 0 where self is less than twice the base. Normal positive values
+    /// only.
+    ///
+    /// The bits of positive numbers count like the numbers themselves: the
+    /// exponent field of the difference of two is k.
     #[inline(always)]
-    pub fn scale_to_one(self) -> Self {
+    pub fn scaled_down_to(self, base: Self) -> (Self, Self) {
         let simd = self.simd;
-        let exponent = simd.and_u64s(self.bits(), simd.splat_u64s(EXPONENT_BITS));
-        let reciprocal = simd.sub_u64s(simd.splat_u64s(RECIPROCAL_BITS), exponent);
-        Self::from_bits(simd, reciprocal)
+        let apart = simd.sub_u64s(self.max(base).bits(), base.bits());
+        let field = simd.and_u64s(apart, simd.splat_u64s(EXPONENT_BITS));
+        let scaled = Self::from_bits(simd, simd.sub_u64s(self.bits(), field));
+        let integer = shift_upper_halves(simd, field, Shift::Right);
+        let marked = simd.or_u64s(integer, simd.splat_u64s(TWO_POW_20_BITS));
+        let power = Self::from_bits(simd, marked) - self.constant(TWO_POW_20);
+        (power, scaled)
     }
 
     /// m of m · 2^e, 1 ≤ m < 2; normal positive values only.

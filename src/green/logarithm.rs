@@ -5,8 +5,8 @@
 //! cancellation. Near a river N/D tends to 1, and the logarithm keeps all its
 //! digits because it starts from the difference.
 //!
-//! Method: scale D into [1, 2); with N = m · 2^k the value is k ln 2 +
-//! 2 artanh((m − D)/(m + D)), and 2 artanh(s) = 2s + s³ p(s²) for abs s ≤ 1/3.
+//! Method: with the whole k ≥ 0 that makes D ≤ N 2^(−k) < 2D the value is
+//! k ln 2 + 2 artanh((N 2^(−k) − D)/(N 2^(−k) + D)), and 2 artanh(s) = 2s + s³ p(s²) for abs s ≤ 1/3.
 //! p has degree 9; its relative error is 5.1e-18 (Chebyshev fit, computed with
 //! 60 digits by `tests/references/logarithm/coefficients.py`).
 //! Accuracy: relative error ≤ 4ε where N < 2D, else ≤ 4ε of the result.
@@ -103,20 +103,14 @@ impl<S: Simd> Ratio<S> {
     /// ln(N/D), for N/D ≥ 1/2.
     #[inline(always)]
     pub fn ln(self) -> Lanes<S> {
-        let scale = self.denominator.scale_to_one();
-        let denominator = self.denominator * scale;
-        let difference = self.difference * scale;
-        let numerator = denominator + difference;
-
-        // Below twice the denominator the exact difference serves as it is.
-        let near = difference.below(denominator);
-        let mantissa = numerator.mantissa();
-        let zero = numerator.constant(0.0);
-        let top = Lanes::select(near, difference, mantissa - denominator);
-        let bottom = Lanes::select(near, numerator, mantissa) + denominator;
-        let power = Lanes::select(near, zero, numerator.exponent());
-
-        let artanh = artanh_doubled(top / bottom);
+        let denominator = self.denominator;
+        let numerator = denominator + self.difference;
+        let (power, scaled) = numerator.scaled_down_to(denominator);
+        // Below twice the denominator, where k = 0, the exact difference
+        // serves as it is.
+        let near = self.difference.below(denominator);
+        let top = Lanes::select(near, self.difference, scaled - denominator);
+        let artanh = artanh_doubled(top / (scaled + denominator));
         power.mul_add(power.constant(std::f64::consts::LN_2), artanh)
     }
 }
@@ -140,8 +134,9 @@ pub fn ln_lanes<S: Simd>(simd: S, values: S::f64s) -> S::f64s {
 #[inline(always)]
 fn artanh_doubled<S: Simd>(s: Lanes<S>) -> Lanes<S> {
     let v = s * s;
-    let mut polynomial = s.constant(0.0);
-    for &coefficient in ARTANH.iter().rev() {
+    let [lower @ .., highest] = ARTANH;
+    let mut polynomial = v.constant(highest);
+    for &coefficient in lower.iter().rev() {
         polynomial = polynomial.mul_add(v, v.constant(coefficient));
     }
     (s * v).mul_add(polynomial, s + s)

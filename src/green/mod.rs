@@ -125,6 +125,13 @@ pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Gree
     }
     Ok(match *shape {
         Shape::Axes { x, y } => match (x, y) {
+            (
+                TwoEdges { width_m, kinds },
+                TwoEdges {
+                    width_m: height_m,
+                    kinds: across,
+                },
+            ) => Box::new(Rows::of_box(width_m, kinds, height_m, across)),
             (TwoEdges { width_m, kinds }, y_axis) => Box::new(Rows::new(width_m, kinds, y_axis)),
             (OneEdge(FixedHead), OneEdge(FixedHead)) => Box::new(Corner::TwoRivers),
             (OneEdge(FixedHead), OneEdge(NoFlow)) => Box::new(Corner::RiverThenBarrier),

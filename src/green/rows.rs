@@ -25,6 +25,7 @@
 //! Near the well 1 − 2t cos u + t² = (1 − t)² + 4t sin²(u/2) keeps its digits.
 //! Accuracy: absolute error ≤ 64ε (1 + κ abs(y − y₀)) + 1e-16, the last term
 //! for the rows left out.
+//! A box takes its rows along the axis of the shorter period.
 //! Cost: a dozen operations a row and one logarithm a pair; a strip is one
 //! row, a half-strip two, a square box some 25 (like edges) or 50.
 //! Source: Muskat (1937), *Flow of Homogeneous Fluids*, for the strip (from
@@ -43,8 +44,8 @@ use super::mirrors::{self, AxisImage};
 use super::{Green, Image, Source};
 use crate::outline::{Axis, Kind};
 
-/// Rows farther than this many κ⁻¹ add less than e^(−40) = 4e-18 each.
-const FADED: f64 = 40.0;
+/// Rows farther than this many κ⁻¹ add less than e^(−37.5) = 5e-17 each.
+const FADED: f64 = 37.5;
 
 /// Powers of two that t is held between, so that t⁴ stays a normal number.
 const POWER_LIMIT: f64 = 240.0;
@@ -62,6 +63,8 @@ pub struct Rows {
     kappa: f64,
     /// Whether e^(κy) is an ordinary number all over the aquifer.
     is_short: bool,
+    /// Whether x and y have changed places.
+    is_turned: bool,
 }
 
 impl Rows {
@@ -78,7 +81,35 @@ impl Rows {
             y_axis,
             kappa,
             is_short,
+            is_turned: false,
         }
+    }
+
+    /// The rows of a box, along the axis whose period is shorter: the fewest
+    /// rows are felt there.
+    pub fn of_box(width: f64, kinds: [Kind; 2], height: f64, across: [Kind; 2]) -> Self {
+        let axis = |width_m, kinds| Axis::TwoEdges { width_m, kinds };
+        if mirrors::period(width, kinds) <= mirrors::period(height, across) {
+            return Self::new(width, kinds, axis(height, across));
+        }
+        Self {
+            is_turned: true,
+            ..Self::new(height, across, axis(width, kinds))
+        }
+    }
+
+    /// A place or gradient with x and y in the places they have here.
+    fn turned(&self, z: Complex64) -> Complex64 {
+        if self.is_turned {
+            Complex64::new(z.im, z.re)
+        } else {
+            z
+        }
+    }
+
+    /// The number that a side has here.
+    fn turned_side(&self, side: usize) -> usize {
+        if self.is_turned { (side + 2) % 4 } else { side }
     }
 
     /// The images of the well's y that are felt inside the aquifer; the well's
@@ -211,6 +242,7 @@ impl PairKernel for Rows {
     }
 
     fn terms(&self, at: Complex64, reference: Complex64) -> [f64; TERMS] {
+        let (at, reference) = (self.turned(at), self.turned(reference));
         let (half_sin, half_cos) = (0.5 * self.kappa * at.re).sin_cos();
         let y = at.im - self.y_origin(reference);
         let (factor, power) = self.exponential(self.kappa * y);
@@ -229,7 +261,11 @@ impl PairKernel for Rows {
     }
 
     fn prepare(&self, source: &Source, reference: Complex64) -> Prepared {
-        let origin = self.y_origin(reference);
+        let source = Source {
+            pole: self.turned(source.pole),
+            ..*source
+        };
+        let origin = self.y_origin(self.turned(reference));
         let (half_sin, half_cos) = (0.5 * self.kappa * source.pole.re).sin_cos();
         let rows = self.rows_of(source.pole.im);
         let mirrored = rows.iter().skip(1).map(|row| {
@@ -388,6 +424,7 @@ impl Green for Rows {
     }
 
     fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64 {
+        let (at, pole) = (self.turned(at), self.turned(pole));
         let above = |row: &AxisImage| at.im >= row.position;
         let slope = |distance, above| {
             let fading = self.fading(distance, above);
@@ -400,10 +437,11 @@ impl Green for Rows {
         } else {
             0.0
         };
-        -0.5 * FRAC_1_PI * images.conj() + Complex64::new(0.0, mean)
+        self.turned(-0.5 * FRAC_1_PI * images.conj() + Complex64::new(0.0, mean))
     }
 
     fn share(&self, side: usize, along: Range<f64>, pole: Complex64) -> f64 {
+        let (side, pole) = (self.turned_side(side), self.turned(pole));
         let change = |from: Complex64, to: Complex64, above_well: bool| {
             self.stream(to, pole, above_well) - self.stream(from, pole, above_well)
         };
@@ -446,6 +484,7 @@ impl Green for Rows {
     }
 
     fn nearest_images(&self, pole: Complex64, count: usize) -> Vec<Image> {
+        let pole = self.turned(pole);
         let order = u32::try_from(count).unwrap_or(u32::MAX).min(64);
         let x_axis = Axis::TwoEdges {
             width_m: self.width,
@@ -453,7 +492,11 @@ impl Green for Rows {
         };
         let rows = mirrors::images_up_to(self.y_axis, pole.im, order);
         let columns = mirrors::images_up_to(x_axis, pole.re, order);
-        super::nearest(pole, super::product_of(&columns, &rows), count)
+        let mut images = super::product_of(&columns, &rows);
+        for image in &mut images {
+            image.at = self.turned(image.at);
+        }
+        super::nearest(self.turned(pole), images, count)
     }
 }
 
