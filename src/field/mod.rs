@@ -69,8 +69,10 @@ impl WellField {
                 rim_m: well.radius.si() * rim_factor,
             })
         };
+        let mut wells: Vec<FieldWell> = outline.wells.iter().filter_map(of_well).collect();
+        wells.sort_by_key(|well| well.index);
         let mut field = Self {
-            wells: outline.wells.iter().filter_map(of_well).collect(),
+            wells,
             transmissivity_m2_d: site.aquifer.transmissivity.si(),
             influence_radius_m: if has_river {
                 None
@@ -239,8 +241,10 @@ impl WellField {
             .collect()
     }
 
+    /// The wells stand in order of their index.
     fn well(&self, index: usize) -> Option<&FieldWell> {
-        self.wells.iter().find(|well| well.index == index)
+        let found = self.wells.binary_search_by_key(&index, |well| well.index);
+        found.ok().and_then(|position| self.wells.get(position))
     }
 
     fn is_closed_basin(&self) -> bool {

@@ -4,6 +4,8 @@
 //! alone, and a pair formula without any transcendental function but one
 //! logarithm. The terms are computed once; the pair loop multiplies and adds.
 
+use std::f64::consts::PI;
+
 use num_complex::Complex64;
 use pulp::{Arch, Scalar, Simd, WithSimd};
 
@@ -22,6 +24,9 @@ const BLOCK: usize = 32;
 pub(super) trait PairKernel: Sync {
     /// What depends on a source alone.
     type Prepared: Sync;
+
+    /// How many of a point's terms are used; the others are zero.
+    const USED: usize;
 
     /// Whether ratios may fall below 1/2, down to 2^−8.
     #[inline(always)]
@@ -60,7 +65,7 @@ pub(super) fn single<K: PairKernel>(kernel: &K, at: Complex64, pole: Complex64, 
     };
     let prepared = kernel.prepare(&source, pole);
     let terms = kernel.terms(at, pole).map(|term| Lanes::splat(simd, term));
-    pair(kernel, &prepared, &terms).values()
+    four_pi_green(kernel, &prepared, &terms).values() / (4.0 * PI)
 }
 
 /// Adds Σ strength · G(point, pole) to each point's sum, rims respected.
@@ -79,7 +84,12 @@ pub(super) fn superpose<K: PairKernel>(
         sources.iter().map(|source| source.pole).sum::<Complex64>() / sources.len() as f64;
     let prepared = sources
         .iter()
-        .map(|source| (source.strength_m, kernel.prepare(source, reference)))
+        .map(|source| {
+            (
+                source.strength_m / (4.0 * PI),
+                kernel.prepare(source, reference),
+            )
+        })
         .collect::<Vec<_>>();
     Arch::new().dispatch(Superposition {
         kernel,
@@ -90,8 +100,9 @@ pub(super) fn superpose<K: PairKernel>(
     });
 }
 
+/// 4π G of one pair.
 #[inline(always)]
-fn pair<S: Simd, K: PairKernel>(
+fn four_pi_green<S: Simd, K: PairKernel>(
     kernel: &K,
     prepared: &K::Prepared,
     terms: &[Lanes<S>; TERMS],
@@ -103,10 +114,9 @@ fn pair<S: Simd, K: PairKernel>(
     } else {
         ratio.ln()
     };
-    let quarter = logarithm.constant(0.25 * std::f64::consts::FRAC_1_PI);
     match kernel.plain_part(prepared, terms) {
-        Some(plain) => logarithm.mul_add(quarter, plain),
-        None => logarithm * quarter,
+        Some(plain) => plain.mul_add(plain.constant(4.0 * PI), logarithm),
+        None => logarithm,
     }
 }
 
@@ -130,10 +140,10 @@ impl<K: PairKernel> WithSimd for Superposition<'_, K> {
             let mut totals = [0.0; BLOCK];
             let groups = S::as_mut_simd_f64s(&mut totals).0;
             for (index, total) in groups.iter_mut().enumerate() {
-                let terms = group(simd, &columns, index);
+                let terms = group::<S, K>(simd, &columns, index);
                 let mut sum = Lanes::splat(simd, 0.0);
                 for (strength, prepared) in self.prepared {
-                    let value = pair(self.kernel, prepared, &terms);
+                    let value = four_pi_green(self.kernel, prepared, &terms);
                     sum = value.mul_add(Lanes::splat(simd, *strength), sum);
                 }
                 *total = sum.values();
@@ -157,7 +167,7 @@ fn fill<K: PairKernel>(
     let padded = points.iter().copied().chain(std::iter::repeat(last));
     for (index, point) in padded.take(BLOCK).enumerate() {
         let terms = kernel.terms(point, reference);
-        for (column, term) in columns.iter_mut().zip(terms) {
+        for (column, term) in columns.iter_mut().zip(terms).take(K::USED) {
             if let Some(entry) = column.get_mut(index) {
                 *entry = term;
             }
@@ -170,9 +180,13 @@ fn fill<K: PairKernel>(
 /// Written as a loop: a closure would not be compiled for the processor's
 /// vector set.
 #[inline(always)]
-fn group<S: Simd>(simd: S, columns: &[[f64; BLOCK]; TERMS], index: usize) -> [Lanes<S>; TERMS] {
+fn group<S: Simd, K: PairKernel>(
+    simd: S,
+    columns: &[[f64; BLOCK]; TERMS],
+    index: usize,
+) -> [Lanes<S>; TERMS] {
     let mut terms = [Lanes::splat(simd, 0.0); TERMS];
-    for (term, column) in terms.iter_mut().zip(columns) {
+    for (term, column) in terms.iter_mut().zip(columns).take(K::USED) {
         if let Some(lanes) = S::as_simd_f64s(column).0.get(index) {
             *term = Lanes::new(simd, *lanes);
         }

@@ -73,6 +73,8 @@ pub struct Prepared {
 impl PairKernel for Corner {
     type Prepared = Prepared;
 
+    const USED: usize = 2;
+
     #[inline(always)]
     fn terms(&self, at: Complex64, _reference: Complex64) -> [f64; TERMS] {
         [at.re, at.im, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0]

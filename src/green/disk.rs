@@ -34,7 +34,7 @@ impl Disk {
 
     /// R² − abs z².
     fn power_of_point(&self, z: Complex64) -> f64 {
-        let distance = z.norm();
+        let distance = z.norm_sqr().sqrt();
         (self.radius - distance) * (self.radius + distance)
     }
 }
@@ -49,6 +49,8 @@ pub struct Prepared {
 
 impl PairKernel for Disk {
     type Prepared = Prepared;
+
+    const USED: usize = 3;
 
     #[inline(always)]
     fn terms(&self, at: Complex64, _reference: Complex64) -> [f64; TERMS] {

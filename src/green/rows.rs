@@ -236,6 +236,8 @@ struct Cosines<S: Simd> {
 impl PairKernel for Rows {
     type Prepared = Prepared;
 
+    const USED: usize = TERMS;
+
     #[inline(always)]
     fn is_lifted(&self) -> bool {
         self.has_no_river_across_x()

@@ -50,6 +50,8 @@ impl Wedge {
 impl PairKernel for Wedge {
     type Prepared = rows::Prepared;
 
+    const USED: usize = TERMS;
+
     fn terms(&self, at: Complex64, reference: Complex64) -> [f64; TERMS] {
         self.strip.terms(self.map(at), self.map(reference))
     }
