@@ -19,13 +19,13 @@ fn main() -> Result<(), Box<dyn Error>> {
     let plan = Plan::read(Path::new(&path))?;
     let solve = |site| Solution::of(site).map_err(|refusals| plan.diagnose(&refusals));
 
-    let today = WellsAndNeighbours::of(&solve(plan.site.clone())?)?;
+    let today = WellsAndNeighbours::of(&solve(plan.site.clone())?);
     let mut site = plan.site.clone();
     if let Some(well) = site.wells.first_mut() {
         well.pumping = Rate::from_si(2.0 * well.pumping.si());
         println!("with {} at twice its rate:", well.name);
     }
-    let then = WellsAndNeighbours::of(&solve(site)?)?;
+    let then = WellsAndNeighbours::of(&solve(site)?);
 
     let neighbours = plan.site.neighbours.iter();
     for (neighbour, (before, after)) in

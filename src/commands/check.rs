@@ -6,7 +6,7 @@ use serde_json::{Value, json};
 
 use super::console::{Console, wrapped};
 use super::failure::Failure;
-use super::source::{PlanArgument, solve, wells_and_neighbours};
+use super::source::{PlanArgument, solve};
 use crate::field::WellField;
 use crate::findings::{Oddity, Solution, WellsAndNeighbours, oddities};
 use crate::layers::words::{Words, one_line};
@@ -31,7 +31,7 @@ pub struct Arguments {
 pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     let solved = arguments.plan.read().and_then(|plan| {
         let solution = solve(&plan)?;
-        let found = wells_and_neighbours(&plan, &solution)?;
+        let found = WellsAndNeighbours::of(&solution);
         Ok((plan, solution, found))
     });
     match solved {

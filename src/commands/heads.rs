@@ -5,8 +5,8 @@ use std::path::PathBuf;
 use super::console::Console;
 use super::failure::Failure;
 use super::points::{self, NamedPoint};
-use super::source::{PlanArgument, solve, wells_and_neighbours};
-use crate::findings::{Solution, edge_between};
+use super::source::{PlanArgument, solve};
+use crate::findings::{Solution, WellsAndNeighbours, edge_between};
 use crate::layers::{Units, safe_cell};
 use crate::plan::Plan;
 use crate::site::{Place, Point};
@@ -126,7 +126,7 @@ fn note_on(solution: &Solution, place: Point, head_m: f64) -> String {
 /// Levels in the wells, and heads at the neighbours' worst points.
 fn at_wells_and_neighbours(plan: &Plan, solution: &Solution) -> Result<Vec<Row>, Failure> {
     let site = solution.site();
-    let found = wells_and_neighbours(plan, solution)?;
+    let found = WellsAndNeighbours::of(solution);
     let wells = found.wells.iter().zip(&site.wells).map(|(finding, well)| {
         let (x, y) = plan.to_plan_xy(well.at);
         Row {

@@ -7,7 +7,7 @@ use super::failure::Failure;
 use super::progress::Progress;
 use super::source::{PlanArgument, solve};
 use super::summary;
-use crate::findings::{Findings, FindingsError, MapWindow, Solution, Survey};
+use crate::findings::{Findings, MapWindow, Solution, Survey};
 use crate::layers::{self, Levels, Planned, Units};
 use crate::plan::Plan;
 
@@ -42,10 +42,7 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
         MapWindow::of(&solution).map_err(|refusal| Failure::from(plan.diagnose(&[refusal])))?;
     progress.stage("surveying the map");
     let survey = Survey::of(&solution, window)?;
-    let findings = Findings::of(&solution, &survey).map_err(|error| match error {
-        FindingsError::Refused(refusal) => plan.diagnose(&[refusal]).into(),
-        FindingsError::Survey(error) => Failure::from(error),
-    })?;
+    let findings = Findings::of(&solution, &survey)?;
     progress.stage("drawing contours");
     let planned = planned(&plan, &solution, &survey, &findings)?;
     let files = layers::make_all(&planned)?;

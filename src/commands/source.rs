@@ -3,7 +3,7 @@
 use std::path::{Path, PathBuf};
 
 use super::failure::Failure;
-use crate::findings::{Solution, WellsAndNeighbours};
+use crate::findings::Solution;
 use crate::plan::Plan;
 
 /// The demo: an invented place.
@@ -48,15 +48,4 @@ impl PlanArgument {
 /// Every refusal, at its place in the plan.
 pub fn solve(plan: &Plan) -> Result<Solution, Failure> {
     Solution::of(plan.site.clone()).map_err(|refusals| plan.diagnose(&refusals).into())
-}
-
-/// What the wells do to each other and to the neighbours.
-///
-/// # Errors
-/// When there are too many of them for a table.
-pub fn wells_and_neighbours(
-    plan: &Plan,
-    solution: &Solution,
-) -> Result<WellsAndNeighbours, Failure> {
-    WellsAndNeighbours::of(solution).map_err(|refusal| plan.diagnose(&[refusal]).into())
 }

@@ -16,7 +16,6 @@ mod well;
 mod window;
 mod worst;
 
-use crate::site::Refusal;
 pub use boundary::{Balance, BoundaryFinding};
 pub use flag::{Cause, Flag, FlagCode, Measure, Who};
 pub use interference::{InterferenceMatrix, MOST_ENTRIES};
@@ -32,17 +31,6 @@ pub use window::{MOST_NODES, MapWindow};
 
 pub use worst::{Peak, RateChange, worst_point};
 
-/// Why findings cannot be worked out.
-#[derive(Clone, Debug, PartialEq, thiserror::Error)]
-pub enum FindingsError {
-    /// The plan asks for too much.
-    #[error(transparent)]
-    Refused(#[from] Refusal),
-    /// The map cannot be surveyed.
-    #[error(transparent)]
-    Survey(SurveyError),
-}
-
 /// What is found without a map: wells and neighbours.
 pub struct WellsAndNeighbours {
     /// The wells, in the plan's order.
@@ -55,18 +43,14 @@ pub struct WellsAndNeighbours {
 
 impl WellsAndNeighbours {
     /// Works them out.
-    ///
-    /// # Errors
-    /// When the interference table would have more than [`MOST_ENTRIES`].
-    pub fn of(solution: &Solution) -> Result<Self, Refusal> {
-        interference::refuse_large(solution.site())?;
+    pub fn of(solution: &Solution) -> Self {
         let neighbours = neighbour::all(solution);
         let interference = InterferenceMatrix::of(solution, &neighbours);
-        Ok(Self {
+        Self {
             wells: well::all(solution, &interference),
             interference,
             neighbours,
-        })
+        }
     }
 }
 
@@ -92,17 +76,16 @@ impl Findings {
     /// Works everything out; the area below the roof is measured on the map.
     ///
     /// # Errors
-    /// As [`WellsAndNeighbours::of`], and where the contour of the roof
-    /// cannot be drawn.
-    pub fn of(solution: &Solution, survey: &Survey<'_>) -> Result<Self, FindingsError> {
+    /// Where the contour of the roof cannot be drawn.
+    pub fn of(solution: &Solution, survey: &Survey<'_>) -> Result<Self, SurveyError> {
         let WellsAndNeighbours {
             wells,
             interference,
             neighbours,
-        } = WellsAndNeighbours::of(solution)?;
+        } = WellsAndNeighbours::of(solution);
         let boundaries = boundary::all(solution);
         let balances = boundary::balances(solution, &boundaries);
-        let roof = roof::finding(solution, &wells, survey).map_err(FindingsError::Survey)?;
+        let roof = roof::finding(solution, &wells, survey)?;
         let flags = rules::flags(&rules::Judged {
             solution,
             matrix: &interference,

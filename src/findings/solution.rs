@@ -1,6 +1,7 @@
 //! All aquifers of a site, each solved: where a river parts the wells, both
 //! banks stand side by side.
 
+use super::interference;
 use crate::field::WellField;
 use crate::outline;
 use crate::site::{Point, Refusal, Site};
@@ -16,8 +17,10 @@ impl Solution {
     /// Finds the aquifers of a site and solves each.
     ///
     /// # Errors
-    /// Every refusal of every aquifer, in the plan's order of aquifers.
+    /// A site whose tables would be too large, or every refusal of every
+    /// aquifer, in the plan's order of aquifers.
     pub fn of(site: Site) -> Result<Self, Vec<Refusal>> {
+        interference::refuse_large(&site).map_err(|refusal| vec![refusal])?;
         let mut fields = Vec::new();
         let mut refusals = Vec::new();
         for outline in outline::find(&site)? {
