@@ -55,6 +55,34 @@ pub(super) trait PairKernel: Sync {
     }
 }
 
+/// Where a source is and how wide its rim, for kernels that work with plain
+/// distances; the point's terms are then x and y.
+pub(super) struct Place {
+    /// x of the source.
+    pub x: f64,
+    /// y of the source.
+    pub y: f64,
+    rim_squared: f64,
+}
+
+impl Place {
+    /// The place of a source.
+    pub fn of(source: &Source) -> Self {
+        Self {
+            x: source.pole.re,
+            y: source.pole.im,
+            rim_squared: source.rim_m * source.rim_m,
+        }
+    }
+
+    /// The squared distance of some points and the squared rim.
+    #[inline(always)]
+    pub fn squares<S: Simd>(&self, x: Lanes<S>, y: Lanes<S>) -> [Lanes<S>; 2] {
+        let (dx, dy) = (x - x.constant(self.x), y - y.constant(self.y));
+        [dx.mul_add(dx, dy * dy), x.constant(self.rim_squared)]
+    }
+}
+
 /// G of one source with strength 1 at one point, rim respected.
 pub(super) fn single<K: PairKernel>(kernel: &K, at: Complex64, pole: Complex64, rim_m: f64) -> f64 {
     let simd = Scalar::new();

@@ -25,7 +25,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 use pulp::Simd;
 
-use super::batch::{self, PairKernel, TERMS};
+use super::batch::{self, PairKernel, Place, TERMS};
 use super::lanes::Lanes;
 use super::logarithm::Ratio;
 use super::{Green, Image, Source};
@@ -63,15 +63,8 @@ impl Corner {
     }
 }
 
-/// A source: its place and its squared rim.
-pub struct Prepared {
-    x: f64,
-    y: f64,
-    rim_squared: f64,
-}
-
 impl PairKernel for Corner {
-    type Prepared = Prepared;
+    type Prepared = Place;
 
     const USED: usize = 2;
 
@@ -80,21 +73,14 @@ impl PairKernel for Corner {
         [at.re, at.im, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0]
     }
 
-    fn prepare(&self, source: &Source, _reference: Complex64) -> Prepared {
-        Prepared {
-            x: source.pole.re,
-            y: source.pole.im,
-            rim_squared: source.rim_m * source.rim_m,
-        }
+    fn prepare(&self, source: &Source, _reference: Complex64) -> Place {
+        Place::of(source)
     }
 
     #[inline(always)]
-    fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
+    fn ratio<S: Simd>(&self, prepared: &Place, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
         let [x, y, ..] = *terms;
-        let (a, b) = (x.constant(prepared.x), x.constant(prepared.y));
-        let (dx, dy) = (x - a, y - b);
-        let squared = dx.mul_add(dx, dy * dy);
-        let rim_squared = x.constant(prepared.rim_squared);
+        let [squared, rim_squared] = prepared.squares(x, y);
         let one = x.constant(1.0);
         let (across_x, across_y) = (
             x * x.constant(4.0 * prepared.x),

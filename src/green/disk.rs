@@ -15,7 +15,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 use pulp::Simd;
 
-use super::batch::{self, PairKernel, TERMS};
+use super::batch::{self, PairKernel, Place, TERMS};
 use super::lanes::Lanes;
 use super::logarithm::Ratio;
 use super::{Green, Image, Source};
@@ -39,11 +39,9 @@ impl Disk {
     }
 }
 
-/// A source: its place, its squared rim, and (R² − abs z₀²)/R².
+/// A source: its place, and (R² − abs z₀²)/R².
 pub struct Prepared {
-    x: f64,
-    y: f64,
-    rim_squared: f64,
+    place: Place,
     power: f64,
 }
 
@@ -60,9 +58,7 @@ impl PairKernel for Disk {
 
     fn prepare(&self, source: &Source, _reference: Complex64) -> Prepared {
         Prepared {
-            x: source.pole.re,
-            y: source.pole.im,
-            rim_squared: source.rim_m * source.rim_m,
+            place: Place::of(source),
             power: self.power_of_point(source.pole) / (self.radius * self.radius),
         }
     }
@@ -70,10 +66,10 @@ impl PairKernel for Disk {
     #[inline(always)]
     fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
         let [x, y, power, ..] = *terms;
-        let (dx, dy) = (x - x.constant(prepared.x), y - y.constant(prepared.y));
+        let [squared, rim_squared] = prepared.place.squares(x, y);
         Ratio::of_well(
-            dx.mul_add(dx, dy * dy),
-            x.constant(prepared.rim_squared),
+            squared,
+            rim_squared,
             x.constant(1.0),
             power * power.constant(prepared.power),
         )

@@ -21,7 +21,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 use pulp::Simd;
 
-use super::batch::{self, PairKernel, TERMS};
+use super::batch::{self, PairKernel, Place, TERMS};
 use super::lanes::Lanes;
 use super::logarithm::Ratio;
 use super::wedge::images_in_wedge;
@@ -140,15 +140,8 @@ impl Fan {
     }
 }
 
-/// An image of a source: its place and its squared rim.
-pub struct Prepared {
-    x: f64,
-    y: f64,
-    rim_squared: f64,
-}
-
 impl PairKernel for Influence {
-    type Prepared = Prepared;
+    type Prepared = Place;
 
     const USED: usize = 2;
 
@@ -157,20 +150,15 @@ impl PairKernel for Influence {
         [at.re, at.im, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0]
     }
 
-    fn prepare(&self, source: &Source, _reference: Complex64) -> Prepared {
-        Prepared {
-            x: source.pole.re,
-            y: source.pole.im,
-            rim_squared: source.rim_m * source.rim_m,
-        }
+    fn prepare(&self, source: &Source, _reference: Complex64) -> Place {
+        Place::of(source)
     }
 
     #[inline(always)]
-    fn ratio<S: Simd>(&self, prepared: &Prepared, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
+    fn ratio<S: Simd>(&self, prepared: &Place, terms: &[Lanes<S>; TERMS]) -> Ratio<S> {
         let [x, y, ..] = *terms;
-        let (dx, dy) = (x - x.constant(prepared.x), y - y.constant(prepared.y));
-        let squared = dx.mul_add(dx, dy * dy);
-        let squared = squared.max(x.constant(prepared.rim_squared));
+        let [squared, rim_squared] = prepared.squares(x, y);
+        let squared = squared.max(rim_squared);
         let inside = x.constant(self.radius * self.radius) - squared;
         Ratio {
             denominator: squared,

@@ -1,21 +1,21 @@
 //! Bad plans: each ends in a clear refusal, status 2, and no file touched.
 
-use crate::support::{SMALL, folder, outcome, transcript};
+use crate::support::{SMALL, folder, outcome, printed};
 
 /// Runs a bad plan and makes sure it is refused without a trace.
 fn refusal(plan: impl AsRef<[u8]>) -> String {
     let folder = folder();
     std::fs::write(folder.path().join("plan.toml"), plan).unwrap();
     let output = outcome(folder.path(), &["run", "plan.toml"]);
-    let transcript = transcript(&output);
-    assert_eq!(output.status.code(), Some(2), "{transcript}");
-    assert!(output.stdout.is_empty(), "{transcript}");
+    let printed = printed(&output);
+    assert_eq!(output.status.code(), Some(2), "{printed}");
+    assert!(output.stdout.is_empty(), "{printed}");
     assert_eq!(
         std::fs::read_dir(folder.path()).unwrap().count(),
         1,
-        "{transcript}"
+        "{printed}"
     );
-    transcript
+    printed
 }
 
 #[test]
@@ -108,9 +108,9 @@ fn every_bad_value_is_refused() {
     ];
     for (good, wrong) in bad {
         assert!(SMALL.contains(good), "{good}");
-        let transcript = refusal(SMALL.replace(good, wrong));
-        assert!(transcript.contains("error"), "{wrong}: {transcript}");
-        assert!(transcript.contains("plan.toml"), "{wrong}: {transcript}");
+        let printed = refusal(SMALL.replace(good, wrong));
+        assert!(printed.contains("error"), "{wrong}: {printed}");
+        assert!(printed.contains("plan.toml"), "{wrong}: {printed}");
     }
 }
 

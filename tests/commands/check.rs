@@ -1,11 +1,11 @@
 //! `mirrorwell check`.
 
-use crate::support::{SMALL, folder, outcome, transcript, with_plan};
+use crate::support::{SMALL, folder, outcome, printed, with_plan};
 
 #[test]
 fn the_demo_is_looked_over() {
     let folder = folder();
-    insta::assert_snapshot!(transcript(&outcome(folder.path(), &["check"])));
+    insta::assert_snapshot!(printed(&outcome(folder.path(), &["check"])));
     // Nothing was written.
     assert_eq!(std::fs::read_dir(folder.path()).unwrap().count(), 0);
 }
@@ -18,7 +18,7 @@ fn what_looks_wrong_is_said() {
         .replace("roof = 40.0", "roof = 61.0")
         .replace("transmissivity = 500.0", "transmissivity = 0.5")
         .replace("allowed_drawdown = 0.3", "");
-    insta::assert_snapshot!(transcript(&with_plan(&plan, "check")));
+    insta::assert_snapshot!(printed(&with_plan(&plan, "check")));
 }
 
 #[test]

@@ -1,6 +1,6 @@
 //! `mirrorwell heads`.
 
-use crate::support::{SMALL, folder, mirrorwell, outcome, transcript};
+use crate::support::{SMALL, folder, mirrorwell, outcome, printed};
 
 #[test]
 fn heads_of_the_demo_s_wells_and_neighbours_are_listed() {
@@ -42,7 +42,7 @@ fn points_outside_have_no_head_and_a_note_that_says_why() {
         .write_stdin("-50,0,over there\n100.05,0,in the well\n")
         .output()
         .unwrap();
-    insta::assert_snapshot!(transcript(&output));
+    insta::assert_snapshot!(printed(&output));
 }
 
 #[test]
@@ -55,7 +55,7 @@ fn every_fault_of_a_points_file_is_shown_with_its_line() {
     .unwrap();
     let output = outcome(folder.path(), &["heads", "--points", "points.csv"]);
     assert_eq!(output.status.code(), Some(2));
-    insta::assert_snapshot!(transcript(&output));
+    insta::assert_snapshot!(printed(&output));
 }
 
 #[test]
@@ -63,5 +63,5 @@ fn a_file_that_is_no_csv_of_points_is_refused() {
     let folder = folder();
     std::fs::write(folder.path().join("points.csv"), "east;north\n1,5;2,5\n").unwrap();
     let output = outcome(folder.path(), &["heads", "--points", "points.csv"]);
-    insta::assert_snapshot!(transcript(&output));
+    insta::assert_snapshot!(printed(&output));
 }

@@ -1,17 +1,17 @@
 //! Help, completions, the manual page, schema and materials.
 
-use crate::support::{folder, mirrorwell, outcome, transcript};
+use crate::support::{folder, mirrorwell, outcome, printed};
 
 #[test]
 fn the_help_shows_every_command() {
     let folder = folder();
-    insta::assert_snapshot!(transcript(&outcome(folder.path(), &["--help"])));
+    insta::assert_snapshot!(printed(&outcome(folder.path(), &["--help"])));
 }
 
 #[test]
 fn the_help_of_run_shows_a_worked_example() {
     let folder = folder();
-    insta::assert_snapshot!(transcript(&outcome(folder.path(), &["run", "--help"])));
+    insta::assert_snapshot!(printed(&outcome(folder.path(), &["run", "--help"])));
 }
 
 #[test]

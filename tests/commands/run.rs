@@ -1,16 +1,16 @@
 //! `mirrorwell run`.
 
-use crate::support::{SMALL, folder, mirrorwell, outcome, transcript, with_plan};
+use crate::support::{SMALL, folder, mirrorwell, outcome, printed, with_plan};
 
 #[test]
 fn the_demo_prints_a_summary_for_people() {
     let folder = folder();
-    insta::assert_snapshot!(transcript(&outcome(folder.path(), &["run"])));
+    insta::assert_snapshot!(printed(&outcome(folder.path(), &["run"])));
 }
 
 #[test]
 fn a_small_plan_prints_a_summary_for_people() {
-    insta::assert_snapshot!(transcript(&with_plan(SMALL, "run")));
+    insta::assert_snapshot!(printed(&with_plan(SMALL, "run")));
 }
 
 #[test]
@@ -18,7 +18,7 @@ fn quiet_says_nothing_when_all_goes_well() {
     let folder = folder();
     let output = outcome(folder.path(), &["run", "--quiet"]);
     assert_eq!(
-        transcript(&output),
+        printed(&output),
         "exit status 0\n--- standard output\n--- standard error\n"
     );
     assert!(folder.path().join("mirrorwell-out/findings.json").is_file());
@@ -65,7 +65,7 @@ fn every_example_runs() {
         let folder = folder();
         let path = examples.join(plan);
         let output = outcome(folder.path(), &["run", path.to_str().unwrap()]);
-        assert!(output.status.success(), "{}", transcript(&output));
-        insta::assert_snapshot!(plan.replace('/', "_"), transcript(&output));
+        assert!(output.status.success(), "{}", printed(&output));
+        insta::assert_snapshot!(plan.replace('/', "_"), printed(&output));
     }
 }

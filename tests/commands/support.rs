@@ -30,7 +30,7 @@ pub fn outcome(folder: &Path, arguments: &[&str]) -> Output {
 }
 
 /// Exit status, standard output and standard error as one text.
-pub fn transcript(output: &Output) -> String {
+pub fn printed(output: &Output) -> String {
     format!(
         "exit status {}\n--- standard output\n{}--- standard error\n{}",
         output.status.code().expect("it exits by itself"),
