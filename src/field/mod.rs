@@ -9,6 +9,7 @@ mod ambient_error;
 mod steady;
 
 use std::f64::consts::FRAC_1_PI;
+use std::ops::Range;
 
 use num_complex::Complex64;
 use rayon::prelude::*;
@@ -194,6 +195,13 @@ impl WellField {
             .map(|(side, piece)| self.green.share(side, piece.along.clone(), source.pole))
             .sum();
         source.pumping_m3_d * share
+    }
+
+    /// Water that a part of a side gives to all wells of this aquifer, m³/d.
+    pub fn inflow_through_m3_d(&self, side: usize, along: &Range<f64>) -> f64 {
+        let given =
+            |well: &FieldWell| well.pumping_m3_d * self.green.share(side, along.clone(), well.pole);
+        self.wells.iter().map(given).sum()
     }
 
     /// A bound on the rounding error of a head, metres.

@@ -7,6 +7,7 @@ mod interference;
 mod neighbour;
 mod oddities;
 mod outside;
+mod reach;
 mod remedy;
 mod roof;
 mod rules;
@@ -22,6 +23,7 @@ pub use interference::{InterferenceMatrix, MOST_ENTRIES};
 pub use neighbour::{NeighbourFinding, Worst};
 pub use oddities::{Oddity, oddities};
 pub use outside::edge_between;
+pub use reach::ReachFinding;
 pub use remedy::{CommonFactor, NewRate, Rates, Remedy};
 pub use roof::RoofFinding;
 pub use solution::Solution;
@@ -64,6 +66,8 @@ pub struct Findings {
     pub neighbours: Vec<NeighbourFinding>,
     /// Rivers and barriers, in the site's order.
     pub boundaries: Vec<BoundaryFinding>,
+    /// The straight reaches of the rivers.
+    pub reaches: Vec<ReachFinding>,
     /// The water balance of each aquifer.
     pub balances: Vec<Balance>,
     /// Heads against the roof on the map; none where the plan gives no roof.
@@ -98,6 +102,7 @@ impl Findings {
             interference,
             neighbours,
             boundaries,
+            reaches: reach::all(solution),
             balances,
             roof,
             flags,

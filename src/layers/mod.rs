@@ -11,6 +11,7 @@ mod interference_csv;
 mod map_svg;
 mod neighbours;
 mod rings;
+mod river_reaches;
 mod units;
 mod wells;
 pub mod words;
@@ -115,7 +116,7 @@ fn flag_codes(planned: &Planned<'_>, who: Who) -> Vec<&'static str> {
 type Maker = fn(&Planned<'_>) -> Result<Vec<u8>, LayerError>;
 
 /// Every output: its name and its maker.
-pub const OUTPUTS: [(&str, Maker); 9] = [
+pub const OUTPUTS: [(&str, Maker); 10] = [
     ("head_contours.geojson", |p| json(&contours::head_lines(p)?)),
     ("drawdown_contours.geojson", |p| {
         json(&contours::drawdown_lines(p)?)
@@ -126,6 +127,7 @@ pub const OUTPUTS: [(&str, Maker); 9] = [
     ("wells.geojson", |p| json(&wells::layer(p)?)),
     ("neighbours.geojson", |p| json(&neighbours::layer(p)?)),
     ("boundaries.geojson", |p| json(&boundaries::layer(p)?)),
+    ("river_reaches.geojson", |p| json(&river_reaches::layer(p)?)),
     ("image_wells.geojson", |p| json(&image_wells::layer(p)?)),
     ("interference.csv", interference_csv::table),
     ("findings.json", |p| {

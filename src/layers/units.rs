@@ -101,6 +101,16 @@ impl Properties {
         self.with(&name, number(value))
     }
 
+    /// Adds a rate a length, in m²/d, under `stem_m3_per_d_per_m` or
+    /// `stem_gpm_per_ft`.
+    pub fn rate_a_length(self, stem: &str, m2_d: impl Into<Option<f64>>) -> Self {
+        let (rate, length) = (self.units.rate_ending(), self.units.length_ending());
+        let name = format!("{stem}_{rate}_per_{length}");
+        let a_length = |m2_d: f64| self.units.rate(m2_d) / self.units.length(1.0);
+        let value = m2_d.into().map(a_length);
+        self.with(&name, number(value))
+    }
+
     /// Adds an area under `stem_m2` or `stem_ft2`.
     pub fn area(self, stem: &str, m2: impl Into<Option<f64>>) -> Self {
         let name = format!("{stem}_{}", self.units.area_ending());

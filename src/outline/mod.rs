@@ -25,6 +25,7 @@ mod named;
 mod names;
 mod pieces;
 mod placement;
+mod reaches;
 mod recognise;
 mod refuse;
 mod region;

@@ -4,6 +4,8 @@ use std::collections::BTreeMap;
 use std::fs;
 use std::path::Path;
 
+use mirrorwell::layers::OUTPUTS;
+
 use crate::support::{SMALL, folder, mirrorwell, outcome};
 
 /// Every file of a folder, by name.
@@ -38,6 +40,7 @@ fn the_files_of_the_contract_are_written_and_no_others() {
             "image_wells.geojson",
             "interference.csv",
             "neighbours.geojson",
+            "river_reaches.geojson",
             "wells.geojson",
         ]
     );
@@ -101,7 +104,7 @@ fn files_that_are_not_a_run_s_are_left_alone() {
     assert!(outcome(folder.path(), &["run"]).status.success());
     let after = files(&out);
     assert_eq!(after["notes.txt"], b"mine");
-    assert_eq!(after.len(), 10);
+    assert_eq!(after.len(), OUTPUTS.len() + 1);
 }
 
 #[test]
@@ -126,7 +129,7 @@ fn the_folder_in_which_one_stands_can_be_the_target() {
             .status
             .success()
     );
-    assert_eq!(files(folder.path()).len(), 9);
+    assert_eq!(files(folder.path()).len(), OUTPUTS.len());
 }
 
 #[cfg(unix)]
@@ -141,7 +144,7 @@ fn a_link_to_a_folder_stays_a_link() {
             .success()
     );
     assert!(folder.path().join("link").is_symlink());
-    assert_eq!(files(&folder.path().join("real")).len(), 9);
+    assert_eq!(files(&folder.path().join("real")).len(), OUTPUTS.len());
 }
 
 #[cfg(unix)]

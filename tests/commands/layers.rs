@@ -35,13 +35,14 @@ fn property_names(layer: &Value) -> Vec<String> {
     properties.keys().cloned().collect()
 }
 
-const GEOJSON: [&str; 7] = [
+const GEOJSON: [&str; 8] = [
     "boundaries.geojson",
     "drawdown_bands.geojson",
     "drawdown_contours.geojson",
     "head_contours.geojson",
     "image_wells.geojson",
     "neighbours.geojson",
+    "river_reaches.geojson",
     "wells.geojson",
 ];
 
@@ -155,6 +156,10 @@ fn properties_have_the_names_of_the_contract() {
     assert_eq!(
         names("boundaries.geojson"),
         ["name", "kind", "inflow_m3_per_d"]
+    );
+    assert_eq!(
+        names("river_reaches.geojson"),
+        ["name", "inflow_m3_per_d", "inflow_m3_per_d_per_m"]
     );
     assert_eq!(names("image_wells.geojson"), ["of", "sign", "order"]);
 }

@@ -43,7 +43,7 @@ LAYERS = {
         "name": TEXT, "drawdown_{m}": NUMBER, "allowed_drawdown_{m}?": NUMBER, "largest_cause?": TEXT, "flags": TEXT,
     }),
     "boundaries": ({"LineString", "MultiLineString"}, {"name": TEXT, "kind": TEXT, "inflow_{q}": NUMBER}),
-    "river_reaches": ({"LineString"}, {"name": TEXT, "inflow_{q}": NUMBER, "inflow_{q}_per_{m}": NUMBER}),
+    "river_reaches": ({"LineString"}, {"name": TEXT, "inflow_{q}": NUMBER, "inflow_{q}_per_{m}?": NUMBER}),
     "image_wells": ({"Point"}, {"of": TEXT, "sign": WHOLE, "order": WHOLE}),
 }
 NEEDED = set(LAYERS) - {"river_reaches", "image_wells"}

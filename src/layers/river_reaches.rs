@@ -1,0 +1,53 @@
+//! `river_reaches.geojson`: what each straight reach of a river gives to the
+//! wells.
+//!
+//! A reach lies between two vertices of the plan's line. Where a river is
+//! carried on beyond its last vertex without end, that reach is drawn as far
+//! as the map is wide, and has no inflow a length.
+
+use geojson::FeatureCollection;
+
+use super::geojson::Layer;
+use super::units::Properties;
+use super::{LayerError, Planned};
+use crate::findings::ReachFinding;
+use crate::outline::Shape;
+use crate::site::Point;
+
+/// The layer.
+pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
+    let mut layer = Layer::new(planned.plan);
+    let site = planned.solution.site();
+    for reach in &planned.findings.reaches {
+        let Some(edge) = site.edges.get(reach.edge) else {
+            continue;
+        };
+        let a_length_m2_d = reach.length_m.map(|length_m| reach.inflow_m3_d / length_m);
+        for line in lines(planned, reach) {
+            let properties = Properties::new(planned.units())
+                .with("name", edge.name.as_str())
+                .rate("inflow", reach.inflow_m3_d)
+                .rate_a_length("inflow", a_length_m2_d);
+            layer.add_line(&line, properties)?;
+        }
+    }
+    Ok(layer.finish())
+}
+
+/// The course of a reach.
+fn lines(planned: &Planned<'_>, reach: &ReachFinding) -> Vec<Vec<Point>> {
+    let Some(field) = planned.solution.fields().get(reach.field) else {
+        return Vec::new();
+    };
+    let outline = field.outline();
+    if let Shape::Disk { .. } | Shape::DiskExterior { .. } = outline.shape {
+        return super::boundaries::lines(planned, reach.edge);
+    }
+    let extent = planned.survey.window.extent;
+    let beyond_m = (extent.max - extent.min).norm();
+    vec![
+        outline
+            .reach_line(reach.side, &reach.along, beyond_m)
+            .to_vec(),
+    ]
+}
