@@ -255,7 +255,9 @@ impl WellField {
         found.ok().and_then(|position| self.wells.get(position))
     }
 
-    fn is_closed_basin(&self) -> bool {
+    /// Whether barriers close the aquifer on all sides, so that pumping and
+    /// injection must balance.
+    pub fn is_closed_basin(&self) -> bool {
         !self.outline.shape.side_kinds().contains(&Kind::FixedHead)
             && self.influence_radius_m.is_none()
     }

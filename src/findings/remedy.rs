@@ -13,6 +13,31 @@ pub struct Remedy {
     /// The common factor on rates that just clears it; none where stopping
     /// them all would not clear it.
     pub together: Option<CommonFactor>,
+    /// Whether barriers close the aquifer, so that pumping and injection must
+    /// balance and no rate may change alone.
+    pub must_balance: bool,
+}
+
+impl Remedy {
+    /// A remedy in an aquifer that a river feeds.
+    pub fn new(alone: Option<NewRate>, together: Option<CommonFactor>) -> Self {
+        Self {
+            alone,
+            together,
+            must_balance: false,
+        }
+    }
+
+    /// What is left of it where pumping and injection must balance: all rates
+    /// in one proportion.
+    pub fn in_balance(self) -> Self {
+        let together = self.together.filter(|common| common.rates == Rates::All);
+        Self {
+            alone: None,
+            together,
+            must_balance: true,
+        }
+    }
 }
 
 /// A well's rate, reduced.

@@ -56,14 +56,11 @@ pub fn finding(
         .reduce(|a, b| if b.head_m() < a.head_m() { b } else { a });
     let cause = lowest.and_then(|lowest| cause_at(solution, lowest.at));
     let remedy = match lowest {
-        Some(_) => Remedy {
-            alone: cause.and_then(|cause| alone(solution, &lows, cause.well, roof_m)),
-            together: together(&lows, roof_m),
-        },
-        None => Remedy {
-            alone: None,
-            together: None,
-        },
+        Some(_) => Remedy::new(
+            cause.and_then(|cause| alone(solution, &lows, cause.well, roof_m)),
+            together(&lows, roof_m),
+        ),
+        None => Remedy::new(None, None),
     };
     Ok(Some(RoofFinding {
         roof_m,

@@ -236,6 +236,13 @@ impl<'a> Words<'a> {
             }
             (None, _) => String::new(),
         };
+        if remedy.must_balance {
+            let why = "no rate can change alone, since pumping and injection must balance";
+            return match together.as_str() {
+                "" => format!("Not cleared by lower rates in proportion; {why}."),
+                _ => format!("Cleared by {together}; {why}."),
+            };
+        }
         match (alone.is_empty(), together.is_empty(), flag.cause) {
             (false, false, _) => format!("Cleared by {alone}, or by {together}."),
             (false, true, _) => format!("Cleared by {alone}."),

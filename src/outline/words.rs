@@ -24,11 +24,15 @@ impl Outline {
     /// (fixed head) and barrier granite edge (no flow)".
     pub fn words(&self, site: &Site) -> String {
         let kinds = self.shape.side_kinds();
-        let sides: Vec<String> = kinds
-            .iter()
-            .enumerate()
-            .map(|(side, kind)| format!("{} ({})", self.side_name(site, side), kind_words(*kind)))
-            .collect();
+        // One edge may bend round several sides; it is named once.
+        let mut sides: Vec<String> = Vec::new();
+        for (side, kind) in kinds.iter().enumerate() {
+            let words = format!("{} ({})", self.side_name(site, side), kind_words(*kind));
+            if !sides.contains(&words) {
+                sides.push(words);
+            }
+        }
+        let between = if sides.len() > 1 { "between" } else { "within" };
         let sides = names::listed(&sides);
         let name = self.shape.name();
         let stretched = if self.frame.stretch == super::Stretch::none() {
@@ -40,14 +44,14 @@ impl Outline {
             Shape::Axes { x, y } => match (width(x), width(y)) {
                 (None, None) if kinds.is_empty() => name.to_owned(),
                 (None, None) if kinds.len() == 1 => format!("{name} beside {sides}"),
-                (None, None) => format!("{name} between {sides}"),
+                (None, None) => format!("{name} {between} {sides}"),
                 (Some(width), None) | (None, Some(width)) => {
-                    format!("{name} {width} wide between {sides}")
+                    format!("{name} {width} wide {between} {sides}")
                 }
                 (Some(width), Some(length)) => format!("{name} {width} by {length} within {sides}"),
             },
             Shape::Wedge { angle_rad, .. } => {
-                format!("{name} of {} between {sides}", names::angle(angle_rad))
+                format!("{name} of {} {between} {sides}", names::angle(angle_rad))
             }
             Shape::Disk { radius_m } => {
                 format!(

@@ -69,3 +69,32 @@ fn every_example_runs() {
         insta::assert_snapshot!(plan.replace('/', "_"), printed(&output));
     }
 }
+
+/// In a closed basin no rate may change alone.
+#[test]
+fn a_closed_basin_in_balance_is_planned_and_kept_in_balance() {
+    let plan = r#"
+title = "Closed basin"
+crs = "EPSG:32633"
+units = "metric"
+[aquifer]
+transmissivity = 400.0
+[ambient]
+head = 50.0
+[[barrier]]
+name = "rim"
+line = [[412000.0, 5360000.0], [413000.0, 5360000.0], [413000.0, 5361500.0], [412000.0, 5361500.0], [412000.0, 5360000.0]]
+[[well]]
+name = "P"
+at = [412300.0, 5360500.0]
+pumping = 900.0
+radius = 0.2
+lowest_level = 48.0
+[[well]]
+name = "I"
+at = [412700.0, 5361100.0]
+injection = 900.0
+radius = 0.2
+"#;
+    insta::assert_snapshot!(printed(&with_plan(plan, "run")));
+}

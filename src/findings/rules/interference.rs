@@ -64,13 +64,7 @@ fn cause_and_remedy(
         .collect();
     let Some((well, part_m)) = largest(&parts).and_then(|well| Some((well, *parts.get(well)?)))
     else {
-        return (
-            None,
-            Remedy {
-                alone: None,
-                together,
-            },
-        );
+        return (None, Remedy::new(None, together));
     };
     let alone =
         largest_factor(part_m, 0.0, room_m - (interference_m - part_m)).and_then(|factor| {
@@ -81,5 +75,5 @@ fn cause_and_remedy(
         well,
         drawdown_m: sign * part_m,
     };
-    (Some(cause), Remedy { alone, together })
+    (Some(cause), Remedy::new(alone, together))
 }

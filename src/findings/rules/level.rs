@@ -58,13 +58,7 @@ impl Level<'_> {
             })
             .collect();
         let Some(cause) = largest(&with_own_loss) else {
-            return (
-                None,
-                Remedy {
-                    alone: None,
-                    together,
-                },
-            );
+            return (None, Remedy::new(None, together));
         };
         let part_m = parts.get(cause).copied().unwrap_or(0.0);
         let own_loss_m = if cause == self.finding.well {
@@ -81,6 +75,6 @@ impl Level<'_> {
             well: cause,
             drawdown_m: sign * (part_m + own_loss_m),
         };
-        (Some(cause), Remedy { alone, together })
+        (Some(cause), Remedy::new(alone, together))
     }
 }

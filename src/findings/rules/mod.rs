@@ -10,7 +10,9 @@ mod neighbour_over_limit;
 mod no_limit_given;
 
 use super::flag::{Flag, sort_by_severity};
+use super::remedy::Remedy;
 use super::{InterferenceMatrix, NeighbourFinding, RoofFinding, Solution, WellFinding};
+use crate::field::WellField;
 
 /// What the rules judge.
 pub struct Judged<'a> {
@@ -26,6 +28,12 @@ pub struct Judged<'a> {
     pub roof: Option<&'a RoofFinding>,
 }
 
+/// Whether a well stands in a closed basin.
+fn must_balance(judged: &Judged<'_>, well: usize) -> bool {
+    let field = judged.solution.field_of_well(well);
+    field.is_some_and(WellField::is_closed_basin)
+}
+
 /// Applies every rule; most severe first.
 pub fn flags(judged: &Judged<'_>) -> Vec<Flag> {
     let rules = [
@@ -38,6 +46,14 @@ pub fn flags(judged: &Judged<'_>) -> Vec<Flag> {
         no_limit_given::flags,
     ];
     let mut flags: Vec<Flag> = rules.iter().flat_map(|rule| rule(judged)).collect();
+    for flag in &mut flags {
+        if flag
+            .cause
+            .is_some_and(|cause| must_balance(judged, cause.well))
+        {
+            flag.remedy = flag.remedy.map(Remedy::in_balance);
+        }
+    }
     sort_by_severity(&mut flags);
     flags
 }

@@ -38,10 +38,10 @@ pub fn flags(judged: &Judged<'_>) -> Vec<Flag> {
                 allowed_m: Some(allowed_m),
             },
             cause,
-            remedy: Some(Remedy {
-                alone: cause.and_then(|cause| clearing_rate(judged, finding, cause.well)),
-                together: together(worst, allowed_m),
-            }),
+            remedy: Some(Remedy::new(
+                cause.and_then(|cause| clearing_rate(judged, finding, cause.well)),
+                together(worst, allowed_m),
+            )),
         })
     });
     over.collect()
