@@ -10,7 +10,7 @@ use super::solve::Solution;
 pub struct Layer {
     constant: f64,
     /// The density at each node.
-    densities: Vec<f64>,
+    pub(super) densities: Vec<f64>,
     /// The weight of each problem.
     weights: Vec<f64>,
 }
@@ -33,20 +33,25 @@ impl Solution {
 
     /// The value of a sum at a place of the region, its poles left out.
     pub fn value_without_poles(&self, layer: &Layer, x: Complex64) -> f64 {
-        let known = self.posed.iter().zip(&layer.weights);
-        let known: f64 = known
-            .filter(|(_, weight)| **weight != 0.0)
-            .map(|(posed, weight)| weight * posed.value_without_poles(x))
-            .sum();
         let rule = &self.system.mesh.rule;
         let mut effect = Effect::NONE;
         let blocks = layer.densities.chunks(rule.order());
-        let mut sum = layer.constant + known;
+        let mut sum = self.smooth_value(layer, x);
         for (source, block) in self.system.sources.iter().zip(blocks) {
             source.at(rule, x, &mut effect);
             sum += dot(&effect.values, block);
         }
         sum
+    }
+
+    /// What is neither panel nor pole of a sum.
+    pub(super) fn smooth_value(&self, layer: &Layer, x: Complex64) -> f64 {
+        let known = self.posed.iter().zip(&layer.weights);
+        let known = known.filter(|(_, weight)| **weight != 0.0);
+        layer.constant
+            + known
+                .map(|(posed, weight)| weight * posed.value_without_poles(x))
+                .sum::<f64>()
     }
 
     /// The value of a sum at a place of the region that is no pole.

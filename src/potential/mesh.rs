@@ -23,6 +23,12 @@ const POLE_ELLIPSE: f64 = 2.2;
 /// Panels are not cut smaller than this share of their side, in w.
 const SMALLEST: f64 = 1e-14;
 
+/// Corners of a smaller λ are cut from the start.
+const STRONG: f64 = 0.85;
+
+/// A smooth panel that misses its aim by more is cut in four.
+const QUARTERS: f64 = 100.0;
+
 /// Largest m.
 const HIGHEST_POWER: u32 = 8;
 
@@ -61,9 +67,18 @@ pub(super) struct Place {
     /// `outward` slope of a unit charge's term ln|a − c x| on its own side.
     pub bend: f64,
     pub condition: Condition,
+    /// Whether its residual counts as one in head: on head sides, and behind a
+    /// skin that is thin for its panel, where slope and head together are
+    /// divided by the skin's conductance.
+    pub counts_head: bool,
 }
 
 impl Place {
+    /// |dx/dt| over the skin: what a head across the skin lets through.
+    pub fn conductance(&self, skin_m: f64) -> f64 {
+        self.outward.norm() / skin_m
+    }
+
     /// Its parameter on its side, 0 to 1.
     pub fn s(&self) -> f64 {
         if self.is_reversed { 1.0 - self.u } else { self.u }
@@ -176,6 +191,12 @@ impl Panel {
         f64::from(self.power) * self.w(t).powi(below) * self.half
     }
 
+    /// t at u, beyond the panel too.
+    pub fn t(&self, u: f64) -> f64 {
+        let w = u.max(0.0).powf(f64::from(self.power).recip());
+        (w - self.middle) / self.half
+    }
+
     /// t of the root w = u^(1/m) nearest to the panel.
     pub fn local(&self, u: Complex64) -> Complex64 {
         (self.root(u) - self.middle) / self.half
@@ -211,6 +232,19 @@ impl Panel {
             outward: Complex64::I * self.curve.derivative(u) * right,
             bend: right * (self.curve.c() / below).im,
             condition,
+            counts_head: self.counts_head(condition),
+        }
+    }
+
+    fn counts_head(&self, condition: Condition) -> bool {
+        match condition {
+            Condition::Head => true,
+            Condition::Flux => false,
+            Condition::Clogged { skin_m } => [-1.0, 0.0, 1.0].into_iter().any(|t| {
+                let stretch = self.curve.derivative(self.u(t)).norm() * self.u_slope(t);
+                // Infinite on the last panel of a half-line.
+                !(stretch < skin_m)
+            }),
         }
     }
 }
@@ -223,12 +257,21 @@ pub(super) struct Mesh {
 }
 
 impl Mesh {
-    /// One panel a side, cut until every pole is well off all of them.
+    /// One panel a side, cut until every pole is well off all of them, and
+    /// where strong corners are known to ask for it.
     pub fn new(region: &Region, poles: &[Complex64], order: usize) -> Self {
         let mut panels = Vec::new();
         for (index, side) in region.sides().iter().enumerate() {
             let whole = Panel::whole(region, index, side.curve);
-            cut_near_poles(whole, poles, &mut panels);
+            let mut uncut = Vec::new();
+            cut_near_poles(whole, poles, &mut uncut);
+            for panel in uncut {
+                if has_strong_corner(region, &panel) {
+                    cut(region, panel, 1.0, &mut panels);
+                } else {
+                    panels.push(panel);
+                }
+            }
         }
         Self {
             panels,
@@ -284,20 +327,13 @@ impl Mesh {
 
 /// Cuts a panel where it is singular, or in two.
 fn cut(region: &Region, panel: Panel, excess: f64, panels: &mut Vec<Panel>) {
-    let exponent = |corner: usize, touches: bool| {
-        let joint = region.joint(corner).filter(|_| touches);
-        joint
-            .map(|joint| joint.exponent)
-            .filter(|exponent| exponent.is_finite())
-    };
     let turned = panel.turned(region);
-    let first = exponent(panel.corner, panel.is_first());
-    let last = exponent(turned.corner, panel.is_last());
-    match (first, last) {
-        (None, None) => panels.extend(panel.halves()),
+    match exponents(region, &panel) {
+        (None, None) => halve(panel, excess, panels),
         (Some(first), None) if panel.power == 1 => {
             panels.push(panel.with_power(power_for(first)));
         }
+        (Some(first), None) if is_whole(first, panel.power) => halve(panel, excess, panels),
         (Some(first), None) => grade(panel, levels(excess, first, panel.power), panels),
         (None, Some(last)) => panels.push(turned.with_power(power_for(last))),
         (Some(first), Some(last)) => {
@@ -309,15 +345,48 @@ fn cut(region: &Region, panel: Panel, excess: f64, panels: &mut Vec<Panel>) {
     }
 }
 
+/// λ of the corners that a panel touches, first and last, where singular.
+fn exponents(region: &Region, panel: &Panel) -> (Option<f64>, Option<f64>) {
+    let exponent = |corner: usize, touches: bool| {
+        let joint = region.joint(corner).filter(|_| touches)?;
+        Some(joint.exponent).filter(|exponent| exponent.is_finite())
+    };
+    let end = panel.turned(region).corner;
+    (
+        exponent(panel.corner, panel.is_first()),
+        exponent(end, panel.is_last()),
+    )
+}
+
+/// Whether a panel touches a corner at which its density is far from smooth.
+fn has_strong_corner(region: &Region, panel: &Panel) -> bool {
+    let (first, last) = exponents(region, panel);
+    let is_strong = |exponent: Option<f64>| exponent.is_some_and(|exponent| exponent < STRONG);
+    is_strong(first) || is_strong(last)
+}
+
+/// Cuts a smooth panel in two, or in four where it misses its aim by much.
+fn halve(panel: Panel, excess: f64, panels: &mut Vec<Panel>) {
+    for half in panel.halves() {
+        if excess > QUARTERS {
+            panels.extend(half.halves());
+        } else {
+            panels.push(half);
+        }
+    }
+}
+
 /// m for a corner's λ: the least that makes mλ whole, or else at least 2.
 fn power_for(exponent: f64) -> u32 {
-    let is_whole = |power: &u32| {
-        let product = f64::from(*power) * exponent;
-        product > 0.5 && (product - product.round()).abs() < 1e-9
-    };
     (2..=HIGHEST_POWER)
-        .find(is_whole)
+        .find(|&power| is_whole(exponent, power))
         .unwrap_or_else(|| ((2.0 / exponent).ceil() as u32).clamp(3, HIGHEST_POWER))
+}
+
+/// Whether the density is smooth in w: mλ is a whole number.
+fn is_whole(exponent: f64, power: u32) -> bool {
+    let product = f64::from(power) * exponent;
+    product > 0.5 && (product - product.round()).abs() < 1e-9
 }
 
 /// How often a panel at a corner is to be cut so that its residual, which

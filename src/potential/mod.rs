@@ -1,7 +1,9 @@
 //! Harmonic functions in regions of any outline, with a proven bound on their
 //! error.
 
+mod batch;
 mod curve;
+mod flux;
 mod kernel;
 mod layer;
 mod legendre;
@@ -12,6 +14,7 @@ mod solve;
 mod system;
 mod taper;
 
+pub use batch::RimmedPole;
 pub use curve::Curve;
 pub use layer::Layer;
 pub use problem::Problem;

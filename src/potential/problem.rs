@@ -74,11 +74,6 @@ impl Posed {
         self.problem.poles.iter().map(|(_, strength)| strength).sum()
     }
 
-    /// The known part at a place.
-    pub fn value(&self, x: Complex64) -> f64 {
-        self.smooth_value(x) + self.pole_values(x) + self.taper_values(x)
-    }
-
     /// ∂/∂x − i ∂/∂y of the known part.
     pub fn derivative(&self, x: Complex64) -> Complex64 {
         let tapers = self.tapers.iter().map(|taper| taper.derivative(x));
@@ -99,7 +94,7 @@ impl Posed {
             Condition::Head => self.head(place) - self.known_head(region, place),
             Condition::Flux => -self.known_slope(region, place),
             Condition::Clogged { skin_m } => {
-                let conductance = place.outward.norm() / skin_m;
+                let conductance = place.conductance(skin_m);
                 let missing = self.head(place) - self.known_head(region, place);
                 conductance * missing - self.known_slope(region, place)
             }
@@ -118,18 +113,23 @@ impl Posed {
         self.smooth_value(x) + self.pole_values(place.x) + tapers.sum::<f64>()
     }
 
-    /// Outward slope of the known part on a side that is no head side.
+    /// Outward slope of the known part on a side, in the measure of its panel.
     fn known_slope(&self, region: &Region, place: &Place) -> f64 {
+        let poles = self.problem.poles.iter();
+        let poles = poles.map(|(pole, strength)| of_pole(place.x, *pole).1 * *strength);
+        (poles.sum::<Complex64>() * place.outward).re + self.slope_without_poles(region, place)
+    }
+
+    /// The same but for the poles.
+    pub fn slope_without_poles(&self, region: &Region, place: &Place) -> f64 {
         let is_endless = drawn_end(region, place).is_some();
         let smooth = if is_endless && place.condition == Condition::Flux {
             Complex64::ZERO
         } else {
             self.smooth_derivative(place.x)
         };
-        let poles = self.problem.poles.iter();
-        let poles = poles.map(|(pole, strength)| of_pole(place.x, *pole).1 * *strength);
         let tapers = self.tapers.iter().map(|taper| taper.derivative_on(place));
-        let all = smooth + poles.sum::<Complex64>() + tapers.sum::<Complex64>();
+        let all = smooth + tapers.sum::<Complex64>();
         (all * place.outward).re
     }
 

@@ -2,10 +2,12 @@
 //! proven to be small enough.
 //!
 //! The error e of a solution is harmonic, so it is largest on the sides. On
-//! head sides it is measured there: at most δ. On flux and clogged sides its
-//! slope is: at most ε(p) on panel p, in the panel's own measure. Let φ be
-//! harmonic, zero on head sides, with slope ω(p) ≥ ε(p) (on clogged sides slope
-//! and head together): then |e| ≤ δ + φ everywhere. φ is one more solution of
+//! head sides it is measured there: at most δ. On flux sides its slope is: at
+//! most ε(p) on panel p, in the panel's own measure. On clogged sides the sum
+//! ∂e/∂n + e/skin is; a constant δ outweighs it where it is at most δ/skin, so
+//! it counts as head where the skin is thin for its panel and as slope elsewhere.
+//! Let φ be harmonic, zero on head sides, with slope ω(p) ≥ ε(p) on flux sides
+//! (on clogged sides slope and head together; zero where they count as head): then |e| ≤ δ + φ everywhere. φ is one more solution of
 //! the same system; its own residual, δ′ in head and a share ε′ of ω in slope,
 //! obeys the same rule, so that
 //!
@@ -17,7 +19,7 @@
 
 use super::mesh::{Mesh, Place};
 use super::problem::{Posed, Problem};
-use super::region::{Condition, Region};
+use super::region::Region;
 use super::system::{Densities, System, asked_by};
 
 /// Residuals between two checks exceed the larger of both at most by this: a
@@ -39,6 +41,8 @@ pub struct Solution {
     pub(super) posed: Vec<Posed>,
     pub(super) system: System,
     pub(super) densities: Densities,
+    /// Outward slope of the panels' potential at each node, for each problem.
+    pub(super) node_slopes: Vec<f64>,
     bound_m: f64,
     rounds: usize,
 }
@@ -81,7 +85,7 @@ impl Solution {
             let excess = measure.excess(aim_m);
             let is_idle = excess.iter().all(|&excess| excess <= 1.0);
             let finer = system.mesh.refined(&region, &excess);
-            let is_stuck = !is_idle && finer.panels.len() == system.mesh.panels.len();
+            let is_stuck = !is_idle && finer.panels == system.mesh.panels;
             if best.as_ref().is_none_or(|best| bound_m <= best.2) {
                 best = Some((system, densities, bound_m));
                 if bound_m <= target_m {
@@ -104,9 +108,11 @@ impl Solution {
                 (system, densities, f64::INFINITY)
             }
         };
+        let node_slopes = system.fields(&densities, system.nodes()).slopes;
         Self {
             region,
             posed,
+            node_slopes,
             system,
             densities,
             bound_m,
@@ -170,15 +176,14 @@ fn measure(
     let (heads_m, slopes) = largest(system, &checks, &sums);
     let head_m = heads_m.iter().copied().fold(0.0, f64::max);
     let slope = slopes.iter().copied().fold(0.0, f64::max);
-    let bound_m = if slope == 0.0 || head_m > target_m {
-        head_m + if slope == 0.0 { 0.0 } else { f64::INFINITY }
+    // φ is not worth solving for while the residuals alone exceed the target.
+    let bound_m = if slope == 0.0 {
+        head_m
+    } else if head_m.max(slope) > target_m {
+        f64::INFINITY
     } else {
         head_m + comparison(region, system, &checks, &slopes)
     };
-    if std::env::var("DBG").is_ok() {
-        let worst = heads_m.iter().enumerate().fold((0.0,0), |a,b| if *b.1>a.0 {(*b.1,b.0)} else {a});
-        println!(" N {} head {head_m:.2e} slope {slope:.2e} bound {bound_m:.2e} worst head panel {:?}", system.mesh.unknowns(), system.mesh.panels[worst.1]);
-    }
     Measure {
         heads_m,
         slopes,
@@ -193,9 +198,10 @@ fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f6
     panels
         .map(|(places, sums)| {
             let largest = BETWEEN_CHECKS * sums.iter().copied().fold(0.0, f64::max);
-            match places.first().map(|place| place.condition) {
-                Some(Condition::Head) | None => (largest, 0.0),
-                Some(_) => (0.0, largest),
+            if places.first().is_some_and(|place| place.counts_head) {
+                (largest, 0.0)
+            } else {
+                (0.0, largest)
             }
         })
         .unzip()
@@ -205,9 +211,10 @@ fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f6
 fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]) -> f64 {
     let floor = SMALLEST_OMEGA * slopes.iter().copied().fold(0.0, f64::max);
     let omega: Vec<f64> = slopes.iter().map(|slope| slope.max(floor)).collect();
-    let asked = |_: usize, place: &Place| match place.condition {
-        Condition::Head => 0.0,
-        Condition::Flux | Condition::Clogged { .. } => {
+    let asked = |_: usize, place: &Place| {
+        if place.counts_head {
+            0.0
+        } else {
             omega.get(place.panel).copied().unwrap_or(floor)
         }
     };
@@ -223,10 +230,6 @@ fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]
     let head_m = heads_m.iter().copied().fold(0.0, f64::max);
     let shares = slopes.iter().zip(&omega).map(|(slope, omega)| slope / omega);
     let share = shares.fold(0.0, f64::max);
-    if std::env::var("DBG").is_ok() {
-        let worst = slopes.iter().zip(&omega).enumerate().map(|(i,(s,o))| (s/o,i)).fold((0.0,0), |a,b| if b.0>a.0 {b} else {a});
-        println!("  phi: highest {highest:.2e} head {head_m:.2e} share {share:.2e} at {:?} omega {:.2e} floor {floor:.2e}", system.mesh.panels[worst.1], omega[worst.1]);
-    }
     if share < 1.0 && region.has_head() {
         (highest + head_m) / (1.0 - share)
     } else {

@@ -179,7 +179,8 @@ impl Fields {
             .for_each(|(((place, residuals), values), slopes)| {
                 let fields = values.iter().zip(slopes).enumerate();
                 for (residual, (problem, (value, slope))) in residuals.iter_mut().zip(fields) {
-                    *residual = row(place, *value, *slope) - asked(problem, place);
+                    let missed = row(place, *value, *slope) - asked(problem, place);
+                    *residual = missed / unit(place);
                 }
             });
         residuals
@@ -202,7 +203,15 @@ fn row(place: &Place, value: f64, slope: f64) -> f64 {
     match place.condition {
         Condition::Head => value,
         Condition::Flux => slope,
-        Condition::Clogged { skin_m } => slope + value * place.outward.norm() / skin_m,
+        Condition::Clogged { skin_m } => slope + value * place.conductance(skin_m),
+    }
+}
+
+/// What one metre of head residual amounts to in a place's row, or one of slope.
+fn unit(place: &Place) -> f64 {
+    match place.condition {
+        Condition::Clogged { skin_m } if place.counts_head => place.conductance(skin_m),
+        _ => 1.0,
     }
 }
 
@@ -210,7 +219,7 @@ fn row(place: &Place, value: f64, slope: f64) -> f64 {
 fn scale(place: &Place) -> f64 {
     match place.condition {
         Condition::Head | Condition::Flux => 1.0,
-        Condition::Clogged { skin_m } => (place.outward.norm() / skin_m).max(1.0).recip(),
+        Condition::Clogged { skin_m } => place.conductance(skin_m).max(1.0).recip(),
     }
 }
 
