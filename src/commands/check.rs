@@ -13,6 +13,7 @@ use crate::layers::words::{Words, one_line};
 use crate::layers::{CAUTION, Properties, Units};
 use crate::outline::Kind;
 use crate::plan::{Plan, PlanFaults};
+use crate::site::Site;
 
 /// What the command takes.
 #[derive(Debug, clap::Args)]
@@ -99,15 +100,8 @@ impl<'a> Report<'a> {
         for field in self.solution.fields() {
             let told = |text: &str| self.plan.units.beside(text);
             line("outline", &told(&one_line(&field.outline().words(site))));
-            line(
-                "method",
-                &format!(
-                    "{}, right to {:.0e} {}",
-                    told(&field.method()),
-                    words.units().length(field.error_bound_m()),
-                    words.units().length_ending()
-                ),
-            );
+            line("method", &told(&field.method()));
+            line("accuracy", &accuracy(&words, site, field));
             line("steady state", &steady_state(self.solution, field));
         }
         let counts = format!(
@@ -138,6 +132,7 @@ impl<'a> Report<'a> {
                     .with("words", told(&field.outline().words(site)))
                     .with("method", told(&field.method()))
                     .length("error_bound", field.error_bound_m())
+                    .with("accuracy_reached", is_accurate(site, field))
                     .with("steady_state", steady_state(self.solution, field))
                     .into()
             })
@@ -155,6 +150,21 @@ impl<'a> Report<'a> {
             "looks_wrong": self.oddities,
             "caution": CAUTION,
         })
+    }
+}
+
+/// Whether an aquifer's proven error is no larger than the plan accepts.
+fn is_accurate(site: &Site, field: &WellField) -> bool {
+    field.error_bound_m() <= site.head_tolerance.si()
+}
+
+/// How far an aquifer's heads are right, and whether that is enough.
+fn accuracy(words: &Words<'_>, site: &Site, field: &WellField) -> String {
+    let bound_m = field.error_bound_m();
+    if is_accurate(site, field) {
+        words.proven(bound_m)
+    } else {
+        words.inexact(bound_m, site.head_tolerance.si())
     }
 }
 

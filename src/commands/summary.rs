@@ -19,6 +19,7 @@ pub fn of(planned: &Planned<'_>, out: &Path) -> String {
     let mut text = format!("{}\n", one_line(&planned.plan.title));
     text.push_str(&recognised(planned));
     text.push_str(&totals(planned));
+    text.push_str(&exchange(planned));
     text.push('\n');
     text.push_str(&wells(planned));
     if !planned.findings.neighbours.is_empty() {
@@ -47,6 +48,7 @@ pub fn recognised(planned: &Planned<'_>) -> String {
             field.method()
         );
         sentence = planned.plan.units.beside(&sentence);
+        let _ = write!(sentence, "; {}", words.proven(field.error_bound_m()));
         if several {
             let _ = write!(sentence, "; {}", held_wells(&words, &field.outline().wells));
         }
@@ -102,6 +104,34 @@ fn totals(planned: &Planned<'_>) -> String {
         let _ = write!(text, "; taken from {}", given.join(", "));
     }
     wrapped(&text, "", "  ")
+}
+
+/// What passes between rivers and aquifer before pumping and after, where
+/// something does before.
+fn exchange(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let rate = |m3_d: f64| {
+        let verb = if m3_d < 0.0 { "takes" } else { "gives" };
+        format!("{verb} {}", words.rate(m3_d.abs()))
+    };
+    let site = planned.solution.site();
+    let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
+    let told: Vec<String> = boundaries
+        .filter_map(|(finding, edge)| {
+            let before = finding.exchange_before_m3_d.filter(|&m3_d| m3_d != 0.0)?;
+            let after = finding.exchange_after_m3_d()?;
+            Some(format!(
+                "{} {} before pumping, {} after",
+                one_line(&edge.name),
+                rate(before),
+                rate(after)
+            ))
+        })
+        .collect();
+    if told.is_empty() {
+        return String::new();
+    }
+    wrapped(&told.join("; "), "", "  ")
 }
 
 /// A table with a plain heading and numbers to the right.
