@@ -132,7 +132,7 @@ impl<'a> Report<'a> {
                     .with("words", told(&field.outline().words(site)))
                     .with("method", told(&field.method()))
                     .length("error_bound", field.error_bound_m())
-                    .with("accuracy_reached", is_accurate(site, field))
+                    .with("accuracy_reached", field.is_accurate(site.head_tolerance))
                     .with("steady_state", steady_state(self.solution, field))
                     .into()
             })
@@ -153,15 +153,10 @@ impl<'a> Report<'a> {
     }
 }
 
-/// Whether an aquifer's proven error is no larger than the plan accepts.
-fn is_accurate(site: &Site, field: &WellField) -> bool {
-    field.error_bound_m() <= site.head_tolerance.si()
-}
-
 /// How far an aquifer's heads are right, and whether that is enough.
 fn accuracy(words: &Words<'_>, site: &Site, field: &WellField) -> String {
     let bound_m = field.error_bound_m();
-    if is_accurate(site, field) {
+    if field.is_accurate(site.head_tolerance) {
         words.proven(bound_m)
     } else {
         words.inexact(bound_m, site.head_tolerance.si())
@@ -201,7 +196,10 @@ fn steady_state(solution: &Solution, field: &WellField) -> String {
         }
     }
     match (rivers.is_empty(), site.aquifer.influence_radius) {
-        (false, _) => format!("exists: {} holds the head", rivers.join(" and ")),
+        (false, _) => {
+            let hold = if rivers.len() > 1 { "hold" } else { "holds" };
+            format!("exists: {} {hold} the head", rivers.join(" and "))
+        }
         (true, Some(_)) => {
             "assumed: no edge holds the head, so each cone ends at the influence radius".into()
         }

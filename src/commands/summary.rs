@@ -110,21 +110,23 @@ fn totals(planned: &Planned<'_>) -> String {
 /// something does before.
 fn exchange(planned: &Planned<'_>) -> String {
     let words = Words::of(planned);
-    let rate = |m3_d: f64| {
-        let verb = if m3_d < 0.0 { "takes" } else { "gives" };
-        format!("{verb} {}", words.rate(m3_d.abs()))
-    };
+    let verb = |m3_d: f64| if m3_d < 0.0 { "takes" } else { "gives" };
     let site = planned.solution.site();
     let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
     let told: Vec<String> = boundaries
         .filter_map(|(finding, edge)| {
             let before = finding.exchange_before_m3_d.filter(|&m3_d| m3_d != 0.0)?;
             let after = finding.exchange_after_m3_d()?;
+            let again = match verb(after) {
+                same if same == verb(before) => String::new(),
+                other => format!("{other} "),
+            };
             Some(format!(
-                "{} {} before pumping, {} after",
+                "{} {} {} before pumping, {again}{} after",
                 one_line(&edge.name),
-                rate(before),
-                rate(after)
+                verb(before),
+                words.rate(before.abs()),
+                words.rate(after.abs())
             ))
         })
         .collect();

@@ -17,7 +17,7 @@ use rayon::prelude::*;
 
 use crate::green::{Green, Source};
 use crate::outline::{Kind, Outline, Shape};
-use crate::site::{Point, Refusal, Site, Vector};
+use crate::site::{Length, Point, Refusal, Site, Vector};
 use ambient::AmbientHead;
 
 /// Points that one task evaluates: enough to hide the cost of a task.
@@ -211,6 +211,11 @@ impl WellField {
     /// has no other error, on its rounding.
     pub fn error_bound_m(&self) -> f64 {
         self.error_bound_m
+    }
+
+    /// Whether the heads are proven right to within `accepted`.
+    pub fn is_accurate(&self, accepted: Length) -> bool {
+        self.error_bound_m <= accepted.si()
     }
 
     /// The edge, by its index in `Site::edges`, beside which the bound is

@@ -61,9 +61,7 @@ pub fn all(solution: &Solution) -> Vec<BoundaryFinding> {
                     }
                 }
             }
-            let before: Option<f64> = beside()
-                .map(|field| field.ambient_inflow_m3_d(edge))
-                .sum();
+            let before: Option<f64> = beside().map(|field| field.ambient_inflow_m3_d(edge)).sum();
             BoundaryFinding {
                 edge,
                 bounds_an_aquifer,
