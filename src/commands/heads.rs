@@ -6,6 +6,7 @@ use super::console::Console;
 use super::failure::Failure;
 use super::points::{self, NamedPoint};
 use super::source::{PlanArgument, solve};
+use super::summary::capitalised;
 use crate::findings::{Solution, WellsAndNeighbours, edge_between};
 use crate::layers::words::Words;
 use crate::layers::{Units, safe_cell};
@@ -49,7 +50,8 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
         console.note(&super::console::wrapped(&note, "note: ", "      "));
     }
     for text in inexact(&plan, &solution) {
-        console.note(&super::console::wrapped(&text, "note: ", "      "));
+        let sentence = format!("{}.", capitalised(&text));
+        console.note(&super::console::wrapped(&sentence, "note: ", "      "));
     }
     let rows = match wanted {
         Some(wanted) => at_points(&plan, &solution, wanted),

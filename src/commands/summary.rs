@@ -68,7 +68,7 @@ fn held_wells(words: &Words<'_>, wells: &[usize]) -> String {
 }
 
 /// A sentence with a capital at its head.
-fn capitalised(sentence: &str) -> String {
+pub fn capitalised(sentence: &str) -> String {
     let mut characters = sentence.chars();
     characters.next().map_or_else(String::new, |first| {
         first.to_uppercase().chain(characters).collect()

@@ -40,11 +40,11 @@ const NO_GRADIENT: f64 = 1e-6;
 #[derive(Clone, Debug)]
 pub(super) struct AmbientHead {
     /// Head at the canonical origin, without the other parts.
-    level_m: f64,
+    pub(super) level_m: f64,
     /// ∂h/∂x + i ∂h/∂y of the linear part.
     pub(super) slope: Complex64,
     /// Around a lake the linear part is bent so that the shore stays level.
-    lake_radius_m: Option<f64>,
+    pub(super) lake_radius_m: Option<f64>,
     /// Rise of the head over the angle of a wedge, metres a radian.
     pub(super) per_radian_m: f64,
     /// Parts of sides whose stage differs from `level_m`, and by how much.

@@ -47,30 +47,41 @@ impl WellField {
 
 /// Inflow through a part of a fixed-head side over the transmissivity, metres.
 fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) -> Option<f64> {
-    if head.per_radian_m != 0.0 || !head.measured.is_empty() {
+    // Named one by one, so that no new part of the head is forgotten here.
+    let AmbientHead {
+        level_m: _,
+        slope,
+        lake_radius_m: _,
+        per_radian_m,
+        measured,
+    } = head;
+    if *per_radian_m != 0.0 || !measured.is_empty() {
         return None;
     }
-    let across = inward(shape, side).map_or(0.0, |normal| (head.slope.conj() * normal).re);
-    let length_m = along.end - along.start;
-    match across {
-        0.0 => Some(0.0),
-        _ => length_m.is_finite().then_some(-across * length_m),
+    let across = (slope.conj() * inward(shape, side)).re;
+    if across == 0.0 {
+        return Some(0.0);
     }
+    let length_m = along.end - along.start;
+    length_m.is_finite().then_some(-across * length_m)
 }
 
-/// The unit normal of an axis-parallel side, into the aquifer. Other shapes
-/// have no linear head that crosses their sides.
-fn inward(shape: &Shape, side: usize) -> Option<Complex64> {
-    let Shape::Axes { x, y } = *shape else {
-        return None;
+/// The unit normal of an axis-parallel side, into the aquifer; zero for shapes
+/// through whose sides no linear head drives water.
+fn inward(shape: &Shape, side: usize) -> Complex64 {
+    let (x, y) = match *shape {
+        Shape::Axes { x, y } => (x, y),
+        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+            return Complex64::ZERO;
+        }
     };
     let count = |axis: Axis| match axis {
         Axis::Open => 0,
         Axis::OneEdge(_) => 1,
         Axis::TwoEdges { .. } => 2,
     };
-    let (across_x, across_y) = (Complex64::new(1.0, 0.0), Complex64::i());
-    let normals = [across_x, -across_x].into_iter().take(count(x));
-    let more = [across_y, -across_y].into_iter().take(count(y));
-    normals.chain(more).nth(side)
+    let (east, north) = (Complex64::ONE, Complex64::I);
+    let normals = [east, -east].into_iter().take(count(x));
+    let mut normals = normals.chain([north, -north].into_iter().take(count(y)));
+    normals.nth(side).unwrap_or_default()
 }

@@ -1,15 +1,19 @@
-//! How far heads are right, in words. A bound is rounded up to one digit, so
+//! How exactly heads are computed, in words. A bound is rounded up to one digit, so
 //! that what a person reads is a bound too.
 
 use super::{Words, one_line};
 
 impl Words<'_> {
-    /// "heads are right to 2e-11 m (proven bound)".
+    /// "heads are computed to 2e-11 m (proven bound)". Of the computation, not
+    /// of the ground: hence not "right to".
     pub fn proven(&self, bound_m: f64) -> String {
         if !bound_m.is_finite() {
             return "no bound on the error of the heads could be proven".into();
         }
-        format!("heads are right to {} (proven bound)", self.bound(bound_m))
+        format!(
+            "heads are computed to {} (proven bound)",
+            self.bound(bound_m)
+        )
     }
 
     /// A proven bound against what the plan accepts.
@@ -19,7 +23,7 @@ impl Words<'_> {
             return format!("{}; [accuracy] accepts {accepted}", self.proven(bound_m));
         }
         format!(
-            "heads are proven right only to {}, more than the {accepted} that [accuracy] accepts",
+            "heads are computed only to {} (proven bound), more than the {accepted} that [accuracy] accepts",
             self.bound(bound_m)
         )
     }
