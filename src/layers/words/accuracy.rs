@@ -84,8 +84,46 @@ fn legible(text: &str) -> String {
 }
 
 #[cfg(test)]
+#[allow(
+    clippy::unwrap_used,
+    reason = "a test that meets something unexpected should fail"
+)]
 mod tests {
+    use std::path::Path;
+
     use super::*;
+    use crate::layers::Units;
+    use crate::plan::Plan;
+
+    const DEMO: &str = include_str!("../../../examples/demo.toml");
+
+    /// Edge 0 of the demo is the river Ostra.
+    #[test]
+    fn the_remedy_names_what_makes_the_error() {
+        let plan = Plan::from_text("demo.toml", DEMO, Path::new(".")).unwrap();
+        let words = Words::new(&plan.site, Units(plan.units));
+        let cases = [
+            (
+                3.2e-3,
+                Some(0),
+                "Cleared by [accuracy] head = 0.004, or by a simpler outline near Ostra.",
+            ),
+            (
+                3.2e-9,
+                None,
+                "Cleared by [accuracy] head = 4e-9: rounding leaves no less.",
+            ),
+            (
+                f64::INFINITY,
+                Some(0),
+                "No [accuracy] clears it; a simpler outline near Ostra may.",
+            ),
+            (f64::NAN, None, "No [accuracy] clears it."),
+        ];
+        for (bound_m, edge, text) in cases {
+            assert_eq!(words.exactness_remedy(bound_m, edge), text);
+        }
+    }
 
     /// By hand.
     #[test]

@@ -10,7 +10,7 @@ pub(in crate::plan) static INTERFERENCE_SHARE: Key = quantity(
 pub(in crate::plan) static HEAD_ACCURACY: Key = quantity(
     "head",
     Measure::between(Dimension::Length, 1e-9, 10.0),
-    "The error of a head that the plan accepts; where no smaller one can be proven, this is flagged.",
+    "The head error that the plan accepts.",
 );
 pub(in crate::plan) static EXTENT: Key = key(
     "extent",
