@@ -84,10 +84,6 @@ fn legible(text: &str) -> String {
 }
 
 #[cfg(test)]
-#[allow(
-    clippy::unwrap_used,
-    reason = "a test that meets something unexpected should fail"
-)]
 mod tests {
     use std::path::Path;
 
