@@ -33,14 +33,15 @@ pub(super) fn add(
             .iter()
             .filter(|other| other.0 != *index)
             .flat_map(|other| circle.met_by_circle(&other.1));
-        let of_places = places.iter().filter_map(|place| circle.met_by_place(*place));
+        let of_places = places
+            .iter()
+            .filter_map(|place| circle.met_by_place(*place));
         let met: Vec<f64> = of_courses.chain(of_circles).chain(of_places).collect();
         let corners = circle.corners(&met);
         let corners: Vec<Point> = corners.into_iter().map(|at| stretch.apply(at)).collect();
         let following = corners.iter().cycle().skip(1);
         let chords = corners.iter().zip(following);
-        let chords =
-            chords.map(|(a, b)| Stroke::between(*index, Role::Chord, (0, 0), [*a, *b]));
+        let chords = chords.map(|(a, b)| Stroke::between(*index, Role::Chord, (0, 0), [*a, *b]));
         if let Some(strokes) = of_edges.get_mut(*index) {
             strokes.extend(chords);
         }

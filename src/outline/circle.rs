@@ -85,8 +85,7 @@ impl Circle {
             return Vec::new();
         }
         // Law of cosines at this centre.
-        let along = 0.5
-            * (distance + (self.radius_m - other.radius_m) * sum / distance);
+        let along = 0.5 * (distance + (self.radius_m - other.radius_m) * sum / distance);
         let half_angle = (along / self.radius_m).clamp(-1.0, 1.0).acos();
         let toward = between.y.atan2(between.x);
         vec![toward - half_angle, toward + half_angle]

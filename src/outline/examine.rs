@@ -86,12 +86,7 @@ fn misplaced(
 
 /// Whether another side runs the other way at a place: both banks of an edge
 /// that has the aquifer on either side.
-fn has_twin(
-    boundary: &Boundary,
-    side: &BoundarySide,
-    z: Complex64,
-    heading: Complex64,
-) -> bool {
+fn has_twin(boundary: &Boundary, side: &BoundarySide, z: Complex64, heading: Complex64) -> bool {
     let runs_against = |other: &&BoundarySide| {
         let curve = &other.curve;
         let along = curve.along();
@@ -116,7 +111,10 @@ fn has_twin(
             && (curve.at(position) - z).norm() <= BESIDE_M
             && (curve.heading(position) * heading.conj()).re < 0.0
     };
-    let others = boundary.sides.iter().filter(|other| other.edge == side.edge);
+    let others = boundary
+        .sides
+        .iter()
+        .filter(|other| other.edge == side.edge);
     others.into_iter().any(|other| runs_against(&other))
 }
 

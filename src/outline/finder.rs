@@ -6,7 +6,6 @@ use super::general::{Boundary, BoundarySide};
 use super::inside::Inside;
 use super::nearest::Nearest;
 use super::recognise::Context;
-use crate::site::Point;
 
 /// The two searches over the sides of a boundary.
 #[derive(Debug)]
@@ -27,10 +26,5 @@ impl Finder {
             inside: Inside::of(boundary, frame.to_canonical(well.at)),
             nearest: Nearest::of(frame, sides),
         })
-    }
-
-    /// Distance of a place from the nearest side, metres of the site.
-    pub fn distance_m(&self, point: Point) -> f64 {
-        self.nearest.distance_m(point)
     }
 }

@@ -102,17 +102,26 @@ impl Inside {
         if within != place {
             let crossed = self.rays.iter().filter(|ray| ray.is_crossed(place, within));
             is_inside ^= crossed.count() % 2 == 1;
-            let near = || self.rays.iter().any(|ray| ray.is_near(place, slack * scale));
+            let near = || {
+                self.rays
+                    .iter()
+                    .any(|ray| ray.is_near(place, slack * scale))
+            };
             return is_inside || near();
         }
-        let listed = || list.iter().filter_map(|&line| self.lines.get(line as usize));
+        let listed = || {
+            list.iter()
+                .filter_map(|&line| self.lines.get(line as usize))
+        };
         is_inside ^= listed().filter(|line| line.holds_beyond(place)).count() % 2 == 1;
         is_inside || listed().any(|line| line.is_near(place, slack))
     }
 
     /// Whether a way crosses an odd number of some pieces.
     fn crosses(&self, list: &[u32], from: Complex64, to: Complex64) -> bool {
-        let lines = list.iter().filter_map(|&line| self.lines.get(line as usize));
+        let lines = list
+            .iter()
+            .filter_map(|&line| self.lines.get(line as usize));
         lines.filter(|line| line.is_crossed(from, to)).count() % 2 == 1
     }
 

@@ -6,7 +6,7 @@
 
 use std::f64::consts::FRAC_PI_8;
 
-use geo::{Coord, HasKernel, Kernel, Orientation};
+use geo::{Coord, GeoNum, Kernel, Orientation};
 use num_complex::Complex64;
 
 use super::general::{Boundary, BoundaryChain, BoundarySide, Curve};
@@ -37,8 +37,7 @@ pub(super) struct ArcBeyond {
 /// Source: Shewchuk (1997), adaptive predicates, as `geo` has them.
 pub(super) fn lies_left(a: Complex64, b: Complex64, place: Complex64) -> bool {
     let coordinate = |z: Complex64| Coord { x: z.re, y: z.im };
-    let turn =
-        <f64 as HasKernel>::Ker::orient2d(coordinate(a), coordinate(b), coordinate(place));
+    let turn = <f64 as GeoNum>::Ker::orient2d(coordinate(a), coordinate(b), coordinate(place));
     turn == Orientation::CounterClockwise
 }
 
@@ -72,8 +71,7 @@ impl Line {
         let outward = place - arc.centre;
         let middle = 0.5 * (self.a + self.b) - arc.centre;
         let height = (outward * middle.conj()).re / middle.norm();
-        (outward.norm() - arc.radius).abs() <= distance
-            && height >= middle.norm() - distance
+        (outward.norm() - arc.radius).abs() <= distance && height >= middle.norm() - distance
     }
 }
 
@@ -100,7 +98,9 @@ fn of_chain(boundary: &Boundary, chain: &BoundaryChain, reach: f64) -> Vec<Line>
             Curve::RayOut { from, direction } => {
                 lines.push(straight(from, from + direction * reach));
             }
-            Curve::Arc { .. } => lines.extend(chords(side, joint(before, side), joint(side, after))),
+            Curve::Arc { .. } => {
+                lines.extend(chords(side, joint(before, side), joint(side, after)))
+            }
         }
     }
     lines

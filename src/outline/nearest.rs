@@ -181,7 +181,9 @@ impl Course {
     /// A place to sort it by.
     fn anchor(&self) -> Point {
         match *self {
-            Self::Straight(from, along, length) if length.is_finite() => from + along * (0.5 * length),
+            Self::Straight(from, along, length) if length.is_finite() => {
+                from + along * (0.5 * length)
+            }
             Self::Straight(from, _, _) => from,
             Self::Round(centre, radius, middle, _, _) => centre + middle * radius,
         }
