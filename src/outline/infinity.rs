@@ -13,6 +13,7 @@ use super::general::{BoundarySide, Curve};
 use super::names;
 use super::recognise::Context;
 use super::shape::Kind;
+use super::stroke::TOUCH_M;
 
 /// Stages that differ by less count as the same, metres.
 const SAME_STAGE_M: f64 = 1e-9;
@@ -76,9 +77,15 @@ fn common(out: &BoundarySide, back: &BoundarySide, tolerance_rad: f64) -> Option
         return None;
     };
     let turn = (direction.conj() * other).arg();
-    let lies_left = (direction.conj() * (to - from)).im > 0.0;
     let mean = direction + other;
-    (turn.abs() <= tolerance_rad && lies_left).then(|| mean / mean.norm())
+    let is_between = turn.abs() <= tolerance_rad && lies_left(direction, from, to);
+    is_between.then(|| mean / mean.norm())
+}
+
+/// Whether a place lies to the left of a half-line; on the other bank of the
+/// same one it does not.
+pub(super) fn lies_left(direction: Complex64, from: Complex64, place: Complex64) -> bool {
+    (direction.conj() * (place - from)).im > TOUCH_M
 }
 
 /// That two parallel rivers have one stage far away.

@@ -64,9 +64,17 @@ impl Line {
     pub fn is_near(&self, place: Complex64, distance: f64) -> bool {
         let chord = self.b - self.a;
         let Some(arc) = self.arc else {
-            let share = ((place - self.a) * chord.conj()).re / chord.norm_sqr();
-            let foot = self.a + chord * share.clamp(0.0, 1.0);
-            return (place - foot).norm() <= distance;
+            // Measured from the end nearer to the place, which the length of
+            // a half-line does not blur.
+            let from_a = (place - self.a).norm() <= (place - self.b).norm();
+            let (near, chord) = if from_a {
+                (self.a, chord)
+            } else {
+                (self.b, -chord)
+            };
+            let offset = (place - near) * chord.conj() / chord.norm();
+            let past = offset.re.min(0.0);
+            return offset.im.hypot(past) <= distance;
         };
         let outward = place - arc.centre;
         let middle = 0.5 * (self.a + self.b) - arc.centre;

@@ -4,14 +4,17 @@
 //! along a square far outside; the rings are then cut at the rectangle's four
 //! lines, one after the other. At each line the places where rings leave and
 //! come back alternate, so each leave is joined with the next return. A vertex
-//! on the line counts as within, whichever ring it belongs to.
+//! on the line counts as outside, so a side along it stays where the aquifer
+//! lies within, drawn by that join, and else vanishes.
+
+use std::f64::consts::{PI, TAU};
 
 use geo::{Contains, Coord, LineString, MultiPolygon, Polygon};
 use num_complex::Complex64;
 
 use super::frame::Frame;
 use super::general::{Boundary, BoundaryChain, Curve};
-use super::walk;
+use super::{infinity, walk};
 use crate::site::{Extent, Point};
 
 /// Twice the area below which a ring is nothing, m².
@@ -75,11 +78,18 @@ fn rings(frame: &Frame, boundary: &Boundary, extent: Extent, far: Extent) -> Vec
         .map(|chain| path(frame, boundary, chain, extent, far))
         .collect();
     let mut ring = Vec::new();
-    let following = paths.iter().cycle().skip(1);
-    for (path, next) in paths.iter().zip(following) {
+    let following = paths.iter().zip(&open).cycle().skip(1);
+    for ((path, chain), (next, other)) in paths.iter().zip(&open).zip(following) {
         ring.extend(path);
         if let (Some(end), Some(start)) = (path.last(), next.first()) {
-            ring.extend(around(far, path, *end, *start));
+            let out = boundary.sides_of(chain).last();
+            let back = boundary.sides_of(other).first();
+            let is_between = out.zip(back).is_some_and(|(out, back)| {
+                let ends = out.curve.from().zip(back.curve.to());
+                let heading = out.curve.heading(0.0);
+                ends.is_some_and(|(from, to)| infinity::lies_left(heading, from, to))
+            });
+            ring.extend(around(far, *end, *start, is_between));
         }
     }
     rings.push(ring);
@@ -87,20 +97,14 @@ fn rings(frame: &Frame, boundary: &Boundary, extent: Extent, far: Extent) -> Vec
 }
 
 /// The corners of the far square on the way counterclockwise from the end of a
-/// path to the start of the next.
-fn around(far: Extent, path: &[Point], end: Point, start: Point) -> Vec<Point> {
+/// path to the start of the next, which may lie beside it, the aquifer between
+/// them or all around.
+fn around(far: Extent, end: Point, start: Point, is_between: bool) -> Vec<Point> {
     let position = walk::rim_position(far, end);
     let ahead = (walk::rim_position(far, start) - position).rem_euclid(4.0);
-    // Two banks of one half-line: all the way round, unless the aquifer lies
-    // between them.
-    let back = path.iter().rev().nth(1).copied().unwrap_or(end);
-    let lies_left = (end - back).perp(&(start - end)) > 0.0;
-    let is_whole_turn = ahead < 1e-9 && !lies_left;
-    walk::rim_corners(
-        far,
-        position,
-        if is_whole_turn { ahead + 4.0 } else { ahead },
-    )
+    let is_whole_turn = !(1e-9..=4.0 - 1e-9).contains(&ahead) && !is_between;
+    let ahead = if is_whole_turn { 4.0 } else { ahead };
+    walk::rim_corners(far, position, ahead)
 }
 
 /// The vertices of a chain, those of a closed one without its last.
@@ -168,6 +172,16 @@ pub(super) fn arcs_within(frame: &Frame, curve: &Curve, extent: Extent) -> Vec<V
         }
         goes_on = is_within;
     }
+    let is_whole = matches!(curve, Curve::Arc { sweep_rad, .. } if sweep_rad.abs() == TAU);
+    if is_whole
+        && lines.len() > 1
+        && lines.first().and_then(|line| line.first()) == lines.last().and_then(|line| line.last())
+    {
+        let rest = lines.remove(0);
+        if let Some(last) = lines.last_mut() {
+            last.extend(rest.into_iter().skip(1));
+        }
+    }
     lines
 }
 
@@ -186,7 +200,7 @@ fn arc_parts(frame: &Frame, curve: &Curve, extent: Extent) -> Vec<(f64, f64)> {
     let mut cuts = vec![0.0, sweep_rad.abs()];
     let mut cut = |angle: f64| {
         let swept = (angle - start_rad) * sweep_rad.signum();
-        let position = swept.rem_euclid(std::f64::consts::TAU);
+        let position = swept.rem_euclid(TAU);
         if position < sweep_rad.abs() {
             cuts.push(position);
         }
@@ -202,11 +216,15 @@ fn arc_parts(frame: &Frame, curve: &Curve, extent: Extent) -> Vec<(f64, f64)> {
         let angle = ((y - middle.y) / radius).asin();
         if angle.is_finite() {
             cut(angle);
-            cut(std::f64::consts::PI - angle);
+            cut(PI - angle);
         }
     }
     cuts.sort_by(f64::total_cmp);
-    cuts.dedup();
+    // Ends that a rim's line meets too, but for rounding.
+    cuts.dedup_by(|next, before| *next - *before < 1e-12);
+    if let Some(last) = cuts.last_mut() {
+        *last = sweep_rad.abs();
+    }
     let ends = cuts.iter().skip(1);
     cuts.iter()
         .zip(ends)
@@ -258,9 +276,9 @@ impl CutLine {
 
     fn keeps(&self, point: Point) -> bool {
         if self.keeps_above {
-            self.coordinate(point) >= self.limit
+            self.coordinate(point) > self.limit
         } else {
-            self.coordinate(point) <= self.limit
+            self.coordinate(point) < self.limit
         }
     }
 

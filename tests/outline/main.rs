@@ -12,6 +12,8 @@
 
 mod areas;
 mod extensions;
+mod general;
+mod general_laws;
 mod laws;
 mod placements;
 mod plans;
