@@ -53,7 +53,7 @@ pub enum OutlineError {
     },
     /// Recharge that would have to flow without end.
     #[error(
-        "{well} stands in a {shape} with a recharge of {metres_a_day} m/d: no steady state, since recharge over an unbounded area cannot drain"
+        "no steady state: the {shape} around {well} has a recharge of {metres_a_day} m/d, and recharge over an unbounded area cannot drain"
     )]
     RechargeWithoutEnd {
         /// The recharge.
@@ -88,16 +88,12 @@ pub enum OutlineError {
         stages_m: [f64; 2],
     },
     /// Sides that cross where places were joined.
-    #[error(
-        "{edge} crosses or touches another edge of its aquifer near x = {x_m:.3} m, y = {y_m:.3} m"
-    )]
+    #[error("{edge} crosses or touches another side of its aquifer {place}")]
     SidesCross {
         /// The edge.
         edge: Named,
-        /// East of the local origin.
-        x_m: f64,
-        /// North of the local origin.
-        y_m: f64,
+        /// Where, in words.
+        place: String,
     },
     /// A line that is a point, or a circle without a radius.
     #[error("{edge} has no length: all of it lies within 1 mm")]

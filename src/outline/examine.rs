@@ -11,6 +11,7 @@ use super::error::OutlineError;
 use super::general::{Boundary, BoundarySide, Curve};
 use super::names;
 use super::recognise::Context;
+use crate::site::{EdgeShape, Point};
 
 /// How far beside a side is looked, metres, and as a share of its length: far
 /// less than two sides lie apart, far more than rounding.
@@ -45,14 +46,30 @@ pub(super) fn faults(context: Context<'_>, outline: &Outline) -> Result<(), Vec<
         .find_map(|side| Some((side, misplaced(outline, boundary, side, context)?)));
     match crossed {
         None => Ok(()),
-        Some((side, z)) => {
-            let place = outline.frame.to_site(z);
-            Err(vec![OutlineError::SidesCross {
-                edge: names::edge(site, side.edge),
-                x_m: place.x,
-                y_m: place.y,
-            }])
+        Some((side, z)) => Err(vec![OutlineError::SidesCross {
+            edge: names::edge(site, side.edge),
+            place: place_in_words(context, side.edge, outline.frame.to_site(z)),
+        }]),
+    }
+}
+
+/// A place of an edge by its nearest vertex, or by its azimuth on a circle.
+fn place_in_words(context: Context<'_>, edge: usize, place: Point) -> String {
+    match context.site.edges.get(edge).map(|edge| &edge.shape) {
+        Some(EdgeShape::Circle { centre, .. }) => {
+            let outward = place - centre;
+            let azimuth = outward.x.atan2(outward.y).rem_euclid(std::f64::consts::TAU);
+            format!("at azimuth {} from its centre", names::angle(azimuth))
         }
+        Some(EdgeShape::Line(points)) => {
+            let distances = points.iter().map(|point| (point - place).norm());
+            let nearest = distances.enumerate().min_by(|a, b| a.1.total_cmp(&b.1));
+            nearest.map_or_else(String::new, |(vertex, distance_m)| {
+                let distance = names::length(distance_m);
+                format!("{distance} from its vertex number {}", vertex + 1)
+            })
+        }
+        None => String::new(),
     }
 }
 
@@ -119,11 +136,7 @@ fn has_twin(boundary: &Boundary, side: &BoundarySide, z: Complex64, heading: Com
 }
 
 /// The edge of the side that is nearest to a place of the site.
-fn nearest_edge(
-    outline: &Outline,
-    boundary: &Boundary,
-    place: crate::site::Point,
-) -> Option<usize> {
+fn nearest_edge(outline: &Outline, boundary: &Boundary, place: Point) -> Option<usize> {
     let distance = |side: &BoundarySide| {
         let of_one = super::nearest::Nearest::of(&outline.frame, std::slice::from_ref(side));
         of_one.distance_m(place)

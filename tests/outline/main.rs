@@ -6,6 +6,8 @@
 
 #![expect(
     clippy::panic,
+    clippy::expect_used,
+    clippy::unwrap_used,
     clippy::indexing_slicing,
     reason = "a test stops where its plan is not what it expects"
 )]

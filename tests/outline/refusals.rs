@@ -301,8 +301,8 @@ fn faults_of_every_room_come_in_one_go() {
     let texts = refusals(&plan);
     assert_eq!(texts.len(), 4, "{texts:#?}");
     assert!(texts[0].contains("well PW-2 lies on"));
-    assert!(texts[1].contains("half-plane with a recharge"));
-    assert!(texts[2].contains("general outline with a recharge"));
+    assert!(texts[1].contains("the half-plane around well PW-1 has a recharge"));
+    assert!(texts[2].contains("the general outline around well PW-3 has a recharge"));
     assert!(texts[3].contains("neighbour Lot 1 lies on"));
 }
 
