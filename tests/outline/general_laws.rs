@@ -28,6 +28,19 @@ fn ring(corners: &[(f64, f64)]) -> Vec<(f64, f64)> {
     corners.iter().copied().chain([first]).collect()
 }
 
+/// Whether every corner lies well off the line of its neighbours: within 1 mm of
+/// it, stretched, an outline may leave it out.
+fn bends(corners: &[(f64, f64)]) -> bool {
+    let place = |index: usize| {
+        let at = corners[index % corners.len()];
+        Point::new(at.0, at.1)
+    };
+    (0..corners.len()).all(|index| {
+        let (before, here, after) = (place(index), place(index + 1), place(index + 2));
+        (here - before).perp(&(after - before)).abs() > 5e-3 * (after - before).norm()
+    })
+}
+
 fn polygon(corners: &[(f64, f64)]) -> Polygon<f64> {
     Polygon::new(LineString::from(corners.to_vec()), Vec::new())
 }
@@ -57,6 +70,7 @@ proptest! {
         ratio in 1.0_f64..20.0, azimuth_deg in 0.0_f64..360.0,
     ) {
         let corners = star(&radii);
+        prop_assume!(bends(&corners));
         // A triangle of such angles always holds a disk of a seventh of its
         // least radius around the origin.
         let mut plan = site(&[(1.0, 1.0)]).river("moat", &ring(&corners));
@@ -87,6 +101,7 @@ proptest! {
         hole in any::<bool>(),
     ) {
         let corners = star(&radii);
+        prop_assume!(bends(&corners));
         let mut plan = site(&[(11.0, 1.0)]).river("moat", &ring(&corners));
         let mut reference = polygon(&corners);
         if hole {
