@@ -117,7 +117,7 @@ fn free_flow(shape: &Shape) -> FreeFlow {
     let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
     match *shape {
         Shape::DiskExterior { .. } => FreeFlow::Any,
-        Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
+        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::General => FreeFlow::No,
         Shape::Axes { x, y } => match (x, y) {
             (Open, Open) => FreeFlow::Any,
             (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),
@@ -145,7 +145,7 @@ pub(super) fn solve(
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
-    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     let canonical = outline.frame.gradient_to_canonical(stated);
     let free = match free_flow(&outline.shape) {
         FreeFlow::No => Complex64::new(0.0, 0.0),
@@ -192,7 +192,7 @@ fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
 
 /// The head that the rivers fix, without any uniform flow.
 fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let rivers: Vec<(usize, &Piece)> = kinds
         .iter()
         .zip(&outline.sides)

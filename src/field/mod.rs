@@ -61,7 +61,7 @@ impl WellField {
         let ambient = ambient::solve(site, &outline, green.as_ref(), &mut notes)
             .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
         let datum = steady::datum(site, &outline, &mut notes);
-        let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+        let has_river = outline.side_kinds().contains(&Kind::FixedHead);
         let rim_factor = outline.frame.stretch.rim_factor();
         let of_well = |&index: &usize| {
             let well = site.wells.get(index)?;
@@ -232,6 +232,7 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::General => "general solver",
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }
@@ -273,8 +274,7 @@ impl WellField {
     /// Whether barriers close the aquifer on all sides, so that pumping and
     /// injection must balance.
     pub fn is_closed_basin(&self) -> bool {
-        !self.outline.shape.side_kinds().contains(&Kind::FixedHead)
-            && self.influence_radius_m.is_none()
+        !self.outline.side_kinds().contains(&Kind::FixedHead) && self.influence_radius_m.is_none()
     }
 
     /// Q/T, metres.

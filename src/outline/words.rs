@@ -1,5 +1,6 @@
 //! Says in words what an outline is.
 
+use super::general::Condition;
 use super::names;
 use super::shape::{Axis, Kind, Shape};
 use super::{Outline, Piece};
@@ -23,17 +24,13 @@ impl Outline {
     /// The outline in one line: "strip 1,240 m wide between river Ostra
     /// (fixed head) and barrier granite edge (no flow)".
     pub fn words(&self, site: &Site) -> String {
-        let kinds = self.shape.side_kinds();
-        // One edge may bend round several sides; it is named once.
-        let mut sides: Vec<String> = Vec::new();
-        for (side, kind) in kinds.iter().enumerate() {
-            let words = format!("{} ({})", self.side_name(site, side), kind_words(*kind));
-            if !sides.contains(&words) {
-                sides.push(words);
-            }
-        }
+        let kinds = self.side_kinds();
+        let sides = self.sides_in_words(site);
         let between = if sides.len() > 1 { "between" } else { "within" };
-        let sides = names::listed(&sides);
+        let sides = match self.shape {
+            Shape::General => names::few(&sides),
+            _ => names::listed(&sides),
+        };
         let name = self.shape.name();
         let stretched = if self.frame.stretch == super::Stretch::none() {
             ""
@@ -59,12 +56,36 @@ impl Outline {
                     names::length(radius_m)
                 )
             }
+            Shape::General => format!("{name} {between} {sides}"),
             Shape::DiskExterior { radius_m } => {
                 let radius = names::length(radius_m);
                 format!("{name} of radius {radius}: {sides}")
             }
         };
         text + stretched
+    }
+}
+
+impl Outline {
+    /// The sides with their kinds. One edge may bend round several sides; it
+    /// is named once.
+    fn sides_in_words(&self, site: &Site) -> Vec<String> {
+        let mut sides: Vec<String> = Vec::new();
+        for (side, kind) in self.side_kinds().iter().enumerate() {
+            let condition = self.boundary.as_ref().and_then(|boundary| {
+                let side = boundary.sides.get(side)?;
+                Some(side.condition)
+            });
+            let kind = match condition {
+                Some(Condition::Clogged { .. }) => "clogged bank",
+                _ => kind_words(*kind),
+            };
+            let words = format!("{} ({kind})", self.side_name(site, side));
+            if !sides.contains(&words) {
+                sides.push(words);
+            }
+        }
+        sides
     }
 }
 
