@@ -7,6 +7,7 @@
 mod batch;
 mod corner;
 mod disk;
+mod general;
 mod influence;
 mod lanes;
 mod logarithm;
@@ -14,6 +15,7 @@ mod mirrors;
 mod rows;
 mod wedge;
 
+pub use general::{Before, General, WeightedPole};
 pub use logarithm::ln_lanes;
 
 use std::f64::consts::FRAC_1_PI;

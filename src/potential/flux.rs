@@ -14,39 +14,61 @@ use super::mesh::Panel;
 use super::solve::Solution;
 
 impl Solution {
-    /// ∫ ∂u/∂n dl of each problem through the part of a side between two of
-    /// its parameters, n pointing out of the region. Not finite where a jump of
-    /// the head makes it so.
-    pub fn outflows(&self, side: usize, along: Range<f64>) -> Vec<f64> {
-        let count = self.densities.count;
-        let mut sums = vec![0.0; count];
-        if self.region.sides().get(side).is_none() {
-            return sums;
+    /// ∫ ∂u/∂n dl of a problem through the part of a side between two of its
+    /// parameters, n pointing out of the region; none for what does not
+    /// exist. Where a jump of the head touches the part, the true flux is
+    /// infinite and so is this.
+    pub fn outflow(&self, problem: usize, side: usize, along: Range<f64>) -> Option<f64> {
+        let posed = self.posed.get(problem)?;
+        let curve = self.region.sides().get(side)?.curve;
+        if posed.jumps_within(&self.region, side, &along) {
+            return Some(f64::INFINITY);
         }
+        let of_panels: f64 = (self.system.mesh.panels.iter().enumerate())
+            .filter(|(_, panel)| panel.side == side)
+            .map(|(index, panel)| self.outflow_of_panel(problem, index, panel, &along))
+            .sum();
+        let poles = posed.poles().iter();
+        let of_poles: f64 = poles
+            .map(|(pole, strength)| strength * angle(&curve, &along, *pole) / TAU)
+            .sum();
+        Some(of_panels - of_poles)
+    }
+
+    /// The parameter of a place on a side, 0 to 1.
+    pub fn parameter(&self, side: usize, x: Complex64) -> f64 {
+        let side = self.region.sides().get(side);
+        side.map_or(0.0, |side| {
+            if x.is_finite() {
+                side.curve.parameter(x).re.clamp(0.0, 1.0)
+            } else {
+                f64::from(side.goes_out())
+            }
+        })
+    }
+
+    /// The same without poles, through what a panel has of the range.
+    fn outflow_of_panel(
+        &self,
+        problem: usize,
+        index: usize,
+        panel: &Panel,
+        along: &Range<f64>,
+    ) -> f64 {
         let order = self.system.mesh.rule.order();
-        let places = self.system.nodes().chunks(order);
-        let slopes = self.node_slopes.chunks(order * count);
-        for ((panel, places), slopes) in self.system.mesh.panels.iter().zip(places).zip(slopes) {
-            if panel.side != side {
-                continue;
-            }
-            let weights = self.weights_within(panel, &along);
-            let nodes = slopes.chunks(count).zip(places).zip(&weights);
-            for ((slopes, place), weight) in nodes.filter(|(_, weight)| **weight != 0.0) {
-                let parts = sums.iter_mut().zip(slopes).zip(&self.posed);
-                for ((sum, slope), posed) in parts {
-                    *sum += weight * (slope + posed.slope_without_poles(&self.region, place));
-                }
-            }
-        }
-        if let Some(side) = self.region.sides().get(side) {
-            for (sum, posed) in sums.iter_mut().zip(&self.posed) {
-                for (pole, strength) in posed.poles() {
-                    *sum -= strength * angle(&side.curve, &along, *pole) / TAU;
-                }
-            }
-        }
-        sums
+        let count = self.densities.count;
+        let nodes = self.system.nodes().iter().skip(index * order);
+        let slopes = self.node_slopes.iter().skip(index * order * count + problem);
+        let weights = self.weights_within(panel, along);
+        let parts = weights.iter().zip(nodes).zip(slopes.step_by(count));
+        parts
+            .map(|((weight, place), slope)| {
+                let known = self.posed.get(problem).map_or(0.0, |posed| {
+                    posed.slope_without_poles(&self.region, place)
+                });
+                weight * (slope + known)
+            })
+            .sum()
     }
 
     /// The weights with which a panel's nodes integrate its part of a range.

@@ -4,6 +4,8 @@
 //! are the logarithms of its poles, a uniform flow, the bowl of an areal source
 //! and the tapers of its jumps; the panels make up what the sides still ask for.
 
+use std::ops::Range;
+
 use num_complex::Complex64;
 
 use super::kernel::of_pole;
@@ -80,6 +82,14 @@ impl Posed {
         let poles = self.problem.poles.iter();
         let poles = poles.map(|(pole, strength)| of_pole(x, *pole).1 * *strength);
         self.smooth_derivative(x) + tapers.sum::<Complex64>() + poles.sum::<Complex64>()
+    }
+
+    /// Whether a jump of the head lies at the start or the end of a side and
+    /// within a range of it.
+    pub fn jumps_within(&self, region: &Region, side: usize, along: &Range<f64>) -> bool {
+        let jumps_at = |joint: usize| self.tapers.iter().any(|taper| taper.corner == joint);
+        (along.start <= 0.0 && jumps_at(region.before(side)))
+            || (along.end >= 1.0 && jumps_at(side))
     }
 
     /// The known part but for the poles.

@@ -29,6 +29,9 @@ const BETWEEN_CHECKS: f64 = 1.5;
 /// ω is at least this share of the largest ε, so that φ is resolved anywhere.
 const SMALLEST_OMEGA: f64 = 1e-2;
 
+/// Share of the target that a panel's residual is to stay below.
+const FIRST_AIM: f64 = 0.25;
+
 /// Refinement ends after so many rounds.
 const MOST_ROUNDS: usize = 14;
 
@@ -44,7 +47,37 @@ pub struct Solution {
     /// Outward slope of the panels' potential at each node, for each problem.
     pub(super) node_slopes: Vec<f64>,
     bound_m: f64,
+    hardest_side: Option<usize>,
     rounds: usize,
+}
+
+/// A solution on one mesh.
+struct Attempt {
+    system: System,
+    densities: Densities,
+    measure: Measure,
+}
+
+impl Attempt {
+    fn on(region: &Region, posed: &[Posed], mesh: Mesh, target_m: f64) -> Self {
+        let system = System::new(region, mesh);
+        let densities = solve(region, posed, &system);
+        let measure = measure(region, posed, &system, &densities, target_m);
+        Self {
+            system,
+            densities,
+            measure,
+        }
+    }
+
+    /// The side with the panel that misses its aim by most.
+    fn hardest_side(&self) -> Option<usize> {
+        let excess = self.measure.excess(1.0);
+        let panels = self.system.mesh.panels.iter().zip(excess);
+        panels
+            .max_by(|(_, one), (_, other)| one.total_cmp(other))
+            .map(|(panel, _)| panel.side)
+    }
 }
 
 /// How large the residuals of one mesh are.
@@ -61,9 +94,8 @@ impl Solution {
     /// Solves problems together, on one mesh fine enough that the sum of their
     /// errors, each times the size of its weight, is at most `target_m` — or,
     /// where that takes more than the machine should give, as near as it came.
-    /// The region must fix the head somewhere. `order` nodes a panel.
+    /// The region must fix the head somewhere.
     pub fn new(region: Region, problems: Vec<Problem>, target_m: f64) -> Self {
-        let order = order_for(&region);
         let poles: Vec<_> = problems
             .iter()
             .flat_map(|problem| problem.poles.iter().map(|(pole, _)| *pole))
@@ -72,50 +104,39 @@ impl Solution {
             .into_iter()
             .map(|problem| Posed::new(&region, problem))
             .collect();
-        let mut mesh = Mesh::new(&region, &poles, order);
-        let mut best: Option<(System, Densities, f64)> = None;
-        let mut aim_m = 0.25 * target_m;
-        let mut rounds = 0;
-        loop {
-            rounds += 1;
-            let system = System::new(&region, mesh);
-            let densities = solve(&region, &posed, &system);
-            let measure = measure(&region, &posed, &system, &densities, target_m);
-            let bound_m = measure.bound_m;
-            let excess = measure.excess(aim_m);
-            let is_idle = excess.iter().all(|&excess| excess <= 1.0);
-            let finer = system.mesh.refined(&region, &excess);
-            let is_stuck = !is_idle && finer.panels == system.mesh.panels;
-            if best.as_ref().is_none_or(|best| bound_m <= best.2) {
-                best = Some((system, densities, bound_m));
-                if bound_m <= target_m {
-                    break;
-                }
+        let mut best = Attempt::on(&region, &posed, Mesh::new(&region, &poles, order_for(&region)), target_m);
+        let mut latest: Option<Attempt> = None;
+        let mut aim_m = FIRST_AIM * target_m;
+        let mut rounds = 1;
+        while best.measure.bound_m > target_m && rounds < MOST_ROUNDS {
+            let from = latest.as_ref().unwrap_or(&best);
+            let excess = from.measure.excess(aim_m);
+            if excess.iter().all(|&excess| excess <= 1.0) {
+                aim_m *= FIRST_AIM;
             }
-            if rounds >= MOST_ROUNDS || is_stuck || finer.unknowns() > MOST_UNKNOWNS {
+            let finer = from.system.mesh.refined(&region, &from.measure.excess(aim_m));
+            let is_stuck = finer.panels == from.system.mesh.panels;
+            if is_stuck || finer.unknowns() > MOST_UNKNOWNS {
                 break;
             }
-            if is_idle {
-                aim_m *= 0.25;
+            let next = Attempt::on(&region, &posed, finer, target_m);
+            rounds += 1;
+            if next.measure.bound_m <= best.measure.bound_m {
+                best = next;
+                latest = None;
+            } else {
+                latest = Some(next);
             }
-            mesh = finer;
         }
-        let (system, densities, bound_m) = match best {
-            Some(best) => best,
-            None => {
-                let system = System::new(&region, Mesh::new(&region, &poles, order));
-                let densities = solve(&region, &posed, &system);
-                (system, densities, f64::INFINITY)
-            }
-        };
-        let node_slopes = system.fields(&densities, system.nodes()).slopes;
+        let node_slopes = best.system.fields(&best.densities, best.system.nodes());
         Self {
             region,
             posed,
-            node_slopes,
-            system,
-            densities,
-            bound_m,
+            node_slopes: node_slopes.slopes,
+            hardest_side: best.hardest_side(),
+            bound_m: best.measure.bound_m,
+            system: best.system,
+            densities: best.densities,
             rounds,
         }
     }
@@ -125,7 +146,12 @@ impl Solution {
         self.bound_m
     }
 
-    /// How often the mesh was made finer, the first mesh counted.
+    /// The side near which the error is largest.
+    pub fn hardest_side(&self) -> Option<usize> {
+        self.hardest_side
+    }
+
+    /// How many meshes were solved on.
     pub fn rounds(&self) -> usize {
         self.rounds
     }

@@ -23,7 +23,7 @@ pub(super) struct Taper {
     pub side: usize,
     curve: Curve,
     /// The joint at the start of its side.
-    corner: usize,
+    pub corner: usize,
     /// Its value at the start of its side.
     height_m: f64,
 }

@@ -149,14 +149,14 @@ fn shares_of_the_l_shape() {
     let published = [0.36921546538373, 0.2614291217906, 0.31733331200185, 0.024866362735208, 0.00187397023343, 0.02528176785518];
     let mut total = 0.0;
     for (side, share) in published.iter().enumerate() {
-        let computed = -solution.outflows(side, 0.0..1.0)[0];
-        let parts: f64 = [0.0..0.2, 0.2..0.55, 0.55..1.0].into_iter().map(|r| -solution.outflows(side, r)[0]).sum();
+        let computed = -solution.outflow(0, side, 0.0..1.0).unwrap();
+        let parts: f64 = [0.0..0.2, 0.2..0.55, 0.55..1.0].into_iter().map(|r| -solution.outflow(0, side, r).unwrap()).sum();
         println!("share {side} {:.2e} {:.2e}", computed - share, parts - computed);
         total += computed;
     }
     println!("total {:.2e}", total - 1.0);
     let solution = green(polygon(&L, &[N, D, N, N, D, N]), c(1.5, 0.5), 1e-9);
-    println!("mixed {:.2e}", -solution.outflows(1, 0.0..1.0)[0] - 0.80526157646408);
+    println!("mixed {:.2e}", -solution.outflow(0, 1, 0.0..1.0).unwrap() - 0.80526157646408);
     // Batches agree with single places.
     let layer = solution.sum(&[1.0]);
     let places: Vec<_> = (0..3000).map(|i| c(0.002 + 1.9 * ((i as f64 * 0.618) % 1.0), 0.001 + 0.99 * ((i as f64 * 0.755) % 1.0))).collect();
@@ -188,7 +188,7 @@ fn clogged_half_plane() {
         report("clogged", &solution, solution.value(&layer, c(x.0, x.1)) - value);
     }
     let s = 1.0 / 2.0;
-    println!("reach {:.2e}", -solution.outflows(0, s..1.0)[0] - solution.outflows(1, 0.0..s)[0] - 0.364874353454);
+    println!("reach {:.2e}", -solution.outflow(0, 0, s..1.0).unwrap() - solution.outflow(0, 1, 0.0..s).unwrap() - 0.364874353454);
 }
 
 #[test]
