@@ -71,7 +71,7 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
 fn inward(shape: &Shape, side: usize) -> Complex64 {
     let (x, y) = match *shape {
         Shape::Axes { x, y } => (x, y),
-        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+        Shape::General | Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
             return Complex64::ZERO;
         }
     };

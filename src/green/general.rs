@@ -173,7 +173,10 @@ impl General {
                     strength_m: 1.0,
                 };
                 let before = Before::default();
-                act(&Self::new(&self.boundary, &[well], before, self.target_m), 0)
+                act(
+                    &Self::new(&self.boundary, &[well], before, self.target_m),
+                    0,
+                )
             }
         }
     }

@@ -79,7 +79,9 @@ impl Solution {
 
     fn panel_circles(&self) -> Vec<Circle> {
         let sources = self.system.sources.iter();
-        sources.map(|source| circle_of(&source.nodes, 1.1)).collect()
+        sources
+            .map(|source| circle_of(&source.nodes, 1.1))
+            .collect()
     }
 
     fn values_in_box(

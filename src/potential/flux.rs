@@ -58,14 +58,18 @@ impl Solution {
         let order = self.system.mesh.rule.order();
         let count = self.densities.count;
         let nodes = self.system.nodes().iter().skip(index * order);
-        let slopes = self.node_slopes.iter().skip(index * order * count + problem);
+        let slopes = self
+            .node_slopes
+            .iter()
+            .skip(index * order * count + problem);
         let weights = self.weights_within(panel, along);
         let parts = weights.iter().zip(nodes).zip(slopes.step_by(count));
         parts
             .map(|((weight, place), slope)| {
-                let known = self.posed.get(problem).map_or(0.0, |posed| {
-                    posed.slope_without_poles(&self.region, place)
-                });
+                let known = self
+                    .posed
+                    .get(problem)
+                    .map_or(0.0, |posed| posed.slope_without_poles(&self.region, place));
                 weight * (slope + known)
             })
             .sum()

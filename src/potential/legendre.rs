@@ -242,7 +242,11 @@ mod tests {
                         inverse += w * half * basis / (zeta - t);
                     }
                 }
-                assert!((log - logs[k]).abs() < 1e-13, "{zeta} {k} {log} {}", logs[k]);
+                assert!(
+                    (log - logs[k]).abs() < 1e-13,
+                    "{zeta} {k} {log} {}",
+                    logs[k]
+                );
                 assert!((inverse - inverses[k]).norm() < 1e-12, "{zeta} {k}");
             }
         }

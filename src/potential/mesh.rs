@@ -81,7 +81,11 @@ impl Place {
 
     /// Its parameter on its side, 0 to 1.
     pub fn s(&self) -> f64 {
-        if self.is_reversed { 1.0 - self.u } else { self.u }
+        if self.is_reversed {
+            1.0 - self.u
+        } else {
+            self.u
+        }
     }
 
     /// Its parameter counted from the start or the end of its side.

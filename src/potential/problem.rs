@@ -73,7 +73,11 @@ impl Posed {
 
     /// The sum of its poles' strengths.
     pub fn charge(&self) -> f64 {
-        self.problem.poles.iter().map(|(_, strength)| strength).sum()
+        self.problem
+            .poles
+            .iter()
+            .map(|(_, strength)| strength)
+            .sum()
     }
 
     /// ∂/∂x − i ∂/∂y of the known part.

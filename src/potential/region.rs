@@ -74,12 +74,7 @@ impl Side {
     }
 
     /// A half-line that comes from infinity; `direction` points to infinity.
-    pub fn ray_in(
-        to: Complex64,
-        direction: Complex64,
-        scale_m: f64,
-        condition: Condition,
-    ) -> Self {
+    pub fn ray_in(to: Complex64, direction: Complex64, scale_m: f64, condition: Condition) -> Self {
         let curve = Curve::ray_in(to, direction, scale_m);
         Self::new(curve, -direction, -direction, condition)
     }
@@ -92,9 +87,8 @@ impl Side {
         sweep_rad: f64,
         condition: Condition,
     ) -> Self {
-        let at = |share: f64| {
-            centre + Complex64::from_polar(radius_m, start_rad + share * sweep_rad)
-        };
+        let at =
+            |share: f64| centre + Complex64::from_polar(radius_m, start_rad + share * sweep_rad);
         let heading = |share: f64| {
             Complex64::cis(start_rad + share * sweep_rad) * Complex64::I * sweep_rad.signum()
         };

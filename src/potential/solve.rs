@@ -70,6 +70,19 @@ impl Attempt {
         }
     }
 
+    /// What rounding adds to a value that is summed up from the panels, metres:
+    /// each charge meets a logarithm of at most 64, good to a few ε.
+    fn rounding_m(&self, posed: &[Posed]) -> f64 {
+        let weights = self.system.mesh.rule.weights.iter().cycle();
+        let nodes = self.densities.at_nodes.chunks(posed.len().max(1));
+        let charges = nodes.zip(weights).map(|(densities, weight)| {
+            let parts = densities.iter().zip(posed);
+            let sum: f64 = parts.map(|(q, posed)| (q * posed.weight()).abs()).sum();
+            weight * sum
+        });
+        64.0 * f64::EPSILON * charges.sum::<f64>()
+    }
+
     /// The side with the panel that misses its aim by most.
     fn hardest_side(&self) -> Option<usize> {
         let excess = self.measure.excess(1.0);
@@ -104,7 +117,12 @@ impl Solution {
             .into_iter()
             .map(|problem| Posed::new(&region, problem))
             .collect();
-        let mut best = Attempt::on(&region, &posed, Mesh::new(&region, &poles, order_for(&region)), target_m);
+        let mut best = Attempt::on(
+            &region,
+            &posed,
+            Mesh::new(&region, &poles, order_for(&region)),
+            target_m,
+        );
         let mut latest: Option<Attempt> = None;
         let mut aim_m = FIRST_AIM * target_m;
         let mut rounds = 1;
@@ -114,7 +132,10 @@ impl Solution {
             if excess.iter().all(|&excess| excess <= 1.0) {
                 aim_m *= FIRST_AIM;
             }
-            let finer = from.system.mesh.refined(&region, &from.measure.excess(aim_m));
+            let finer = from
+                .system
+                .mesh
+                .refined(&region, &from.measure.excess(aim_m));
             let is_stuck = finer.panels == from.system.mesh.panels;
             if is_stuck || finer.unknowns() > MOST_UNKNOWNS {
                 break;
@@ -130,13 +151,13 @@ impl Solution {
         }
         let node_slopes = best.system.fields(&best.densities, best.system.nodes());
         Self {
-            region,
-            posed,
             node_slopes: node_slopes.slopes,
             hardest_side: best.hardest_side(),
-            bound_m: best.measure.bound_m,
+            bound_m: best.measure.bound_m + best.rounding_m(&posed),
             system: best.system,
             densities: best.densities,
+            region,
+            posed,
             rounds,
         }
     }
@@ -196,7 +217,9 @@ fn measure(
     let weights: Vec<f64> = posed.iter().map(|problem| problem.weight().abs()).collect();
     let sums = residuals.chunks(posed.len()).map(|residuals| {
         let parts = residuals.iter().zip(&weights);
-        parts.map(|(residual, weight)| residual.abs() * weight).sum()
+        parts
+            .map(|(residual, weight)| residual.abs() * weight)
+            .sum()
     });
     let sums: Vec<f64> = sums.collect();
     let (heads_m, slopes) = largest(system, &checks, &sums);
@@ -251,10 +274,16 @@ fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]
     let (heads_m, slopes) = largest(
         system,
         checks,
-        &residuals.iter().map(|residual| residual.abs()).collect::<Vec<_>>(),
+        &residuals
+            .iter()
+            .map(|residual| residual.abs())
+            .collect::<Vec<_>>(),
     );
     let head_m = heads_m.iter().copied().fold(0.0, f64::max);
-    let shares = slopes.iter().zip(&omega).map(|(slope, omega)| slope / omega);
+    let shares = slopes
+        .iter()
+        .zip(&omega)
+        .map(|(slope, omega)| slope / omega);
     let share = shares.fold(0.0, f64::max);
     if share < 1.0 && region.has_head() {
         (highest + head_m) / (1.0 - share)

@@ -89,7 +89,11 @@ impl System {
 
     /// The densities that meet, at each node, what `asked` returns for each
     /// problem, with the given sums of charges.
-    pub fn solve(&self, asked: &(dyn Fn(usize, &Place) -> f64 + Sync), charges: &[f64]) -> Densities {
+    pub fn solve(
+        &self,
+        asked: &(dyn Fn(usize, &Place) -> f64 + Sync),
+        charges: &[f64],
+    ) -> Densities {
         let size = self.size();
         let count = charges.len();
         let mut right = Mat::<f64>::zeros(size, count);
@@ -115,8 +119,7 @@ impl System {
     fn back_substitute(&self, right: MatMut<'_, f64>) {
         let size = self.size();
         let factors = MatRef::from_column_major_slice(&self.factors, size, size);
-        let permutation =
-            faer::perm::PermRef::new_checked(&self.forward, &self.backward, size);
+        let permutation = faer::perm::PermRef::new_checked(&self.forward, &self.backward, size);
         let memory =
             solve::solve_in_place_scratch::<usize, f64>(size, right.ncols(), parallelism());
         solve::solve_in_place(
