@@ -79,9 +79,9 @@ impl Source {
     fn effect(&self, rule: &Rule, x: Complex64, u: Complex64, effect: &mut Effect) {
         let root = self.panel.root(u);
         if self.is_far(rule, root) {
-            self.from_points(rule, x, effect);
+            self.as_points(rule, x, effect);
         } else {
-            self.from_polynomials(rule, x, u, root, effect);
+            self.as_polynomials(rule, x, u, root, effect);
         }
     }
 
@@ -100,7 +100,7 @@ impl Source {
         (root - self.panel.middle) / self.panel.half
     }
 
-    fn from_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
+    fn as_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
         let slots = effect.values.iter_mut().zip(&mut effect.slopes);
         for ((node, weight), (value, slope)) in self.nodes.iter().zip(&rule.weights).zip(slots) {
             let distance = x - node;
@@ -111,7 +111,7 @@ impl Source {
         }
     }
 
-    fn from_polynomials(
+    fn as_polynomials(
         &self,
         rule: &Rule,
         x: Complex64,

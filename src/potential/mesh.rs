@@ -246,8 +246,8 @@ impl Panel {
             Condition::Flux => false,
             Condition::Clogged { skin_m } => [-1.0, 0.0, 1.0].into_iter().any(|t| {
                 let stretch = self.curve.derivative(self.u(t)).norm() * self.u_slope(t);
-                // Infinite on the last panel of a half-line.
-                !(stretch < skin_m)
+                // Infinite or undefined on the last panel of a half-line.
+                stretch >= skin_m || !stretch.is_finite()
             }),
         }
     }
