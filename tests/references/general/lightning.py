@@ -36,6 +36,7 @@ TAU = 2 * math.pi
 class Stretch:
     """Sample points of one edge or circle, in order of travel."""
 
+
     z: np.ndarray
     w: np.ndarray
     normal: np.ndarray  # outward, in z
@@ -45,7 +46,8 @@ class Stretch:
     skin: float
     weight: np.ndarray
     ends: tuple  # corner numbers or None
-    length_along: np.ndarray  # metres along a barrier chain: for recharge
+    length_along: np.ndarray  # metres along the edge: for recharge
+    gaps: dict  # corner number -> w - w of the corner, without cancellation
 
 
 class Plane:
@@ -236,17 +238,33 @@ class Field:
         return np.unique(near), even
 
     def points_of(self, edge, density, shift):
+        """Places on an edge, and their exact offsets from its two ends (None at infinity)."""
         near, even = self.along(edge, density, shift)
         if edge.length < math.inf:
-            u = np.unique(np.concatenate([0.5 * near, 1 - 0.5 * near, even]))
-            half = u <= 0.5
-            # From the nearer end, so that distances to corners keep their digits.
-            return np.where(half, edge.start + u * (edge.end - edge.start), edge.end - (1 - u) * (edge.end - edge.start))
+            from_start = np.unique(np.concatenate([0.5 * near, 0.5 * even]))
+            step = edge.end - edge.start
+            offset = from_start * step
+            back = (from_start[from_start < 0.5])[::-1] * step
+            z = np.concatenate([edge.start + offset, edge.end - back])
+            after = np.concatenate([offset, step - back])
+            before = np.concatenate([offset - step, -back])
+            return z, after, before
         corner = edge.end if edge.start is None else edge.start
-        size = 1000.0
+        size = INVERSION_SCALE
         r = np.unique(np.concatenate([size * near, size / near, size * even / (1.0001 - even)]))
-        z = corner + (-edge.heading if edge.start is None else edge.heading) * r
-        return z[::-1] if edge.start is None else z
+        offset = (-edge.heading if edge.start is None else edge.heading) * r
+        if edge.start is None:
+            return (corner + offset)[::-1], None, offset[::-1]
+        return corner + offset, offset, None
+
+    def gap(self, corner, z, offset):
+        """w - w of a corner from the exact offset in z."""
+        if self.plane.about is None:
+            return offset / self.plane.scale
+        if offset is None:
+            return INVERSION_SCALE / (z - self.plane.about)
+        about = self.plane.about
+        return -INVERSION_SCALE * offset / ((z - about) * (corner - about))
 
     def sample(self, density, shift=0.5):
         """All stretches, each chain in order of travel."""
@@ -254,28 +272,29 @@ class Field:
         index = 0
         for ring in [self.plan.outer, *self.plan.islands]:
             for number, edge in enumerate(ring):
-                z = self.points_of(edge, density, shift)
+                z, after, before = self.points_of(edge, density, shift)
                 ends = (index + number, index + (number + 1) % len(ring))
-                stretches.append(self.stretch(edge, z, ends))
+                gaps = {ends[0]: self.gap(edge.start, z, after), ends[1]: self.gap(edge.end, z, before)}
+                stretches.append(self.stretch(edge, z, ends, gaps, after, before))
             index += len(ring)
         for lake in self.plan.lakes:
             count = int(density * 60)
             turn = np.exp(TAU * 1j * (np.arange(count) + shift) / count)
             z = lake.centre + lake.radius * turn
             stretches.append(Stretch(z, self.plane.to_w(z), -turn, "head", lake.name,
-                                     np.full(count, lake.stage), 0.0, np.ones(count), (None, None), None))
+                                     np.full(count, lake.stage), 0.0, np.ones(count), (None, None), None, {}))
         return stretches
 
-    def stretch(self, edge, z, ends):
+    def stretch(self, edge, z, ends, gaps, after, before):
         normal = np.full(z.shape, -1j * edge.heading)
         weight = np.ones(z.shape)
         if edge.condition == "skin":
-            near = np.minimum(np.abs(z - edge.start), np.abs(z - edge.end))
+            near = np.minimum(np.abs(after), np.abs(before))
             weight = np.minimum(1.0, np.sqrt(near / (0.05 * edge.length)))
         origin = edge.end if edge.start is None else edge.start
         along = ((z - origin) * edge.heading.conjugate()).real
         return Stretch(z, self.plane.to_w(z), normal, edge.condition, edge.name, edge.stage_at(z), edge.skin,
-                       weight, ends, along)
+                       weight, ends, along, gaps)
 
     # --- functions ----------------------------------------------------------
 
@@ -322,8 +341,19 @@ class Field:
         self.hess[key] = hess
         return q, d
 
-    def functions(self, w, first=False):
+    def gaps(self, w, stretches):
+        """w - w of each corner: exact on the edges that meet there."""
+        gaps = [w - corner.w for corner in self.corners]
+        at = 0
+        for s in stretches:
+            for corner, gap in s.gaps.items():
+                gaps[corner][at:at + len(s.w)] = gap
+            at += len(s.w)
+        return gaps
+
+    def functions(self, w, first=False, stretches=()):
         """Single-valued analytic functions at w and their derivatives by w."""
+        gaps = self.gaps(w, stretches)
         values, slopes = [], []
 
         def put(value, slope):
@@ -339,17 +369,16 @@ class Field:
             q, d = self.arnoldi(hole, 1 / (w - middle), -1 / (w - middle) ** 2, self.laurent, first)
             values.extend(q.T[1:])
             slopes.extend(d.T[1:])
-        for corner in self.corners:
+        for corner, gap in zip(self.corners, gaps):
             n = np.arange(1, self.poles + 1)
             for length in corner.reach * np.exp(-4 * (math.sqrt(self.poles) - np.sqrt(n))):
-                pole = corner.w + corner.outside * length
-                put(length / (w - pole), -length / (w - pole) ** 2)
-            end = corner.w + corner.outside * corner.reach
+                to_pole = gap - corner.outside * length
+                put(length / to_pole, -length / to_pole**2)
+            to_end = gap - corner.outside * corner.reach
             with np.errstate(divide="ignore", invalid="ignore"):
-                zeta = (w - corner.w) / (w - end)
-                log = np.log(zeta)
-                dlog = (1 / (w - corner.w) - 1 / (w - end))
-            at_corner = w == corner.w
+                log = np.log(gap / to_end)
+                dlog = 1 / gap - 1 / to_end
+            at_corner = gap == 0
             for exponent in corner.exponents(self.highest):
                 with np.errstate(divide="ignore", invalid="ignore"):
                     value = np.exp(exponent * log)
@@ -363,17 +392,17 @@ class Field:
                 put(base**power, -power * base**power / (w - image))
         return np.array(values).T, np.array(slopes).T
 
-    def jump_terms(self, w):
+    def jump_terms(self, w, stretches=()):
         """f and f' of the jumps of stage, Re f = stage rise over the corner's angle."""
         f, slope = np.zeros_like(w), np.zeros_like(w)
-        for corner in self.corners:
+        for corner, gap in zip(self.corners, self.gaps(w, stretches)):
             if corner.jump:
-                end = corner.w + corner.outside * corner.reach
+                to_end = gap - corner.outside * corner.reach
                 with np.errstate(divide="ignore", invalid="ignore"):
                     # Re(-i a log) = a arg; arg rises by the angle from the edge after to the edge before.
                     factor = -1j * corner.jump / corner.angle
-                    f = f + factor * np.log((w - corner.w) / (w - end))
-                    slope = slope + factor * (1 / (w - corner.w) - 1 / (w - end))
+                    f = f + factor * np.log(gap / to_end)
+                    slope = slope + factor * (1 / gap - 1 / to_end)
         return f, slope
 
     # --- system -------------------------------------------------------------
@@ -405,7 +434,7 @@ class Field:
     def system(self, stretches, first):
         plan, plane = self.plan, self.plane
         w = np.concatenate([s.w for s in stretches])
-        values, slopes = self.functions(w, first)
+        values, slopes = self.functions(w, first, stretches)
         offsets = np.cumsum([0] + [len(s.w) for s in stretches])
         logs = self.logarithms()
         wells = [plane.to_w(well.at) for well in plan.wells]
@@ -429,7 +458,7 @@ class Field:
         for i, s in enumerate(stretches):
             rows = slice(offsets[i], offsets[i + 1])
             v, d = values[rows], slopes[rows]
-            jump, jump_slope = self.jump_terms(s.w)
+            jump, jump_slope = self.jump_terms(s.w, [s])
             turn = (plane.slope(s.z) * s.normal)[:, None]
             log_part = lambda a, b: np.log(np.abs(s.w - a)) - (0 if b is None else np.log(np.abs(s.w - b)))
             log_slope = lambda a, b: 1 / (s.w - a) - (0 if b is None else 1 / (s.w - b))
