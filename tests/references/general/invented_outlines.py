@@ -11,19 +11,16 @@ with an independent finite-element solution (`elements.py`) and writes nothing.
 """
 
 import argparse
-import csv
 import math
-import pathlib
 
 import numpy as np
 
 import plans
 from lightning import Field
+from tables import HERE, write
 
-HERE = pathlib.Path(__file__).resolve().parent
 SEE_FROM = {"fen_bends": 100 - 700j, "quarry_bend": 100 - 700j}
 NAMES = ["sallow_fold", "sallow_fold_clogged", "sallow_fold_recharge", "ostrey_vale", "fen_bends", "quarry_bend"]
-COLUMNS = ["kind", "name", "x", "y", "value", "accuracy"]
 FLOOR_M = 1e-11
 
 
@@ -123,17 +120,6 @@ def table(name):
           f"accuracy {worst_m:.1e} m and {worst_flow:.1e} m3/d")
     assert worst_m < 1e-6 and worst_flow < 1e-3, (worst_m, worst_flow)
     return rows
-
-
-def text(value):
-    return value if isinstance(value, str) else repr(float(value))
-
-
-def write(name, rows):
-    with open(HERE / f"{name}.csv", "w", newline="", encoding="utf-8") as file:
-        writer = csv.writer(file, lineterminator="\n")
-        writer.writerow(COLUMNS)
-        writer.writerows([[text(value) for value in row] for row in rows])
 
 
 def main():
