@@ -12,7 +12,7 @@ On a clogged bank h - l dh/dx = stage (aquifer at larger x), l = K c.
 
 Recharge adds what one-dimensional flow gives, and in the box a series that
 settles the clogged bank. Each is held against the bank's condition by a
-difference quotient, and the box's equation against quadrature of its shares.
+difference quotient, and against a known value.
 """
 
 import mpmath as mp
@@ -117,16 +117,13 @@ class HalfPlane:
 
 
 def assert_bank(domain, value, places):
-    """h - l dh/dx is the stage (0 for Green's functions) at x = 0."""
-    step = mp.mpf("1e-5")
-    for y, stage in places:
-        at = [value(j * step, y) for j in range(1, 8)]
-        # Six-point extrapolation to x = 0 of the value and of the slope.
-        points = [j * step for j in range(1, 8)]
-        polynomial = mp.polyfit(points, at) if hasattr(mp, "polyfit") else None
-        matrix = mp.matrix([[p**m for m in range(7)] for p in points])
-        c = mp.lu_solve(matrix, mp.matrix(at))
-        assert abs(c[0] - domain.skin * c[1] - stage) < mp.mpf("1e-9"), (y, c[0] - domain.skin * c[1] - stage)
+    """h - l dh/dx is the stage (0 for Green's functions) at x = 0, the slope
+    by a one-sided difference of fourth order over 0.1 m."""
+    step = mp.mpf("0.1")
+    for y in places:
+        at = [value(j * step, y) for j in range(5)]
+        slope = sum(c * h for c, h in zip((-25, 48, -36, 16, -3), at)) / (12 * step)
+        assert abs(at[0] - domain.skin * slope) < mp.mpf("1e-10"), (y, at[0] - domain.skin * slope)
 
 
 def wells_of(plan):
@@ -141,26 +138,22 @@ def box():
           ("2 mm from the mill race", 410.0, 0.002), ("1 mm from the clay, north", 330.0, 699.999),
           ("3 mm from the clay, east", 999.997, 410.0), ("near the south-west corner", 15.0, 0.003),
           ("near the silted bank", 12.0, 350.0), ("south-west", 120.0, 90.0), ("in the corner of the clay", 999.998, 699.999)]
-    green = lambda *places: domain.green(*places)
+    green = domain.green
     assert abs(green(500.0, 350.0, 240.0, 330.0) - green(240.0, 330.0, 500.0, 350.0)) < mp.mpf("1e-25")
     mp.mp.dps = 20
     # Against the image sum where the skin is nothing: x DN, y DN.
     bare = Box(3, 2, 0, 0, 0, 0)
     assert abs(bare.green(2.2, 1.45, 1.1, 0.7) - mp.mpf("0.12845483556125")) < mp.mpf("1e-14")
-    # The series slows down towards the bank: a coarse difference quotient there.
     mp.mp.dps = 30
-    for step in (8, 4):
-        pass
-    slope = lambda f, x: (f(x + 1) * 8 - f(x + 2) - 8 * f(x - 1) + f(x - 2)) / 12
-    west = lambda x: domain.green(x, 350.0, 240.0, 330.0)
-    decay = [domain.west_decay(k, mp.mpf(0)) + domain.skin * k * mp.tanh(k * domain.a) * domain.west_decay(k, mp.mpf(0))
-             for k in list(domain.terms(10))[:20]]
-    assert all(abs(value - 1) < mp.mpf("1e-25") for value in decay)
+    assert_bank(domain, lambda x, y: domain.green(x, y, 240.0, 330.0), [mp.mpf(350), mp.mpf(40)])
+    # Each term of the ambient head meets the bank's condition.
+    for k in list(domain.terms(10))[:20]:
+        decay = domain.west_decay(k, mp.mpf(0))
+        assert abs(decay * (1 + domain.skin * k * mp.tanh(k * domain.a)) - 1) < mp.mpf("1e-25")
     # Laplace's equation by differences, and the recharge.
     ambient = domain.ambient
     curvature = sum(ambient(500 + dx, 350 + dy) for dx, dy in ((1, 0), (-1, 0), (0, 1), (0, -1))) - 4 * ambient(500, 350)
     assert abs(curvature + domain.rate) < mp.mpf("1e-11"), curvature
-    assert abs(slope(west, 100.0)) > 0
     shares = lambda x, y: {"silted Ketter": domain.west_share(x, y), "mill race": 1 - domain.west_share(x, y)}
     wells = wells_of(plan)
     rows = superposed(at, wells, plan.transmissivity, domain.ambient, domain.green, 1e-12)
@@ -168,7 +161,7 @@ def box():
 
 
 def strip():
-    plan = plans.read_strip(HERE / "clogged_strip.toml") if hasattr(plans, "read_strip") else None
+    # Its two lines are no ring, so the numbers of the plan stand here again.
     domain = Strip(600, 80, "411.3", "410.9", mp.mpf("0.0004") / 400)
     mp.mp.dps = 20
     bare = Strip(3, 0, 0, 0, 0)
@@ -176,7 +169,7 @@ def strip():
     wells = [("KS-1", (170.0, 40.0), mp.mpf(750)), ("KS-2", (420.0, -210.0), mp.mpf(380))]
     at = [("middle", 300.0, 0.0), ("on the silted bank, 1 mm off", 0.001, 60.0), ("2 mm from the canal", 599.998, -190.0),
           ("north", 90.0, 340.0), ("south", 500.0, -520.0), ("far north", 250.0, 1500.0)]
-    assert_bank(domain, lambda x, y: domain.green(x, y, 170.0, 40.0), [(mp.mpf(60), 0)])
+    assert_bank(domain, lambda x, y: domain.green(x, y, 170.0, 40.0), [mp.mpf(60)])
     shares = lambda x, y: {"silted Ketter": domain.west_share(x, y), "east canal": 1 - domain.west_share(x, y)}
     rows = superposed(at, wells, mp.mpf(400), domain.ambient, domain.green, 1e-12)
     write("clogged_strip", rows + inflows(wells, shares, 1e-10))
@@ -188,7 +181,7 @@ def half_plane():
     skin = next(edge.skin for edge in plan.edges if edge.skin)
     assert abs(HalfPlane("0.7", 0).green(0.5, 0.3, 1, 0) - mp.mpf("0.259888691167")) < mp.mpf("1e-11")
     domain = HalfPlane(skin, "411.3")
-    assert_bank(domain, lambda x, y: domain.green(x, y, 200.0, 0.0), [(mp.mpf(0), 0), (mp.mpf(150), 0)])
+    assert_bank(domain, lambda x, y: domain.green(x, y, 200.0, 0.0), [mp.mpf(0), mp.mpf(150)])
     at = [("between", 100.0, 40.0), ("on the bank, 1 mm off", 0.001, 0.0), ("down the bank, 2 mm off", 0.002, 700.0),
           ("behind", 700.0, -300.0), ("far", 9000.0, 4000.0), ("1 m from KE-1", 201.0, 0.0)]
     wells = wells_of(plan)
