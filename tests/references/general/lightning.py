@@ -538,7 +538,8 @@ class Field:
         wells = [self.plane.to_w(well.at) for well in self.plan.wells]
         green = harmonic[:, 1:].copy()
         for j, at in enumerate(wells):
-            green[:, j] -= np.log(np.abs(w - at)) / TAU
+            with np.errstate(divide="ignore"):
+                green[:, j] -= np.log(np.abs(w - at)) / TAU
         return ambient, green
 
     def drawdowns(self, z):
