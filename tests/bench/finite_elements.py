@@ -8,7 +8,7 @@ logarithms (`tests/references/general/elements.py`), one direct factorisation.
 HEADS.csv is a table of `tests/references/general/` or the output of
 `mirrorwell heads PLAN.toml --points …`; its places are where heads are compared.
 Without it the places are the plan's neighbours, and the finest mesh is the
-measure. Seconds are wall-clock, mesh and solution apart; reading is left out.
+measure. Seconds are of processor time, mesh and solution apart; reading is left out.
 Needs numpy, scipy, scikit-fem, meshpy, matplotlib.
 """
 
