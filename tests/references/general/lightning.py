@@ -82,9 +82,9 @@ class Corner:
     """A corner in w: its place, the direction of the outside bisector, the
     angle inside, the kinds of both edges, the length to the next edge outside."""
 
-    def __init__(self, w, outside, angle, kinds, reach, jump, straight):
+    def __init__(self, w, outside, angle, kinds, reach, jump):
         self.w, self.outside, self.angle, self.kinds = w, outside, angle, kinds
-        self.reach, self.jump, self.straight = reach, jump, straight
+        self.reach, self.jump = reach, jump
 
     def exponents(self, highest):
         like = [("flow" if kind == "skin" else kind) for kind in self.kinds]
@@ -186,7 +186,7 @@ class Field:
             jump = before.stages[1] - after.stages[0]
         reach = self.reach(w, outside)
         kinds = (before.condition, after.condition)
-        return Corner(w, outside, angle, kinds, reach, jump, plane.about is None)
+        return Corner(w, outside, angle, kinds, reach, jump)
 
     def size_of_w(self):
         places = [self.plane.to_w(edge.end) for edge in self.plan.outer if edge.end is not None]

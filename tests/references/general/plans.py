@@ -10,6 +10,8 @@ import math
 import tomllib
 from dataclasses import dataclass, field
 
+import numpy as np
+
 JOIN = 1e-3
 
 
@@ -183,7 +185,5 @@ def winding(ring, places):
     """Winding number of a closed ring about places."""
     total = 0.0
     for edge in ring:
-        import numpy as np
-
         total = total + np.angle((edge.end - places) / (edge.start - places))
     return total / (2 * math.pi)
