@@ -12,6 +12,7 @@
 
 mod dlmf;
 mod ferris_1962;
+mod general_tables;
 mod glover_balmer_1954;
 mod kruseman_de_ridder_1990;
 mod milne_thomson_1940;
