@@ -1,6 +1,7 @@
-//! A bound on the rounding error of a head.
+//! A bound on the error of a head.
 //!
-//! Closed forms have no truncation beyond 1e-16, so three roundings count.
+//! Closed forms have no truncation beyond 1e-16, so three roundings count; the
+//! general solver adds the bound that it has proven.
 //!
 //! 1. G itself: `green` states at most 64ε (1 + κ·distance) for each well; with
 //!    distances up to e^40 periods left out, 64 · 40 ε bounds it.
@@ -39,5 +40,7 @@ pub(super) fn bound_m(field: &WellField) -> f64 {
             strength_m * (of_green + of_place)
         })
         .sum();
-    of_wells + 4.0 * EPSILON * level_m
+    let solved = field.ambient.solved.as_ref();
+    let of_solver = solved.map_or(0.0, |solved| solved.general.bound_m());
+    of_wells + 4.0 * EPSILON * level_m + of_solver
 }

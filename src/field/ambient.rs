@@ -9,6 +9,7 @@
 //! | wedge between two rivers | linear in the angle |
 //! | half-plane, stage falling along the river | linear along the river |
 //! | other rivers of different stage | Σ stage · harmonic measure of the river |
+//! | no closed form | all of it by the general solver |
 //! | half-plane, river across an open end | plus slope · distance from the river |
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
@@ -22,6 +23,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::ambient_error::AmbientError;
+use super::solved::Solved;
 use crate::green::Green;
 use crate::outline::{Axis, Kind, Outline, Piece, Shape};
 use crate::site::{Ambient, Point, Site, Vector, direction_of_azimuth};
@@ -49,11 +51,30 @@ pub(super) struct AmbientHead {
     pub(super) per_radian_m: f64,
     /// Parts of sides whose stage differs from `level_m`, and by how much.
     pub(super) measured: Vec<(usize, Range<f64>, f64)>,
+    /// All of it, where the outline has no closed form.
+    pub(super) solved: Option<Solved>,
 }
 
 impl AmbientHead {
+    /// Heads before pumping at canonical places, metres. Parallel where the
+    /// outline has no closed form.
+    pub fn heads_m(&self, places: &[Complex64], green: &dyn Green, shape: &Shape) -> Vec<f64> {
+        let closed_form = places.iter().map(|z| self.closed_form_m(*z, green, shape));
+        let mut heads_m = closed_form.collect::<Vec<_>>();
+        if let Some(solved) = &self.solved {
+            solved.general.add_heads_before_m(places, &mut heads_m);
+        }
+        heads_m
+    }
+
     /// Head before pumping at a canonical place, metres.
     pub fn head_m(&self, z: Complex64, green: &dyn Green, shape: &Shape) -> f64 {
+        let solved = self.solved.as_ref();
+        solved.map_or(0.0, |solved| solved.general.head_before_m(z))
+            + self.closed_form_m(z, green, shape)
+    }
+
+    fn closed_form_m(&self, z: Complex64, green: &dyn Green, shape: &Shape) -> f64 {
         let linear = (self.slope.conj() * z).re;
         let bend = self
             .lake_radius_m
@@ -96,7 +117,19 @@ impl AmbientHead {
                 rise_m * Complex64::new(along_x, along_y) / (2.0 * step_m)
             })
             .sum();
-        linear + turned + measured
+        let solved = self.solved.as_ref();
+        let solved = solved.map(|solved| solved.general.gradient_before(z));
+        linear + turned + measured + solved.unwrap_or_default()
+    }
+
+    /// The uniform flow that a plan states as the one far away, where the
+    /// edges leave one free and bend it.
+    fn far_flow(&self) -> Option<Complex64> {
+        match (&self.solved, self.lake_radius_m) {
+            (Some(solved), _) => solved.far_flow,
+            (None, Some(_)) => Some(self.slope),
+            (None, None) => None,
+        }
     }
 }
 
@@ -141,10 +174,12 @@ pub(super) fn solve(
     site: &Site,
     outline: &Outline,
     green: &dyn Green,
+    solved: Option<Solved>,
     notes: &mut Vec<String>,
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
+    head.solved = solved;
     let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     let canonical = outline.frame.gradient_to_canonical(stated);
     let free = match free_flow(&outline.shape) {
@@ -178,7 +213,7 @@ pub(super) fn solve(
 }
 
 /// ∇h of the plan's `[ambient]`, in the site's frame.
-fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
+pub(super) fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
     match &site.ambient {
         Some(ambient) if ambient.gradient > 0.0 => match ambient.toward_deg {
             Some(azimuth) => Ok(-ambient.gradient * direction_of_azimuth(azimuth)),
@@ -206,6 +241,7 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         lake_radius_m: None,
         per_radian_m: 0.0,
         measured: Vec::new(),
+        solved: None,
     };
     if let [(0, piece)] = rivers.as_slice() {
         // A half-plane's river may fall along its side, x = 0.
@@ -337,9 +373,8 @@ impl Comparison<'_> {
         }
         if stated.norm() > NO_GRADIENT {
             let step_m = 1e-3 * self.outline.distance_to_edge_m(place);
-            // Around a lake the flow that a plan states is the one far away.
-            let gradient = match self.head.lake_radius_m {
-                Some(_) => self.head.slope,
+            let gradient = match self.head.far_flow() {
+                Some(flow) => flow,
                 None => self.head.gradient(z, self.green, step_m),
             };
             let fixed = self.outline.frame.gradient_to_site(gradient);
@@ -372,7 +407,10 @@ impl Comparison<'_> {
 
     fn is_level(&self) -> bool {
         let head = self.head;
-        head.slope.norm() == 0.0 && head.per_radian_m == 0.0 && head.measured.is_empty()
+        head.slope.norm() == 0.0
+            && head.per_radian_m == 0.0
+            && head.measured.is_empty()
+            && head.solved.is_none()
     }
 
     fn middle_of_wells(&self) -> Point {

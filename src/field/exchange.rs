@@ -33,7 +33,7 @@ impl WellField {
     /// barrier, none where it is infinite or not determined.
     pub fn ambient_inflow_m3_d(&self, edge: usize) -> Option<f64> {
         let shape = &self.outline.shape;
-        let kinds = shape.side_kinds();
+        let kinds = self.outline.side_kinds();
         let sides = kinds.iter().zip(&self.outline.sides).enumerate();
         let inflow_m: Option<f64> = sides
             .filter(|(_, (kind, _))| **kind == Kind::FixedHead)
@@ -54,7 +54,11 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
         lake_radius_m: _,
         per_radian_m,
         measured,
+        solved,
     } = head;
+    if let Some(solved) = solved {
+        return solved.general.outflow_before_m(side, along);
+    }
     if *per_radian_m != 0.0 || !measured.is_empty() {
         return None;
     }

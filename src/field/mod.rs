@@ -7,10 +7,12 @@ mod accuracy;
 mod ambient;
 mod ambient_error;
 mod exchange;
+mod solved;
 mod steady;
 
 use std::f64::consts::FRAC_1_PI;
 use std::ops::Range;
+use std::sync::Arc;
 
 use num_complex::Complex64;
 use rayon::prelude::*;
@@ -19,6 +21,7 @@ use crate::green::{Green, Source};
 use crate::outline::{Kind, Outline, Shape};
 use crate::site::{Length, Point, Refusal, Site, Vector};
 use ambient::AmbientHead;
+use ambient_error::AmbientError;
 
 /// Points that one task evaluates: enough to hide the cost of a task.
 const POINTS_A_TASK: usize = 2048;
@@ -26,7 +29,7 @@ const POINTS_A_TASK: usize = 2048;
 /// The heads of one aquifer with its wells.
 pub struct WellField {
     outline: Outline,
-    green: Box<dyn Green>,
+    green: Arc<dyn Green>,
     transmissivity_m2_d: f64,
     wells: Vec<FieldWell>,
     ambient: AmbientHead,
@@ -57,23 +60,24 @@ impl WellField {
     /// edges; the refusals say which numbers disagree and what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
         let mut notes = Vec::new();
-        let green = steady::green_of(site, &outline, &mut notes).map_err(|fault| vec![fault])?;
-        let ambient = ambient::solve(site, &outline, green.as_ref(), &mut notes)
-            .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
+        let refusals = |faults: Vec<AmbientError>| -> Vec<Refusal> {
+            faults.into_iter().map(Refusal::from).collect()
+        };
+        let wells = wells_of(site, &outline);
+        let stated = ambient::stated_gradient(site).map_err(refusals)?;
+        let canonical = outline.frame.gradient_to_canonical(stated);
+        let solved =
+            solved::solve(site, &outline, &wells, canonical).map_err(|fault| vec![fault])?;
+        let green = match &solved {
+            Some(solved) => solved.general.clone(),
+            None => steady::green_of(site, &outline).map_err(|fault| vec![fault])?,
+        };
+        steady::note_radius(site, &outline, &mut notes);
+        let hardest_edge = solved.as_ref().and_then(|solved| solved.hardest_edge(&outline));
+        let ambient = ambient::solve(site, &outline, green.as_ref(), solved, &mut notes)
+            .map_err(refusals)?;
         let datum = steady::datum(site, &outline, &mut notes);
         let has_river = outline.side_kinds().contains(&Kind::FixedHead);
-        let rim_factor = outline.frame.stretch.rim_factor();
-        let of_well = |&index: &usize| {
-            let well = site.wells.get(index)?;
-            Some(FieldWell {
-                index,
-                pole: outline.frame.to_canonical(well.at),
-                pumping_m3_d: well.pumping.si(),
-                rim_m: well.radius.si() * rim_factor,
-            })
-        };
-        let mut wells: Vec<FieldWell> = outline.wells.iter().filter_map(of_well).collect();
-        wells.sort_by_key(|well| well.index);
         let mut field = Self {
             wells,
             transmissivity_m2_d: site.aquifer.transmissivity.si(),
@@ -87,7 +91,7 @@ impl WellField {
             ambient,
             datum,
             error_bound_m: 0.0,
-            hardest_edge: None,
+            hardest_edge,
             notes,
         };
         field.error_bound_m = accuracy::bound_m(&field);
@@ -106,15 +110,17 @@ impl WellField {
 
     /// Heads, metres, in point order; NaN outside the aquifer. Parallel.
     pub fn heads_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |z, drawdown_m| {
+        self.evaluate(points, |places, drawdowns_m| {
             let (green, shape) = (self.green.as_ref(), &self.outline.shape);
-            self.ambient.head_m(z, green, shape) - drawdown_m
+            let before_m = self.ambient.heads_m(places, green, shape).into_iter();
+            let heads = before_m.zip(drawdowns_m).map(|(before, drawdown)| before - drawdown);
+            heads.collect()
         })
     }
 
     /// Drawdowns, metres, positive where the head falls; NaN outside. Parallel.
     pub fn drawdowns_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |_, drawdown_m| drawdown_m)
+        self.evaluate(points, |_, drawdowns_m| drawdowns_m)
     }
 
     /// The head before any pumping, metres; NaN outside.
@@ -232,7 +238,7 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
-            Shape::General => "general solver",
+            Shape::General => "general solver on the edges, its error proven",
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }
@@ -288,47 +294,68 @@ impl WellField {
         })
     }
 
-    /// Σ Q/T G at each point of the aquifer, handed to `finish` with the
-    /// canonical place; NaN elsewhere.
+    /// Σ Q/T G at the points of the aquifer, handed to `finish` with their
+    /// canonical places; NaN elsewhere.
     fn evaluate(
         &self,
         points: &[Point],
-        finish: impl Fn(Complex64, f64) -> f64 + Sync,
+        finish: impl Fn(&[Complex64], Vec<f64>) -> Vec<f64> + Sync,
     ) -> Vec<f64> {
-        let sources: Vec<_> = self
-            .wells
-            .iter()
-            .map(|well| Source {
-                pole: well.pole,
-                strength_m: self.strength_m(well),
-                rim_m: well.rim_m,
-            })
-            .collect();
+        let source = |well: &FieldWell| Source {
+            pole: well.pole,
+            strength_m: self.strength_m(well),
+            rim_m: well.rim_m,
+        };
+        let sources: Vec<_> = self.wells.iter().map(source).collect();
         let at_datum: f64 = self
             .wells
             .iter()
             .map(|well| self.strength_m(well) * self.green_at_datum(well))
             .sum();
+        let places: Vec<Option<Complex64>> = points
+            .par_iter()
+            .with_min_len(POINTS_A_TASK)
+            .map(|point| {
+                self.holds(*point)
+                    .then(|| self.outline.frame.to_canonical(*point))
+            })
+            .collect();
+        // The general solver shares its work out itself, by where places are.
+        let points_a_task = match self.outline.boundary {
+            Some(_) => points.len().max(1),
+            None => POINTS_A_TASK,
+        };
         let mut values = vec![f64::NAN; points.len()];
-        points
-            .par_chunks(POINTS_A_TASK)
-            .zip(values.par_chunks_mut(POINTS_A_TASK))
-            .for_each(|(points, values)| {
-                let inside: Vec<_> = points.iter().map(|point| self.holds(*point)).collect();
-                let held = points.iter().zip(&inside).filter(|(_, inside)| **inside);
-                let places: Vec<_> = held
-                    .map(|(point, _)| self.outline.frame.to_canonical(*point))
-                    .collect();
-                let mut drawdowns_m = vec![-at_datum; places.len()];
-                self.green.superpose(&sources, &places, &mut drawdowns_m);
-                let slots = values
-                    .iter_mut()
-                    .zip(&inside)
-                    .filter(|(_, inside)| **inside);
-                for ((value, _), (z, drawdown_m)) in slots.zip(places.iter().zip(drawdowns_m)) {
-                    *value = finish(*z, drawdown_m);
+        places
+            .par_chunks(points_a_task)
+            .zip(values.par_chunks_mut(points_a_task))
+            .for_each(|(places, values)| {
+                let held: Vec<_> = places.iter().copied().flatten().collect();
+                let mut drawdowns_m = vec![-at_datum; held.len()];
+                self.green.superpose(&sources, &held, &mut drawdowns_m);
+                let slots = values.iter_mut().zip(places);
+                let slots = slots.filter(|(_, place)| place.is_some());
+                for ((slot, _), value) in slots.zip(finish(&held, drawdowns_m)) {
+                    *slot = value;
                 }
             });
         values
     }
+}
+
+/// The wells of an outline in its canonical frame, in order of their index.
+fn wells_of(site: &Site, outline: &Outline) -> Vec<FieldWell> {
+    let rim_factor = outline.frame.stretch.rim_factor();
+    let of_well = |&index: &usize| {
+        let well = site.wells.get(index)?;
+        Some(FieldWell {
+            index,
+            pole: outline.frame.to_canonical(well.at),
+            pumping_m3_d: well.pumping.si(),
+            rim_m: well.radius.si() * rim_factor,
+        })
+    };
+    let mut wells: Vec<FieldWell> = outline.wells.iter().filter_map(of_well).collect();
+    wells.sort_by_key(|well| well.index);
+    wells
 }

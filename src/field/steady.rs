@@ -1,5 +1,7 @@
 //! Whether a steady state exists, and what the plan must say where it does not.
 
+use std::sync::Arc;
+
 use num_complex::Complex64;
 
 use crate::green::{self, Green, GreenError};
@@ -9,21 +11,25 @@ use crate::site::{Refusal, Site, Subject};
 /// Pumping and injection balance when they differ by less than this share.
 const BALANCE: f64 = 1e-6;
 
-/// The Green's function of an outline in which a steady state exists.
-pub(super) fn green_of(
-    site: &Site,
-    outline: &Outline,
-    notes: &mut Vec<String>,
-) -> Result<Box<dyn Green>, Refusal> {
+/// The Green's function of an outline in closed form in which a steady state
+/// exists.
+pub(super) fn green_of(site: &Site, outline: &Outline) -> Result<Arc<dyn Green>, Refusal> {
     let radius_m = site.aquifer.influence_radius.map(|radius| radius.si());
     let green = green::of(&outline.shape, radius_m).map_err(|error| refusal(error, outline))?;
+    if is_closed(outline) {
+        check_balance(site, outline)?;
+    }
+    Ok(green)
+}
+
+/// Notes what an influence radius of the plan is used for.
+pub(super) fn note_radius(site: &Site, outline: &Outline, notes: &mut Vec<String>) {
     let has_river = outline.side_kinds().contains(&Kind::FixedHead);
-    let closed = is_closed(outline);
-    match radius_m {
+    match site.aquifer.influence_radius.map(|radius| radius.si()) {
         Some(_) if has_river => notes.push(
             "influence_radius is not used: a river fixes the head of this aquifer.".to_owned(),
         ),
-        Some(_) if closed => notes.push(
+        Some(_) if is_closed(outline) => notes.push(
             "influence_radius is not used: barriers close this aquifer on all sides.".to_owned(),
         ),
         Some(radius_m) => notes.push(format!(
@@ -32,10 +38,6 @@ pub(super) fn green_of(
         )),
         None => {}
     }
-    if closed {
-        check_balance(site, outline)?;
-    }
-    Ok(green)
 }
 
 /// In a closed basin, the place whose head `[ambient]` fixes; without one the

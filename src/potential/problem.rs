@@ -41,19 +41,17 @@ pub(super) struct Posed {
 
 impl Posed {
     pub fn new(region: &Region, problem: Problem) -> Self {
-        let heads = |side: usize| problem.heads_m.get(side).copied().unwrap_or([0.0; 2]);
-        let is_head = |side: usize| {
-            let side = region.sides().get(side);
-            side.is_some_and(|side| side.condition == Condition::Head)
-        };
         let mut tapers = Vec::new();
-        for index in 0..region.sides().len() {
-            let Some(joint) = region.joint(index).filter(|_| is_head(index)) else {
+        for (index, side) in region.sides().iter().enumerate() {
+            let Some(joint) = region.joint(index) else {
                 continue;
             };
-            let jump_m = heads(joint.next)[0] - heads(index)[1];
-            if let Some(next) = region.sides().get(joint.next)
-                && is_head(joint.next)
+            let jump = if side.goes_out() {
+                far_jump(region, &problem, index, joint.next)
+            } else {
+                jump(region, &problem, index, joint.next)
+            };
+            if let (Some(jump_m), Some(next)) = (jump, region.sides().get(joint.next))
                 && jump_m != 0.0
             {
                 let taper = Taper::new(joint.next, next.curve, index, jump_m, joint.angle_rad);
@@ -168,6 +166,37 @@ impl Posed {
     fn taper_values(&self, x: Complex64) -> f64 {
         self.tapers.iter().map(|taper| taper.value(x)).sum()
     }
+}
+
+/// By how much the given head rises from the end of a side to the start of the
+/// next, where both are head sides.
+fn jump(region: &Region, problem: &Problem, side: usize, next: usize) -> Option<f64> {
+    let head = |index: usize| {
+        let side = region.sides().get(index)?;
+        let heads = problem.heads_m.get(index).copied().unwrap_or_default();
+        (side.condition == Condition::Head).then_some(heads)
+    };
+    Some(head(next)?[0] - head(side)?[1])
+}
+
+/// The same far away on two half-lines, where clogged banks act as clean ones:
+/// of what is left of the head beside the uniform flow.
+fn far_jump(region: &Region, problem: &Problem, side: usize, next: usize) -> Option<f64> {
+    let far_head = |index: usize| {
+        let side = region.sides().get(index)?;
+        let heads = problem.heads_m.get(index).copied().unwrap_or_default();
+        let drawn_end = side.curve.at(f64::from(!side.goes_out()));
+        let beside_flow = heads[0] - (problem.flow.conj() * drawn_end).re;
+        let outward = -Complex64::I * side.arrives;
+        match side.condition {
+            Condition::Head => Some(beside_flow),
+            Condition::Flux => None,
+            Condition::Clogged { skin_m } => {
+                Some(beside_flow - skin_m * (problem.flow.conj() * outward).re)
+            }
+        }
+    };
+    Some(far_head(next)? - far_head(side)?)
 }
 
 /// On a half-line a uniform flow, square to it, has the head of its drawn
