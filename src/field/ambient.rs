@@ -10,6 +10,7 @@
 //! | half-plane, stage falling along the river | linear along the river |
 //! | other rivers of different stage | Σ stage · harmonic measure of the river |
 //! | half-plane, river across an open end | plus slope · distance from the river |
+//! | half-plane, river behind a clogged bank | plus slope · (distance from the river + skin) |
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
 //! The harmonic measure of a river seen from x is the share that it would give
@@ -117,6 +118,7 @@ fn free_flow(shape: &Shape) -> FreeFlow {
     let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
     match *shape {
         Shape::DiskExterior { .. } => FreeFlow::Any,
+        Shape::CloggedHalfPlane { .. } => FreeFlow::Along(x_axis),
         Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
         Shape::Axes { x, y } => match (x, y) {
             (Open, Open) => FreeFlow::Any,
@@ -153,6 +155,11 @@ pub(super) fn solve(
         FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
     };
     head.slope += free;
+    if let Shape::CloggedHalfPlane { skin_m } = outline.shape {
+        // ∂h/∂x = (h − stage)/b on the bank: the flow through it needs a step
+        // of head.
+        head.level_m += free.re * skin_m;
+    }
     if let Shape::DiskExterior { radius_m } = outline.shape {
         head.lake_radius_m = Some(radius_m);
     }

@@ -217,6 +217,9 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::CloggedHalfPlane { .. } => {
+                "one image well and a line of image sinks behind it, in closed form"
+            }
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }
