@@ -13,6 +13,7 @@
 //! | half-plane, river behind a clogged bank | plus slope · (distance from the river + skin) |
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
+//! Recharge adds its own mound (`recharge`).
 //! The harmonic measure of a river seen from x is the share that it would give
 //! to a well at x, so `green` knows it; on the river itself it jumps with the
 //! last digit of x, so x is taken a hair inside. What the plan states is compared with
@@ -23,6 +24,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::ambient_error::AmbientError;
+use super::recharge::Recharge;
 use crate::green::Green;
 use crate::outline::{Axis, Kind, Outline, Piece, Shape};
 use crate::site::{Ambient, Point, Site, Vector, direction_of_azimuth};
@@ -50,6 +52,8 @@ pub(super) struct AmbientHead {
     per_radian_m: f64,
     /// Parts of sides whose stage differs from `level_m`, and by how much.
     measured: Vec<(usize, Range<f64>, f64)>,
+    /// The mound built by recharge, where there is some.
+    pub recharge: Option<Recharge>,
 }
 
 impl AmbientHead {
@@ -66,7 +70,8 @@ impl AmbientHead {
             .iter()
             .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), inside))
             .sum();
-        self.level_m + linear * bend + turned + measured
+        let mound = self.recharge.map_or(0.0, |recharge| recharge.rise_m(z));
+        self.level_m + linear * bend + turned + measured + mound
     }
 
     /// ∂h/∂x + i ∂h/∂y at a canonical place. The part of harmonic measures is
@@ -97,7 +102,8 @@ impl AmbientHead {
                 rise_m * Complex64::new(along_x, along_y) / (2.0 * step_m)
             })
             .sum();
-        linear + turned + measured
+        let mound = self.recharge.map(|recharge| recharge.gradient(z));
+        linear + turned + measured + mound.unwrap_or_default()
     }
 }
 
@@ -143,6 +149,7 @@ pub(super) fn solve(
     site: &Site,
     outline: &Outline,
     green: &dyn Green,
+    recharge: Option<Recharge>,
     notes: &mut Vec<String>,
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
@@ -155,6 +162,8 @@ pub(super) fn solve(
         FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
     };
     head.slope += free;
+    head.recharge = recharge;
+    notes.extend(recharge.map(|recharge| recharge.note()));
     if let Shape::CloggedHalfPlane { skin_m } = outline.shape {
         // ∂h/∂x = (h − stage)/b on the bank: the flow through it needs a step
         // of head.
@@ -213,12 +222,12 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         lake_radius_m: None,
         per_radian_m: 0.0,
         measured: Vec::new(),
+        recharge: None,
     };
-    if let [(0, piece)] = rivers.as_slice() {
-        // A half-plane's river may fall along its side, x = 0.
-        head.slope = Complex64::new(0.0, piece.stage_slope);
-        return head;
-    }
+    // A half-plane's rivers may fall along its side, x = 0, all alike; their
+    // levels at y = 0 may differ.
+    let fall = rivers.first().map_or(0.0, |(_, piece)| piece.stage_slope);
+    head.slope = Complex64::new(0.0, fall);
     if let [(first_side, first), (second_side, second)] = rivers.as_slice() {
         let rise_m = second.stage_m - first.stage_m;
         if let Some(across) = across_one_axis(&outline.shape, *first_side, *second_side) {
@@ -373,7 +382,10 @@ impl Comparison<'_> {
 
     fn is_level(&self) -> bool {
         let head = self.head;
-        head.slope.norm() == 0.0 && head.per_radian_m == 0.0 && head.measured.is_empty()
+        head.slope.norm() == 0.0
+            && head.per_radian_m == 0.0
+            && head.measured.is_empty()
+            && head.recharge.is_none()
     }
 
     fn middle_of_wells(&self) -> Point {

@@ -179,6 +179,20 @@ pub enum OutlineError {
         /// By how much, in words.
         departure: String,
     },
+    /// Stages along one line that fall differently.
+    #[error(
+        "the stage of {river} slopes by {slope:.3e} along its line, that of {other} before it by {other_slope:.3e}"
+    )]
+    StagesBend {
+        /// The river.
+        river: Named,
+        /// Its slope.
+        slope: f64,
+        /// The first river of the same line.
+        other: Named,
+        /// The first river's slope.
+        other_slope: f64,
+    },
     /// A stage that varies beside an outline that allows none.
     #[error("the stage of {river} varies by {spread}, and the aquifer is a {shape}")]
     StageVaries {
@@ -211,8 +225,11 @@ impl OutlineError {
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
             Self::BankResistance { river, .. }
             | Self::BanksDiffer { river, .. }
-            | Self::BankWithoutThickness { river, .. } => with_key(&river.subject, "bank_resistance"),
+            | Self::BankWithoutThickness { river, .. } => {
+                with_key(&river.subject, "bank_resistance")
+            }
             Self::StageNotLinear { river, .. }
+            | Self::StagesBend { river, .. }
             | Self::StageVaries { river, .. }
             | Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
             Self::WildCoordinate { part } | Self::OnEdge { part, .. } => part.subject.clone(),
@@ -234,6 +251,11 @@ impl OutlineError {
             Self::NoClosedForm { why, .. } => why.clone(),
             Self::StageVaries { .. } => Some(
                 "a stage that falls along the river has a closed form beside a half-plane alone"
+                    .to_owned(),
+            ),
+            Self::StagesBend { .. } => Some(
+                "the outer rivers go on for ever, and only one straight fall along the whole line \
+                 fixes the head beside them"
                     .to_owned(),
             ),
             Self::NoWell => Some("the aquifer is found from the wells that stand in it".to_owned()),
@@ -291,7 +313,7 @@ impl OutlineError {
                 "split the area into one neighbour for each side".to_owned()
             }
             Self::NoClosedForm { remedy, .. } => remedy.clone(),
-            Self::StageNotLinear { .. } => {
+            Self::StageNotLinear { .. } | Self::StagesBend { .. } => {
                 "write stages that fall evenly along the line, or one constant stage".to_owned()
             }
             Self::StageVaries { mean_m, .. } => {
@@ -310,6 +332,9 @@ impl OutlineError {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
+            }
+            Self::StagesBend { other, .. } | Self::BanksDiffer { other, .. } => {
+                vec![label(other, "along the same line")]
             }
             Self::OtherBank { edge, .. } => vec![label(edge, "the edge between")],
             Self::AcrossAquifers {

@@ -27,7 +27,11 @@ impl Outline {
         // One edge may bend round several sides; it is named once.
         let mut sides: Vec<String> = Vec::new();
         for (side, kind) in kinds.iter().enumerate() {
-            let words = format!("{} ({})", self.side_name(site, side), self.kind_words(*kind));
+            let words = format!(
+                "{} ({})",
+                self.side_name(site, side),
+                self.kind_words(*kind)
+            );
             if !sides.contains(&words) {
                 sides.push(words);
             }
