@@ -87,10 +87,9 @@ impl AmbientHead {
                 self.slope - radius * radius * inner
             }
         };
-        let turned = if self.per_radian_m == 0.0 {
-            Complex64::new(0.0, 0.0)
-        } else {
-            self.per_radian_m * i * z / z.norm_sqr()
+        let turned = match self.per_radian_m {
+            0.0 => Complex64::ZERO,
+            rise_m => rise_m * i * z / z.norm_sqr(),
         };
         let measured: Complex64 = self
             .measured
@@ -104,6 +103,25 @@ impl AmbientHead {
             .sum();
         let mound = self.recharge.map(|recharge| recharge.gradient(z));
         linear + turned + measured + mound.unwrap_or_default()
+    }
+}
+
+impl AmbientHead {
+    /// Adds what the edges leave free of a uniform flow.
+    fn add_free_flow(&mut self, shape: &Shape, slope: Complex64) {
+        let free = match free_flow(shape) {
+            FreeFlow::No => Complex64::ZERO,
+            FreeFlow::Any => slope,
+            FreeFlow::Along(axis) => axis * (slope * axis.conj()).re,
+        };
+        self.slope += free;
+        match *shape {
+            // ∂h/∂x = (h − stage)/b: the flow through the bank takes a step of
+            // head.
+            Shape::CloggedHalfPlane { skin_m } => self.level_m += free.re * skin_m,
+            Shape::DiskExterior { radius_m } => self.lake_radius_m = Some(radius_m),
+            _ => {}
+        }
     }
 }
 
@@ -155,23 +173,9 @@ pub(super) fn solve(
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
     let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
-    let canonical = outline.frame.gradient_to_canonical(stated);
-    let free = match free_flow(&outline.shape) {
-        FreeFlow::No => Complex64::new(0.0, 0.0),
-        FreeFlow::Any => canonical,
-        FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
-    };
-    head.slope += free;
+    head.add_free_flow(&outline.shape, outline.frame.gradient_to_canonical(stated));
     head.recharge = recharge;
     notes.extend(recharge.map(|recharge| recharge.note()));
-    if let Shape::CloggedHalfPlane { skin_m } = outline.shape {
-        // ∂h/∂x = (h − stage)/b on the bank: the flow through it needs a step
-        // of head.
-        head.level_m += free.re * skin_m;
-    }
-    if let Shape::DiskExterior { radius_m } = outline.shape {
-        head.lake_radius_m = Some(radius_m);
-    }
     let Some(ambient) = &site.ambient else {
         return if has_river {
             Ok(head)
@@ -218,7 +222,7 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         .collect();
     let mut head = AmbientHead {
         level_m: rivers.first().map_or(0.0, |(_, piece)| piece.stage_m),
-        slope: Complex64::new(0.0, 0.0),
+        slope: Complex64::ZERO,
         lake_radius_m: None,
         per_radian_m: 0.0,
         measured: Vec::new(),

@@ -101,7 +101,7 @@ fn expansion(w: Complex64) -> [Complex64; 2] {
 mod tests {
     use super::*;
 
-    /// Σ z^n/n^s by 200,000 terms; the rest is below 1/(2·4e5²).
+    /// Σ z^n/n³ over n < 2e5, smallest first; the rest is below 1/(4·2e5²).
     #[test]
     fn both_ways_agree_where_they_meet_and_with_the_series_on_the_circle() {
         for step in 0..=40 {
@@ -110,13 +110,14 @@ mod tests {
             for (one, other) in series(w).into_iter().zip(expansion(w)) {
                 assert!((one - other).norm() < 4e-15, "{w}: {one} {other}");
             }
-            let sum: Complex64 = (1..400_000)
+            let sum: Complex64 = (1..200_000)
                 .step_by(2)
+                .rev()
                 .map(f64::from)
                 .map(|n| Complex64::cis(n * angle) / (n * n * n))
                 .sum();
             let [third, _] = chi(Complex64::new(0.0, angle));
-            assert!((third - sum).norm() < 4e-12, "{angle}: {third} {sum}");
+            assert!((third - sum).norm() < 7e-12, "{angle}: {third} {sum}");
         }
     }
 
