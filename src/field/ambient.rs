@@ -24,6 +24,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::ambient_error::AmbientError;
+use super::free_flow;
 use super::recharge::Recharge;
 use crate::green::Green;
 use crate::outline::{Axis, Kind, Outline, Piece, Shape};
@@ -106,60 +107,6 @@ impl AmbientHead {
     }
 }
 
-impl AmbientHead {
-    /// Adds what the edges leave free of a uniform flow.
-    fn add_free_flow(&mut self, shape: &Shape, slope: Complex64) {
-        let free = match free_flow(shape) {
-            FreeFlow::No => Complex64::ZERO,
-            FreeFlow::Any => slope,
-            FreeFlow::Along(axis) => axis * (slope * axis.conj()).re,
-        };
-        self.slope += free;
-        match *shape {
-            // ∂h/∂x = (h − stage)/b: the flow through the bank takes a step of
-            // head.
-            Shape::CloggedHalfPlane { skin_m } => self.level_m += free.re * skin_m,
-            Shape::DiskExterior { radius_m } => self.lake_radius_m = Some(radius_m),
-            _ => {}
-        }
-    }
-}
-
-/// Which uniform flow the edges leave free, in the canonical frame.
-#[derive(Clone, Copy, Debug, PartialEq)]
-enum FreeFlow {
-    /// None.
-    No,
-    /// Along one axis only: a unit number.
-    Along(Complex64),
-    /// In any direction.
-    Any,
-}
-
-fn free_flow(shape: &Shape) -> FreeFlow {
-    use Axis::{OneEdge, Open, TwoEdges};
-    use Kind::{FixedHead, NoFlow};
-    let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
-    match *shape {
-        Shape::DiskExterior { .. } => FreeFlow::Any,
-        Shape::CloggedHalfPlane { .. } => FreeFlow::Along(x_axis),
-        Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
-        Shape::Axes { x, y } => match (x, y) {
-            (Open, Open) => FreeFlow::Any,
-            (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),
-            (OneEdge(NoFlow), Open | OneEdge(FixedHead)) => FreeFlow::Along(y_axis),
-            (
-                TwoEdges {
-                    kinds: [NoFlow, NoFlow],
-                    ..
-                },
-                Open | OneEdge(FixedHead),
-            ) => FreeFlow::Along(y_axis),
-            _ => FreeFlow::No,
-        },
-    }
-}
-
 /// Finds the head before pumping of one aquifer.
 ///
 /// `notes` receives what the reader should know of it.
@@ -173,7 +120,7 @@ pub(super) fn solve(
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
     let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
-    head.add_free_flow(&outline.shape, outline.frame.gradient_to_canonical(stated));
+    add_free_flow(&mut head, outline, stated);
     head.recharge = recharge;
     notes.extend(recharge.map(|recharge| recharge.note()));
     let Some(ambient) = &site.ambient else {
@@ -195,6 +142,18 @@ pub(super) fn solve(
         fix_level(&mut head, ambient, outline, stated, notes)?;
     }
     Ok(head)
+}
+
+/// Adds what the edges leave free of a stated uniform flow.
+fn add_free_flow(head: &mut AmbientHead, outline: &Outline, stated: Vector) {
+    let free = free_flow::part_of(&outline.shape, outline.frame.gradient_to_canonical(stated));
+    head.slope += free;
+    match outline.shape {
+        // ∂h/∂x = (h − stage)/b: the flow through the bank takes a step of head.
+        Shape::CloggedHalfPlane { skin_m } => head.level_m += free.re * skin_m,
+        Shape::DiskExterior { radius_m } => head.lake_radius_m = Some(radius_m),
+        _ => {}
+    }
 }
 
 /// ∇h of the plan's `[ambient]`, in the site's frame.

@@ -6,6 +6,7 @@
 mod accuracy;
 mod ambient;
 mod ambient_error;
+mod free_flow;
 mod recharge;
 mod steady;
 
