@@ -305,6 +305,10 @@ impl Comparison<'_> {
                 faults.push(AmbientError::HeadDiffers {
                     stated_m: level.si(),
                     fixed_m,
+                    cause: match self.head.recharge {
+                        Some(_) => "the rivers and the recharge",
+                        None => "the rivers",
+                    },
                 });
             }
         }

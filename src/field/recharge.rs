@@ -116,7 +116,7 @@ impl Span {
     }
 
     /// Distance from the river that positions count from.
-    fn from_river(&self, position: f64) -> f64 {
+    fn measured(&self, position: f64) -> f64 {
         if self.is_reversed() {
             self.width - position
         } else {
@@ -124,7 +124,7 @@ impl Span {
         }
     }
 
-    /// Which way `from_river` grows.
+    /// Which way `measured` grows.
     fn direction(&self) -> f64 {
         if self.is_reversed() { -1.0 } else { 1.0 }
     }
@@ -265,9 +265,9 @@ impl Straight {
     /// (T/N) u.
     fn rise(&self, z: Complex64) -> f64 {
         let z = self.turned(z);
-        let (x, w) = (self.across.from_river(z.re), self.across.unfolded());
+        let (x, w) = (self.across.measured(z.re), self.across.unfolded());
         let ends: f64 = self
-            .waves(self.y_from_river(z.im))
+            .waves(self.y_measured(z.im))
             .map(|wave| wave.sign * chi(self.phase(x, wave.distance))[0].im)
             .sum();
         0.5 * x * (w - x) - self.factor() * ends
@@ -276,10 +276,10 @@ impl Straight {
     /// The gradient of (T/N) u.
     fn gradient(&self, z: Complex64) -> Complex64 {
         let z = self.turned(z);
-        let (x, w) = (self.across.from_river(z.re), self.across.unfolded());
+        let (x, w) = (self.across.measured(z.re), self.across.unfolded());
         // ∂S/∂x = (4W/π²) Re χ₂, ∂S/∂y = −(4W/π²) Im χ₂.
         let mut ends = Complex64::ZERO;
-        for wave in self.waves(self.y_from_river(z.im)) {
+        for wave in self.waves(self.y_measured(z.im)) {
             let [_, second] = chi(self.phase(x, wave.distance));
             ends += wave.sign * Complex64::new(second.re, -wave.direction * second.im);
         }
@@ -307,7 +307,7 @@ impl Straight {
                 return None;
             }
             [along.start, along.end].map(|y| {
-                let y = self.y_from_river(y);
+                let y = self.y_measured(y);
                 0.5 * w * y + self.factor() * self.stream(0.0, y)
             })
         } else {
@@ -320,7 +320,7 @@ impl Straight {
                 return Some(0.0);
             }
             [along.start, along.end]
-                .map(|x| -self.factor() * self.stream(self.across.from_river(x), 0.0))
+                .map(|x| -self.factor() * self.stream(self.across.measured(x), 0.0))
         };
         Some((end - start).abs())
     }
@@ -337,9 +337,9 @@ impl Straight {
         Complex64::new(-distance, x) * (PI / self.across.unfolded())
     }
 
-    fn y_from_river(&self, y: f64) -> f64 {
+    fn y_measured(&self, y: f64) -> f64 {
         match self.along {
-            Ends::Two(span) => span.from_river(y),
+            Ends::Two(span) => span.measured(y),
             _ => y,
         }
     }
