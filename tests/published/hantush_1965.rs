@@ -215,6 +215,20 @@ fn the_head_before_pumping_takes_a_step_through_the_bank() {
         .field
         .ambient_head_m(solved.at(600_300.0, 5_740_500.0));
     assert!((ours - 10.75).abs() < 1e-12, "{ours}");
+    // A second river goes on along the same line with the same fall.
+    let on = r#"
+[[river]]
+name = "Upper Silt"
+line = [[600000.0, 5741000.0], [600000.0, 5742000.0]]
+stage = [11.0, 11.5]
+bank_resistance = 2.8
+"#;
+    let solved = Solved::of(&plan(ISOTROPIC, "stage = [10.0, 11.0]", on));
+    for y in [5_739_400.0, 5_741_600.0] {
+        let ours = solved.field.ambient_head_m(solved.at(600_300.0, y));
+        let expected = 10.0 + (y - 5_739_000.0) / 2000.0;
+        assert!((ours - expected).abs() < 1e-9, "{y}: {ours}");
+    }
 }
 
 /// With K 4 times as large along azimuth 0 as across, lengths along y shrink by
