@@ -1,12 +1,13 @@
 //! A bound on the rounding error of a head.
 //!
-//! Closed forms have no truncation beyond 1e-16, so three roundings count.
+//! Closed forms have no truncation beyond 1e-16, so these roundings count.
 //!
 //! 1. G itself: `green` states at most 64ε (1 + κ·distance) for each well; with
 //!    distances up to e^40 periods left out, 64 · 40 ε bounds it.
 //! 2. Places: stretching, moving and turning a coordinate of size c costs at
 //!    most 8εc; beside a well's rim the head changes by Q/(2πT r_w) a metre.
-//! 3. The sums: one rounding of the level and of each well's part.
+//! 3. Recharge: `recharge` states its own bound.
+//! 4. The sums: one rounding of the level and of each well's part.
 
 use super::WellField;
 
@@ -39,5 +40,6 @@ pub(super) fn bound_m(field: &WellField) -> f64 {
             strength_m * (of_green + of_place)
         })
         .sum();
-    of_wells + 4.0 * EPSILON * level_m
+    let of_recharge = field.ambient.recharge.map_or(0.0, |mound| mound.error_m());
+    of_wells + of_recharge + 4.0 * EPSILON * level_m
 }

@@ -17,6 +17,9 @@
 //! stage exchanges a finite amount, for which there is no closed form here: it
 //! is left open too.
 //!
+//! Recharge leaves through the rivers whatever their stages: `recharge` knows
+//! how much through each.
+//!
 //! The inflow of a linear head is exact but for four roundings.
 
 use std::ops::Range;
@@ -41,7 +44,7 @@ impl WellField {
             .filter(|(_, piece)| piece.edge == edge)
             .map(|(side, piece)| inflow_m(&self.ambient, shape, side, &piece.along))
             .sum();
-        inflow_m.map(|inflow_m| self.transmissivity_m2_d * inflow_m)
+        Some(self.transmissivity_m2_d * inflow_m? - self.recharge_to_m3_d(edge)?)
     }
 }
 
@@ -54,6 +57,8 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
         lake_radius_m: _,
         per_radian_m,
         measured,
+        // Added by the caller, as what leaves.
+        recharge: _,
     } = head;
     if *per_radian_m != 0.0 || !measured.is_empty() {
         return None;
@@ -71,6 +76,7 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
 fn inward(shape: &Shape, side: usize) -> Complex64 {
     let (x, y) = match *shape {
         Shape::Axes { x, y } => (x, y),
+        Shape::CloggedHalfPlane { .. } => return Complex64::ONE,
         Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
             return Complex64::ZERO;
         }

@@ -7,6 +7,8 @@ mod accuracy;
 mod ambient;
 mod ambient_error;
 mod exchange;
+mod free_flow;
+mod recharge;
 mod steady;
 
 use std::f64::consts::FRAC_1_PI;
@@ -57,8 +59,9 @@ impl WellField {
     /// edges; the refusals say which numbers disagree and what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
         let mut notes = Vec::new();
+        let recharge = recharge::of(site, &outline).map_err(|fault| vec![*fault])?;
         let green = steady::green_of(site, &outline, &mut notes).map_err(|fault| vec![fault])?;
-        let ambient = ambient::solve(site, &outline, green.as_ref(), &mut notes)
+        let ambient = ambient::solve(site, &outline, green.as_ref(), recharge, &mut notes)
             .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
         let datum = steady::datum(site, &outline, &mut notes);
         let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
@@ -207,6 +210,26 @@ impl WellField {
         self.wells.iter().map(given).sum()
     }
 
+    /// Recharge that leaves the aquifer through a part of a side, m³/d; none
+    /// where the part is endless. It does so with or without wells: what they
+    /// take from a river is `inflow_m3_d`.
+    pub fn recharge_through_m3_d(&self, side: usize, along: &Range<f64>) -> Option<f64> {
+        let through = |recharge: recharge::Recharge| recharge.through_m3_d(side, along);
+        self.ambient.recharge.map_or(Some(0.0), through)
+    }
+
+    /// Recharge that edge `Site::edges[edge]` takes up, m³/d, none where it
+    /// takes up recharge along an endless reach. Over all edges of a closed outline this is
+    /// N times its area.
+    pub fn recharge_to_m3_d(&self, edge: usize) -> Option<f64> {
+        let pieces = self.outline.sides.iter().enumerate();
+        pieces
+            .flat_map(|(side, pieces)| pieces.iter().map(move |piece| (side, piece)))
+            .filter(|(_, piece)| piece.edge == edge)
+            .map(|(side, piece)| self.recharge_through_m3_d(side, &piece.along))
+            .sum()
+    }
+
     /// A proven bound on the error of a head, metres; of a closed form, which
     /// has no other error, on its rounding.
     pub fn error_bound_m(&self) -> f64 {
@@ -232,6 +255,9 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::CloggedHalfPlane { .. } => {
+                "one image well and a line of image sinks behind it, in closed form"
+            }
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }

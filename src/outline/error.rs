@@ -42,18 +42,36 @@ pub enum OutlineError {
         azimuth_deg: f64,
     },
     /// A clogged river bank needs another method.
-    #[error("{river} has a bank resistance of {days} days, which no closed form covers")]
+    #[error("{river} has a bank resistance of {days} days, and the aquifer is a {shape}")]
     BankResistance {
         /// The river.
         river: Named,
         /// Its bank resistance.
         days: f64,
+        /// The shape's name.
+        shape: &'static str,
     },
-    /// Areal recharge needs another method.
-    #[error("the aquifer has a recharge of {metres_a_day} m/d, which no closed form here covers")]
-    Recharge {
-        /// The recharge.
-        metres_a_day: f64,
+    /// Banks in one line that differ.
+    #[error(
+        "{river} has a bank resistance of {days} days, but {other} beside it one of {other_days} days"
+    )]
+    BanksDiffer {
+        /// The river.
+        river: Named,
+        /// Its bank resistance.
+        days: f64,
+        /// Another river along the same line.
+        other: Named,
+        /// The other's bank resistance; 0 where it has none.
+        other_days: f64,
+    },
+    /// A bank's resistance says nothing without the aquifer's thickness.
+    #[error("{river} has a bank resistance of {days} days, and the aquifer has no thickness")]
+    BankWithoutThickness {
+        /// The river.
+        river: Named,
+        /// Its bank resistance.
+        days: f64,
     },
     /// A line that is a point, or a circle without a radius.
     #[error("{edge} has no length: all of it lies within 1 mm")]
@@ -161,6 +179,20 @@ pub enum OutlineError {
         /// By how much, in words.
         departure: String,
     },
+    /// Stages along one line that fall differently.
+    #[error(
+        "the stage of {river} slopes by {slope:.3e} along its line, that of {other} before it by {other_slope:.3e}"
+    )]
+    StagesBend {
+        /// The river.
+        river: Named,
+        /// Its slope.
+        slope: f64,
+        /// The first river of the same line.
+        other: Named,
+        /// The first river's slope.
+        other_slope: f64,
+    },
     /// A stage that varies beside an outline that allows none.
     #[error("the stage of {river} varies by {spread}, and the aquifer is a {shape}")]
     StageVaries {
@@ -191,9 +223,13 @@ impl OutlineError {
         match self {
             Self::NoWell => Subject::Plan,
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
-            Self::Recharge { .. } => Subject::Aquifer(Some("recharge")),
-            Self::BankResistance { river, .. } => with_key(&river.subject, "bank_resistance"),
+            Self::BankResistance { river, .. }
+            | Self::BanksDiffer { river, .. }
+            | Self::BankWithoutThickness { river, .. } => {
+                with_key(&river.subject, "bank_resistance")
+            }
             Self::StageNotLinear { river, .. }
+            | Self::StagesBend { river, .. }
             | Self::StageVaries { river, .. }
             | Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
             Self::WildCoordinate { part } | Self::OnEdge { part, .. } => part.subject.clone(),
@@ -217,10 +253,22 @@ impl OutlineError {
                 "a stage that falls along the river has a closed form beside a half-plane alone"
                     .to_owned(),
             ),
+            Self::StagesBend { .. } => Some(
+                "the outer rivers go on for ever, and only one straight fall along the whole line \
+                 fixes the head beside them"
+                    .to_owned(),
+            ),
             Self::NoWell => Some("the aquifer is found from the wells that stand in it".to_owned()),
-            Self::BankResistance { .. } => {
-                Some("its head is not the river's stage but depends on the inflow".to_owned())
-            }
+            Self::BankResistance { .. } | Self::BanksDiffer { .. } => Some(
+                "behind a clogged bank the head depends on the inflow, and the closed form covers \
+                 a half-plane beside one straight bank that is clogged alike all along"
+                    .to_owned(),
+            ),
+            Self::BankWithoutThickness { .. } => Some(
+                "a bank lets through thickness / bank_resistance of water for each metre of its \
+                 length and of lost head"
+                    .to_owned(),
+            ),
             _ => None,
         }
     }
@@ -240,7 +288,12 @@ impl OutlineError {
             Self::BankResistance { .. } => "remove `bank_resistance`: the river then gives more \
                  water than a clogged one would, which overstates heads near it"
                 .to_owned(),
-            Self::Recharge { .. } => "set `recharge` to 0, which leaves its water out".to_owned(),
+            Self::BanksDiffer { .. } => {
+                "give the rivers of this line one `bank_resistance`".to_owned()
+            }
+            Self::BankWithoutThickness { .. } => {
+                "add `thickness` to [aquifer], beside the transmissivity".to_owned()
+            }
             Self::NoLength { .. } => "give it two vertices that lie apart, or remove it".to_owned(),
             Self::TooManyPieces { .. } => "simplify the lines to fewer vertices".to_owned(),
             Self::CrossesItself { .. } => {
@@ -260,7 +313,7 @@ impl OutlineError {
                 "split the area into one neighbour for each side".to_owned()
             }
             Self::NoClosedForm { remedy, .. } => remedy.clone(),
-            Self::StageNotLinear { .. } => {
+            Self::StageNotLinear { .. } | Self::StagesBend { .. } => {
                 "write stages that fall evenly along the line, or one constant stage".to_owned()
             }
             Self::StageVaries { mean_m, .. } => {
@@ -279,6 +332,9 @@ impl OutlineError {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
+            }
+            Self::StagesBend { other, .. } | Self::BanksDiffer { other, .. } => {
+                vec![label(other, "along the same line")]
             }
             Self::OtherBank { edge, .. } => vec![label(edge, "the edge between")],
             Self::AcrossAquifers {

@@ -14,6 +14,7 @@
 mod arrangement;
 mod boundary;
 mod clip;
+mod clogged;
 mod drawn;
 mod error;
 mod extend;

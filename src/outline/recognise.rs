@@ -7,6 +7,7 @@
 use num_complex::Complex64;
 
 use super::boundary::{self, Side};
+use super::clogged;
 use super::error::OutlineError;
 use super::faces::Faces;
 use super::frame::Frame;
@@ -32,6 +33,16 @@ pub(super) struct Context<'a> {
 
 /// The outline of a face that holds wells.
 pub(super) fn outline(
+    context: Context<'_>,
+    faces: &Faces<'_>,
+    face: usize,
+) -> Result<Outline, Vec<OutlineError>> {
+    let outline = unclogged(context, faces, face)?;
+    clogged::with_banks(context.site, outline)
+}
+
+/// The outline of a face as if all banks were clean.
+fn unclogged(
     context: Context<'_>,
     faces: &Faces<'_>,
     face: usize,

@@ -19,8 +19,9 @@ impl Outline {
     pub fn holds(&self, point: Point) -> bool {
         let z = self.frame.to_canonical(point);
         let slack = ON_EDGE * z.norm() + self.rounding_m(point);
-        match self.shape {
+        match self.shape.unclogged() {
             Shape::Axes { x, y } => within(x, z.re, slack) && within(y, z.im, slack),
+            Shape::CloggedHalfPlane { .. } => z.re >= -slack,
             Shape::Wedge { angle_rad, .. } => {
                 // Near the apex no angle tells a place on a side from one off it.
                 let slack_rad = slack / z.norm().max(slack);
@@ -65,7 +66,7 @@ impl Outline {
 
     /// The straight line of a canonical side.
     pub(super) fn side_line(&self, side: usize) -> SideLine {
-        let lines = match self.shape {
+        let lines = match self.shape.unclogged() {
             Shape::Axes { x, y } => {
                 let across_x = places(x).map(|x| SideLine {
                     origin: Complex64::new(x, 0.0),
@@ -85,7 +86,7 @@ impl Outline {
                     Complex64::cis(angle_rad)
                 },
             }),
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => None,
+            _ => None,
         };
         lines.unwrap_or(SideLine {
             origin: Complex64::ZERO,

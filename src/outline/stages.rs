@@ -16,6 +16,9 @@ use crate::site::{EdgeKind, EdgeShape, Level, Point, Site, Stage};
 /// Stages that differ by less count as the same, metres.
 const SAME_STAGE_M: f64 = 1e-9;
 
+/// Slopes that differ by less count as the same: a millimetre a kilometre.
+const SAME_SLOPE: f64 = 1e-6;
+
 /// Sets the stages of all pieces of an outline, whose sides are given in
 /// canonical order.
 pub(super) fn set(
@@ -38,10 +41,37 @@ pub(super) fn set(
         }
     }
     if errors.is_empty() {
+        errors.extend(outline.sides.iter_mut().find_map(|side| bent(site, side)));
+    }
+    if errors.is_empty() {
         Ok(outline)
     } else {
         Err(errors)
     }
+}
+
+/// Gives the rivers of one side the slope of the first, or says which of them
+/// falls otherwise: without one slope an endless bank fixes no head.
+fn bent(site: &Site, side: &mut [Piece]) -> Option<OutlineError> {
+    let (first, others) = side.split_first_mut()?;
+    for piece in others {
+        let turn = piece.stage_slope - first.stage_slope;
+        // The pieces meet at the start of the later one.
+        let joint_m = piece.along.start;
+        if turn.abs() > SAME_SLOPE {
+            return Some(OutlineError::StagesBend {
+                river: names::edge(site, piece.edge),
+                slope: piece.stage_slope,
+                other: names::edge(site, first.edge),
+                other_slope: first.stage_slope,
+            });
+        }
+        if turn != 0.0 {
+            piece.stage_m += turn * joint_m;
+            piece.stage_slope = first.stage_slope;
+        }
+    }
+    None
 }
 
 /// The stage of a circle, and no slope.

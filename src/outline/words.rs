@@ -27,7 +27,11 @@ impl Outline {
         // One edge may bend round several sides; it is named once.
         let mut sides: Vec<String> = Vec::new();
         for (side, kind) in kinds.iter().enumerate() {
-            let words = format!("{} ({})", self.side_name(site, side), kind_words(*kind));
+            let words = format!(
+                "{} ({})",
+                self.side_name(site, side),
+                self.kind_words(*kind)
+            );
             if !sides.contains(&words) {
                 sides.push(words);
             }
@@ -41,6 +45,7 @@ impl Outline {
             ", lengths and angles stretched to isotropy"
         };
         let text = match self.shape {
+            Shape::CloggedHalfPlane { .. } => format!("half-plane beside {sides}"),
             Shape::Axes { x, y } => match (width(x), width(y)) {
                 (None, None) if kinds.is_empty() => name.to_owned(),
                 (None, None) if kinds.len() == 1 => format!("{name} beside {sides}"),
@@ -66,6 +71,15 @@ impl Outline {
         };
         text + stretched
     }
+
+    /// What a side of a kind does.
+    fn kind_words(&self, kind: Kind) -> &'static str {
+        match (kind, self.shape) {
+            (Kind::FixedHead, Shape::CloggedHalfPlane { .. }) => "clogged bank",
+            (Kind::FixedHead, _) => "fixed head",
+            (Kind::NoFlow, _) => "no flow",
+        }
+    }
 }
 
 /// The width across an axis in words, where it has two edges.
@@ -73,12 +87,5 @@ fn width(axis: Axis) -> Option<String> {
     match axis {
         Axis::TwoEdges { width_m, .. } => Some(names::length(width_m)),
         Axis::Open | Axis::OneEdge(_) => None,
-    }
-}
-
-fn kind_words(kind: Kind) -> &'static str {
-    match kind {
-        Kind::FixedHead => "fixed head",
-        Kind::NoFlow => "no flow",
     }
 }

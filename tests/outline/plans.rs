@@ -3,7 +3,7 @@
 use mirrorwell::outline::{Outline, find};
 use mirrorwell::site::{
     Aquifer, Edge, EdgeKind, EdgeShape, Flux, Length, Level, MapRequest, Neighbour, Place, Point,
-    Rate, Refusal, Site, Stage, Transmissivity, Well, WellLoss,
+    Rate, Refusal, Site, Stage, Time, Transmissivity, Well, WellLoss,
 };
 
 /// A site with wells of radius 0.2 m at some places and no edge.
@@ -58,6 +58,8 @@ fn water(stage: Stage) -> EdgeKind {
 pub trait With: Sized {
     fn river(self, name: &str, line: &[(f64, f64)]) -> Self;
     fn falling_river(self, name: &str, line: &[(f64, f64)], stages: &[f64]) -> Self;
+    /// Clogs the bank of the last river.
+    fn clogged(self, days: f64) -> Self;
     fn barrier(self, name: &str, line: &[(f64, f64)]) -> Self;
     fn lake(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
     fn round_barrier(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
@@ -78,6 +80,16 @@ impl With for Site {
         let kind = water(Stage::AtVertices(stages));
         self.edges
             .push(edge(name, kind, EdgeShape::Line(points(line))));
+        self
+    }
+
+    fn clogged(mut self, days: f64) -> Self {
+        if let Some(EdgeKind::River {
+            bank_resistance, ..
+        }) = self.edges.last_mut().map(|edge| &mut edge.kind)
+        {
+            *bank_resistance = Some(Time::from_si(days));
+        }
         self
     }
 

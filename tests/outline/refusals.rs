@@ -1,7 +1,7 @@
 //! Every plan without a closed form is refused by name, with a remedy.
 
 use mirrorwell::outline::find;
-use mirrorwell::site::{Anisotropy, EdgeKind, Flux, Point, Site, Subject, Time};
+use mirrorwell::site::{Anisotropy, Length, Point, Site, Subject};
 
 use crate::plans::{With, only_refusal, refusals, refused, site};
 
@@ -21,27 +21,40 @@ fn a_plan_without_wells_is_refused_as_a_whole() {
 }
 
 #[test]
-fn clogged_banks_and_recharge_are_refused_where_they_are_written() {
-    let mut plan = site(&[(50.0, 0.0)]).river("Ostra", &[(0.0, 0.0), (0.0, 1.0)]);
-    plan.aquifer.recharge = Flux::from_si(0.0005);
-    if let EdgeKind::River {
-        bank_resistance, ..
-    } = &mut plan.edges[0].kind
-    {
-        *bank_resistance = Some(Time::from_si(2.0));
+fn clogged_banks_without_a_closed_form_are_refused_where_they_are_written() {
+    let clogged = |plan: Site| plan.clogged(2.0);
+    let half_plane = || clogged(site(&[(50.0, 0.0)]).river("Ostra", &[(0.0, 0.0), (0.0, 1.0)]));
+    let strip = half_plane().barrier("granite", &[(100.0, 0.0), (100.0, 1.0)]);
+    let mixed = half_plane().river("Lower Ostra", &[(0.0, -9.0), (0.0, 0.0)]);
+    let lake = clogged(site(&[(50.0, 0.0)]).lake("Tarn", (0.0, 0.0), 20.0));
+    for (mut plan, parts) in [
+        (
+            strip,
+            "river Ostra has a bank resistance of 2 days, and the aquifer is a strip",
+        ),
+        (mixed, "days, but river"),
+        (lake, "and the aquifer is a plane around a lake"),
+        (
+            half_plane(),
+            "and the aquifer has no thickness; a bank lets through",
+        ),
+    ] {
+        let without_thickness = parts.contains("thickness");
+        plan.aquifer.thickness = (!without_thickness).then(|| Length::from_si(20.0));
+        says(&plan, &[parts]);
+        let subject = &refused(&plan)[0].subject;
+        assert!(matches!(subject, Subject::Edge(_, Some("bank_resistance"))));
     }
-    let refused = refused(&plan);
-    assert_eq!(refused.len(), 2);
-    assert_eq!(refused[0].subject, Subject::Aquifer(Some("recharge")));
-    assert!(refused[0].what.contains("0.0005 m/d"));
-    assert_eq!(
-        refused[1].subject,
-        Subject::Edge(0, Some("bank_resistance"))
-    );
-    assert!(
-        refused[1]
-            .what
-            .contains("river Ostra has a bank resistance of 2 days")
+}
+
+#[test]
+fn rivers_of_one_line_that_fall_differently_are_refused() {
+    let plan = site(&[(50.0, 0.0)])
+        .falling_river("Ostra", &[(0.0, 0.0), (0.0, 1000.0)], &[60.0, 61.0])
+        .falling_river("Rapids", &[(0.0, 1000.0), (0.0, 2000.0)], &[61.0, 65.0]);
+    says(
+        &plan,
+        &["slopes by", "one straight fall along the whole line"],
     );
 }
 
@@ -336,7 +349,7 @@ fn a_coastline_of_thousands_of_vertices_is_refused_by_number() {
 
 #[test]
 fn faults_of_every_room_come_in_one_go() {
-    let mut plan = site(&[(50.0, 0.0), (0.0, 5.0), (-50.0, 0.0)])
+    let plan = site(&[(50.0, 0.0), (0.0, 5.0), (-50.0, 0.0)])
         .river("Ostra", &[(0.0, -10.0), (0.0, 10.0)])
         .barrier(
             "bend",
@@ -348,13 +361,11 @@ fn faults_of_every_room_come_in_one_go() {
             ],
         )
         .neighbour("Lot 1", (0.0, 20.0));
-    plan.aquifer.recharge = Flux::from_si(1e-4);
     let texts = refusals(&plan);
-    assert_eq!(texts.len(), 4, "{texts:#?}");
-    assert!(texts[0].contains("recharge"));
-    assert!(texts[1].contains("well PW-2 lies on"));
-    assert!(texts[2].contains("no closed form covers it"));
-    assert!(texts[3].contains("neighbour Lot 1 lies on"));
+    assert_eq!(texts.len(), 3, "{texts:#?}");
+    assert!(texts[0].contains("well PW-2 lies on"));
+    assert!(texts[1].contains("no closed form covers it"));
+    assert!(texts[2].contains("neighbour Lot 1 lies on"));
 }
 
 #[test]
