@@ -13,6 +13,7 @@ use crate::layers::words::{Words, one_line};
 use crate::layers::{CAUTION, Properties, Units};
 use crate::outline::Kind;
 use crate::plan::{Plan, PlanFaults};
+use crate::site::Site;
 
 /// What the command takes.
 #[derive(Debug, clap::Args)]
@@ -99,15 +100,8 @@ impl<'a> Report<'a> {
         for field in self.solution.fields() {
             let told = |text: &str| self.plan.units.beside(text);
             line("outline", &told(&one_line(&field.outline().words(site))));
-            line(
-                "method",
-                &format!(
-                    "{}, right to {:.0e} {}",
-                    told(&field.method()),
-                    words.units().length(field.error_bound_m()),
-                    words.units().length_ending()
-                ),
-            );
+            line("method", &told(&field.method()));
+            line("accuracy", &accuracy(&words, site, field));
             line("steady state", &steady_state(self.solution, field));
         }
         let counts = format!(
@@ -138,6 +132,7 @@ impl<'a> Report<'a> {
                     .with("words", told(&field.outline().words(site)))
                     .with("method", told(&field.method()))
                     .length("error_bound", field.error_bound_m())
+                    .with("accuracy_reached", field.is_accurate(site.head_tolerance))
                     .with("steady_state", steady_state(self.solution, field))
                     .into()
             })
@@ -155,6 +150,16 @@ impl<'a> Report<'a> {
             "looks_wrong": self.oddities,
             "caution": CAUTION,
         })
+    }
+}
+
+/// How far an aquifer's heads are right, and whether that is enough.
+fn accuracy(words: &Words<'_>, site: &Site, field: &WellField) -> String {
+    let bound_m = field.error_bound_m();
+    if field.is_accurate(site.head_tolerance) {
+        words.proven(bound_m)
+    } else {
+        words.inexact(bound_m, site.head_tolerance.si())
     }
 }
 
@@ -191,7 +196,10 @@ fn steady_state(solution: &Solution, field: &WellField) -> String {
         }
     }
     match (rivers.is_empty(), site.aquifer.influence_radius) {
-        (false, _) => format!("exists: {} holds the head", rivers.join(" and ")),
+        (false, _) => {
+            let hold = if rivers.len() > 1 { "hold" } else { "holds" };
+            format!("exists: {} {hold} the head", rivers.join(" and "))
+        }
         (true, Some(_)) => {
             "assumed: no edge holds the head, so each cone ends at the influence radius".into()
         }

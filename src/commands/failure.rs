@@ -15,8 +15,13 @@ pub enum Failure {
     Plan(PlanFaults),
     /// Something else the user can change, in one or more lines.
     Refused(String),
-    /// Everything was done, and limits are broken, with `--strict`.
-    LimitsBroken(usize),
+    /// Everything was done, with `--strict`, and something is not as it must be.
+    NotKept {
+        /// How many limits are broken.
+        limits: usize,
+        /// How many aquifers miss the plan's accuracy.
+        aquifers: usize,
+    },
     /// It has been said already.
     Said,
     /// Whoever read the output stopped reading.
@@ -35,19 +40,30 @@ impl Failure {
                 console.error(&format!("error: {reason}"));
                 ExitCode::from(2)
             }
-            Self::LimitsBroken(count) => {
-                let limits = if *count == 1 {
-                    "limit is"
-                } else {
-                    "limits are"
-                };
-                console.error(&format!("{count} {limits} broken"));
+            Self::NotKept { limits, aquifers } => {
+                console.error(&not_kept(*limits, *aquifers));
                 ExitCode::from(3)
             }
             Self::Said => ExitCode::from(2),
             Self::BrokenPipe => ExitCode::SUCCESS,
         }
     }
+}
+
+/// How much is not as it must be.
+fn not_kept(limits: usize, aquifers: usize) -> String {
+    let broken = match limits {
+        0 => None,
+        1 => Some("1 limit is broken".to_owned()),
+        _ => Some(format!("{limits} limits are broken")),
+    };
+    let missed = match aquifers {
+        0 => None,
+        1 => Some("1 aquifer misses the plan's accuracy".to_owned()),
+        _ => Some(format!("{aquifers} aquifers miss the plan's accuracy")),
+    };
+    let said: Vec<String> = broken.into_iter().chain(missed).collect();
+    said.join("; ")
 }
 
 impl From<PlanFaults> for Failure {

@@ -6,7 +6,9 @@ use super::console::Console;
 use super::failure::Failure;
 use super::points::{self, NamedPoint};
 use super::source::{PlanArgument, solve};
+use super::summary::capitalised;
 use crate::findings::{Solution, WellsAndNeighbours, edge_between};
+use crate::layers::words::Words;
 use crate::layers::{Units, safe_cell};
 use crate::plan::Plan;
 use crate::site::{Place, Point};
@@ -47,6 +49,10 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     for note in crate::layers::notes(&plan, &solution) {
         console.note(&super::console::wrapped(&note, "note: ", "      "));
     }
+    for text in inexact(&plan, &solution) {
+        let sentence = format!("{}.", capitalised(&text));
+        console.note(&super::console::wrapped(&sentence, "note: ", "      "));
+    }
     let rows = match wanted {
         Some(wanted) => at_points(&plan, &solution, wanted),
         None => at_wells_and_neighbours(&plan, &solution)?,
@@ -54,6 +60,16 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     let table =
         table(&rows, Units(plan.units)).map_err(|error| Failure::Refused(error.to_string()))?;
     Ok(console.result(&table)?)
+}
+
+/// Which aquifers' heads are less exact than the plan accepts.
+fn inexact(plan: &Plan, solution: &Solution) -> Vec<String> {
+    let words = Words::new(solution.site(), Units(plan.units));
+    let fields = solution.fields().iter();
+    fields
+        .filter(|field| !field.is_accurate(solution.site().head_tolerance))
+        .map(|field| words.inexact(field.error_bound_m(), solution.site().head_tolerance.si()))
+        .collect()
 }
 
 /// The rows as CSV in the plan's units.

@@ -3,7 +3,7 @@
 //! Results go to standard output; progress, notes and errors to standard
 //! error. Exit status: 0 done; 1 a fault in the program itself; 2 the command
 //! line or the plan is refused, or a file cannot be read or written; 3 with
-//! `--strict`, when a limit is broken.
+//! `--strict`, when a limit is broken or the plan's accuracy missed.
 
 mod check;
 mod completions;

@@ -7,7 +7,7 @@ use super::failure::Failure;
 use super::progress::Progress;
 use super::source::{PlanArgument, solve};
 use super::summary;
-use crate::findings::{Findings, MapWindow, Solution, Survey};
+use crate::findings::{Findings, FlagCode, MapWindow, Solution, Survey};
 use crate::layers::{self, Levels, Planned, Units};
 use crate::plan::Plan;
 
@@ -26,7 +26,7 @@ pub struct Arguments {
     #[arg(long, value_name = "DIR", default_value = "mirrorwell-out")]
     out: PathBuf,
 
-    /// End with status 3 when a limit is broken
+    /// End with status 3 when a limit is broken or the accuracy is missed
     #[arg(long)]
     strict: bool,
 }
@@ -50,13 +50,22 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     layers::write_all(&arguments.out, &files)?;
     drop(progress);
     say(&planned, &arguments.out, console)?;
-    let broken = findings
-        .flags
-        .iter()
-        .filter(|flag| flag.code.breaks_a_limit())
-        .count();
-    if arguments.strict && broken > 0 {
-        return Err(Failure::LimitsBroken(broken));
+    if arguments.strict {
+        return strictly(&findings);
+    }
+    Ok(())
+}
+
+/// Refuses to end well where a limit is broken or the accuracy is missed.
+fn strictly(findings: &Findings) -> Result<(), Failure> {
+    let count = |counts: fn(FlagCode) -> bool| {
+        let flags = findings.flags.iter();
+        flags.filter(|flag| counts(flag.code)).count()
+    };
+    let limits = count(FlagCode::breaks_a_limit);
+    let aquifers = count(|code| code == FlagCode::AccuracyNotReached);
+    if limits + aquifers > 0 {
+        return Err(Failure::NotKept { limits, aquifers });
     }
     Ok(())
 }

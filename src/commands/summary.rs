@@ -19,6 +19,7 @@ pub fn of(planned: &Planned<'_>, out: &Path) -> String {
     let mut text = format!("{}\n", one_line(&planned.plan.title));
     text.push_str(&recognised(planned));
     text.push_str(&totals(planned));
+    text.push_str(&exchange(planned));
     text.push('\n');
     text.push_str(&wells(planned));
     if !planned.findings.neighbours.is_empty() {
@@ -47,6 +48,7 @@ pub fn recognised(planned: &Planned<'_>) -> String {
             field.method()
         );
         sentence = planned.plan.units.beside(&sentence);
+        let _ = write!(sentence, "; {}", words.proven(field.error_bound_m()));
         if several {
             let _ = write!(sentence, "; {}", held_wells(&words, &field.outline().wells));
         }
@@ -66,7 +68,7 @@ fn held_wells(words: &Words<'_>, wells: &[usize]) -> String {
 }
 
 /// A sentence with a capital at its head.
-fn capitalised(sentence: &str) -> String {
+pub fn capitalised(sentence: &str) -> String {
     let mut characters = sentence.chars();
     characters.next().map_or_else(String::new, |first| {
         first.to_uppercase().chain(characters).collect()
@@ -102,6 +104,36 @@ fn totals(planned: &Planned<'_>) -> String {
         let _ = write!(text, "; taken from {}", given.join(", "));
     }
     wrapped(&text, "", "  ")
+}
+
+/// What passes between rivers and aquifer before pumping and after, where
+/// something does before.
+fn exchange(planned: &Planned<'_>) -> String {
+    let words = Words::of(planned);
+    let verb = |m3_d: f64| if m3_d < 0.0 { "takes" } else { "gives" };
+    let site = planned.solution.site();
+    let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
+    let told: Vec<String> = boundaries
+        .filter_map(|(finding, edge)| {
+            let before = finding.exchange_before_m3_d.filter(|&m3_d| m3_d != 0.0)?;
+            let after = finding.exchange_after_m3_d()?;
+            let again = match verb(after) {
+                same if same == verb(before) => String::new(),
+                other => format!("{other} "),
+            };
+            Some(format!(
+                "{} {} {} before pumping, {again}{} after",
+                one_line(&edge.name),
+                verb(before),
+                words.rate(before.abs()),
+                words.rate(after.abs())
+            ))
+        })
+        .collect();
+    if told.is_empty() {
+        return String::new();
+    }
+    wrapped(&told.join("; "), "", "  ")
 }
 
 /// A table with a plain heading and numbers to the right.

@@ -44,17 +44,17 @@ const NO_GRADIENT: f64 = 1e-6;
 #[derive(Clone, Debug)]
 pub(super) struct AmbientHead {
     /// Head at the canonical origin, without the other parts.
-    level_m: f64,
+    pub(super) level_m: f64,
     /// ∂h/∂x + i ∂h/∂y of the linear part.
-    slope: Complex64,
+    pub(super) slope: Complex64,
     /// Around a lake the linear part is bent so that the shore stays level.
-    lake_radius_m: Option<f64>,
+    pub(super) lake_radius_m: Option<f64>,
     /// Rise of the head over the angle of a wedge, metres a radian.
-    per_radian_m: f64,
+    pub(super) per_radian_m: f64,
     /// Parts of sides whose stage differs from `level_m`, and by how much.
-    measured: Vec<(usize, Range<f64>, f64)>,
+    pub(super) measured: Vec<(usize, Range<f64>, f64)>,
     /// The mound built by recharge, where there is some.
-    pub recharge: Option<Recharge>,
+    pub(super) recharge: Option<Recharge>,
 }
 
 impl AmbientHead {
@@ -191,8 +191,14 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
     // levels at y = 0 may differ.
     let fall = rivers.first().map_or(0.0, |(_, piece)| piece.stage_slope);
     head.slope = Complex64::new(0.0, fall);
-    if let [(first_side, first), (second_side, second)] = rivers.as_slice() {
-        let rise_m = second.stage_m - first.stage_m;
+    // Several rivers that make one side at one stage count as one.
+    let mut sides: Vec<(usize, f64)> = rivers
+        .iter()
+        .map(|(side, piece)| (*side, piece.stage_m))
+        .collect();
+    sides.dedup();
+    if let [(first_side, first_m), (second_side, second_m)] = sides.as_slice() {
+        let rise_m = second_m - first_m;
         if let Some(across) = across_one_axis(&outline.shape, *first_side, *second_side) {
             head.slope = across * rise_m;
             return head;

@@ -6,6 +6,7 @@
 mod accuracy;
 mod ambient;
 mod ambient_error;
+mod exchange;
 mod free_flow;
 mod recharge;
 mod steady;
@@ -18,7 +19,7 @@ use rayon::prelude::*;
 
 use crate::green::{Green, Source};
 use crate::outline::{Kind, Outline, Shape};
-use crate::site::{Point, Refusal, Site, Vector};
+use crate::site::{Length, Point, Refusal, Site, Vector};
 use ambient::AmbientHead;
 
 /// Points that one task evaluates: enough to hide the cost of a task.
@@ -35,6 +36,7 @@ pub struct WellField {
     datum: Option<Complex64>,
     influence_radius_m: Option<f64>,
     error_bound_m: f64,
+    hardest_edge: Option<usize>,
     notes: Vec<String>,
 }
 
@@ -88,6 +90,7 @@ impl WellField {
             ambient,
             datum,
             error_bound_m: 0.0,
+            hardest_edge: None,
             notes,
         };
         field.error_bound_m = accuracy::bound_m(&field);
@@ -227,9 +230,21 @@ impl WellField {
             .sum()
     }
 
-    /// A bound on the rounding error of a head, metres.
+    /// A proven bound on the error of a head, metres; of a closed form, which
+    /// has no other error, on its rounding.
     pub fn error_bound_m(&self) -> f64 {
         self.error_bound_m
+    }
+
+    /// Whether the heads are proven right to within `accepted`.
+    pub fn is_accurate(&self, accepted: Length) -> bool {
+        self.error_bound_m <= accepted.si()
+    }
+
+    /// The edge, by its index in `Site::edges`, beside which the bound is
+    /// largest; none where rounding alone makes it.
+    pub fn hardest_edge(&self) -> Option<usize> {
+        self.hardest_edge
     }
 
     /// How it was computed, in a few words.

@@ -1,5 +1,5 @@
-//! What each river gives to the wells, and whether it adds up to what they
-//! pump.
+//! What each river gives to the wells, whether it adds up to what they pump,
+//! and what passes between river and aquifer before and after pumping.
 //!
 //! The share of a well's water that an edge gives is the harmonic measure of
 //! the edge seen from the well; where an aquifer has a river, the shares of
@@ -18,12 +18,22 @@ pub struct BoundaryFinding {
     /// Water given to each well, m³/d, in the plan's order of wells; negative
     /// where an injecting well feeds the river.
     pub by_well_m3_d: Vec<f64>,
+    /// Water that it gives to the aquifers before any pumping, m³/d; negative
+    /// where it takes water from them; none where that is infinite or not
+    /// determined, or where it bounds no aquifer.
+    pub exchange_before_m3_d: Option<f64>,
 }
 
 impl BoundaryFinding {
     /// Water given to all wells together, m³/d.
     pub fn inflow_m3_d(&self) -> f64 {
         self.by_well_m3_d.iter().sum()
+    }
+
+    /// Water that it gives to the aquifers while the wells run, m³/d, under
+    /// the same terms as before.
+    pub fn exchange_after_m3_d(&self) -> Option<f64> {
+        Some(self.exchange_before_m3_d? + self.inflow_m3_d())
     }
 }
 
@@ -42,19 +52,21 @@ pub fn all(solution: &Solution) -> Vec<BoundaryFinding> {
     (0..site.edges.len())
         .map(|edge| {
             let mut by_well_m3_d = vec![0.0; site.wells.len()];
-            let mut bounds_an_aquifer = false;
-            for field in solution.fields().iter().filter(|field| bounds(field, edge)) {
-                bounds_an_aquifer = true;
+            let beside = || solution.fields().iter().filter(|field| bounds(field, edge));
+            let bounds_an_aquifer = beside().next().is_some();
+            for field in beside() {
                 for &well in &field.outline().wells {
                     if let Some(given) = by_well_m3_d.get_mut(well) {
                         *given += field.inflow_m3_d(edge, well);
                     }
                 }
             }
+            let before: Option<f64> = beside().map(|field| field.ambient_inflow_m3_d(edge)).sum();
             BoundaryFinding {
                 edge,
                 bounds_an_aquifer,
                 by_well_m3_d,
+                exchange_before_m3_d: before.filter(|_| bounds_an_aquifer),
             }
         })
         .collect()

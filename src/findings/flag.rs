@@ -3,8 +3,8 @@
 //!
 //! Order of severity: someone else's supply first, then water coming out of
 //! the ground, then a well that runs dry, then places where the model itself
-//! no longer holds, then wells that crowd each other, then what could not be
-//! judged. Within one code the largest excess comes first, then the plan's
+//! no longer holds, then heads less exact than asked, then wells that crowd
+//! each other, then what could not be judged. Within one code the largest excess comes first, then the plan's
 //! order.
 
 use super::remedy::Remedy;
@@ -21,6 +21,8 @@ pub enum FlagCode {
     /// The head falls below the aquifer's roof: it is no longer confined, and
     /// the transmissivity, and with it every result there, no longer holds.
     BelowRoof,
+    /// The proven error of an aquifer's heads is larger than the plan accepts.
+    AccuracyNotReached,
     /// Other wells cause more of a well's drawdown than the plan accepts.
     Interference,
     /// A neighbour has no limit to be judged against.
@@ -35,14 +37,16 @@ impl FlagCode {
             Self::AboveGround => "above-ground",
             Self::LevelTooLow => "level-too-low",
             Self::BelowRoof => "below-roof",
+            Self::AccuracyNotReached => "accuracy-not-reached",
             Self::Interference => "interference",
             Self::NoLimitGiven => "no-limit-given",
         }
     }
 
-    /// Whether it says that a limit is broken, rather than that one is missing.
+    /// Whether it says that a limit is broken, rather than that one is missing
+    /// or that the result is less exact than asked.
     pub fn breaks_a_limit(self) -> bool {
-        self != Self::NoLimitGiven
+        !matches!(self, Self::NoLimitGiven | Self::AccuracyNotReached)
     }
 }
 
@@ -53,6 +57,8 @@ pub enum Who {
     Well(usize),
     /// A neighbour, by its index in `Site::neighbours`.
     Neighbour(usize),
+    /// An aquifer, by the lowest index of its wells in `Site::wells`.
+    AquiferOf(usize),
     /// The aquifer within the map.
     Map,
 }
@@ -108,6 +114,16 @@ pub enum Measure {
         /// The interference, metres.
         interference_m: f64,
     },
+    /// The proven error of a head against the one that the plan accepts.
+    Accuracy {
+        /// The proven bound on the error, metres.
+        bound_m: f64,
+        /// The error that the plan accepts, metres.
+        accepted_m: f64,
+        /// The edge, by its index in `Site::edges`, beside which the bound is
+        /// largest; none where rounding alone makes it.
+        hardest_edge: Option<usize>,
+    },
 }
 
 impl Measure {
@@ -128,6 +144,11 @@ impl Measure {
                 lowest_m, roof_m, ..
             } => roof_m - lowest_m,
             Self::Share { share, limit, .. } => share - limit,
+            Self::Accuracy {
+                bound_m,
+                accepted_m,
+                ..
+            } => bound_m - accepted_m,
         }
     }
 }

@@ -93,7 +93,7 @@ impl Solution {
             .map_or(f64::NAN, |field| field.ambient_head_m(point))
     }
 
-    /// The largest of the fields' bounds on the rounding error of a head.
+    /// The largest of the fields' proven bounds on the error of a head, metres.
     pub fn error_bound_m(&self) -> f64 {
         self.fields
             .iter()

@@ -8,7 +8,7 @@ use super::words::Words;
 use super::{Planned, flag_codes};
 use crate::field::WellField;
 use crate::findings::{Flag, Measure, Rates, Who};
-use crate::site::{EdgeKind, Point};
+use crate::site::{EdgeKind, Point, Site};
 
 /// The document.
 pub fn document(planned: &Planned<'_>) -> Value {
@@ -170,7 +170,9 @@ fn boundaries(planned: &Planned<'_>) -> Value {
                 .with("kind", kind)
                 .with("bounds_an_aquifer", finding.bounds_an_aquifer)
                 .rate("inflow", finding.inflow_m3_d())
-                .rates("inflow_by_well", &finding.by_well_m3_d);
+                .rates("inflow_by_well", &finding.by_well_m3_d)
+                .rate("exchange_before", finding.exchange_before_m3_d)
+                .rate("exchange_after", finding.exchange_after_m3_d());
             Value::from(properties)
         })
         .collect()
@@ -205,10 +207,13 @@ fn flag(planned: &Planned<'_>, words: &Words<'_>, flag: &Flag) -> Value {
     let kind = match flag.who {
         Who::Well(_) => "well",
         Who::Neighbour(_) => "neighbour",
+        Who::AquiferOf(_) => "aquifer",
         Who::Map => "map",
     };
     let name = match flag.who {
-        Who::Well(index) => site.wells.get(index).map(|well| well.name.as_str()),
+        Who::Well(index) | Who::AquiferOf(index) => {
+            site.wells.get(index).map(|well| well.name.as_str())
+        }
         Who::Neighbour(index) => site.neighbours.get(index).map(|n| n.name.as_str()),
         Who::Map => None,
     };
@@ -220,7 +225,7 @@ fn flag(planned: &Planned<'_>, words: &Words<'_>, flag: &Flag) -> Value {
         .with("code", flag.code.name())
         .with("kind", kind)
         .with("who", name);
-    let mut properties = measure(properties, &flag.measure)
+    let mut properties = measure(properties, &flag.measure, site)
         .with("caused_by", cause)
         .length("caused_drawdown", flag.cause.map(|cause| cause.drawdown_m));
     if let Some(remedy) = &flag.remedy {
@@ -241,7 +246,7 @@ fn flag(planned: &Planned<'_>, words: &Words<'_>, flag: &Flag) -> Value {
 }
 
 /// How much, against what.
-fn measure(properties: Properties, measure: &Measure) -> Properties {
+fn measure(properties: Properties, measure: &Measure, site: &Site) -> Properties {
     match *measure {
         Measure::Drawdown {
             drawdown_m,
@@ -285,6 +290,18 @@ fn measure(properties: Properties, measure: &Measure) -> Properties {
             .with("value", number(share))
             .with("limit", number(limit))
             .length("interference", interference_m),
+        Measure::Accuracy {
+            bound_m,
+            accepted_m,
+            hardest_edge,
+        } => {
+            let edge = hardest_edge.and_then(|edge| site.edges.get(edge));
+            properties
+                .with("measure", "proven error of a head")
+                .length("value", bound_m)
+                .length("limit", accepted_m)
+                .with("hardest_edge", edge.map(|edge| edge.name.as_str()))
+        }
     }
 }
 

@@ -3,6 +3,8 @@
 //! A rate or share that clears a flag is rounded toward zero, so that what a
 //! person reads clears it too.
 
+mod accuracy;
+
 use super::Planned;
 use super::units::Units;
 use crate::findings::{Cause, Flag, Measure, Rates, Remedy, Who};
@@ -95,6 +97,7 @@ impl<'a> Words<'a> {
         match who {
             Who::Well(well) => self.well(well),
             Who::Neighbour(neighbour) => self.neighbour(neighbour),
+            Who::AquiferOf(well) => format!("aquifer of {}", self.well(well)),
             Who::Map => "map".into(),
         }
     }
@@ -111,6 +114,15 @@ impl<'a> Words<'a> {
         if let Some(remedy) = &flag.remedy {
             text.push(' ');
             text.push_str(&self.remedy(flag, remedy));
+        }
+        if let Measure::Accuracy {
+            bound_m,
+            hardest_edge,
+            ..
+        } = flag.measure
+        {
+            text.push(' ');
+            text.push_str(&self.exactness_remedy(bound_m, hardest_edge));
         }
         text
     }
@@ -173,6 +185,11 @@ impl<'a> Words<'a> {
                 self.length(interference_m.abs()),
                 percent(limit)
             ),
+            Measure::Accuracy {
+                bound_m,
+                accepted_m,
+                ..
+            } => self.inexact(bound_m, accepted_m),
         }
     }
 

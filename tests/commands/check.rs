@@ -1,6 +1,6 @@
 //! `mirrorwell check`.
 
-use crate::support::{SMALL, folder, outcome, printed, with_plan};
+use crate::support::{FAR, SMALL, folder, outcome, printed, with_plan};
 
 #[test]
 fn the_demo_is_looked_over() {
@@ -22,12 +22,19 @@ fn what_looks_wrong_is_said() {
 }
 
 #[test]
+fn an_accuracy_that_is_missed_is_said() {
+    insta::assert_snapshot!(printed(&with_plan(FAR, "check")));
+}
+
+#[test]
 fn programs_get_one_json_document() {
     let folder = folder();
     let output = outcome(folder.path(), &["check", "--json"]);
     let document: serde_json::Value = serde_json::from_slice(&output.stdout).unwrap();
     assert_eq!(document["solvable"], true);
     assert_eq!(document["outlines"][0]["shape"], "strip");
+    assert_eq!(document["outlines"][0]["accuracy_reached"], true);
+    assert!(document["outlines"][0]["error_bound_m"].as_f64().unwrap() < 1e-9);
     assert!(output.stderr.is_empty());
 }
 

@@ -1,6 +1,6 @@
 //! `mirrorwell heads`.
 
-use crate::support::{SMALL, folder, mirrorwell, outcome, printed};
+use crate::support::{FAR, SMALL, folder, mirrorwell, outcome, printed, with_plan};
 
 #[test]
 fn heads_of_the_demo_s_wells_and_neighbours_are_listed() {
@@ -64,4 +64,12 @@ fn a_file_that_is_no_csv_of_points_is_refused() {
     std::fs::write(folder.path().join("points.csv"), "east;north\n1,5;2,5\n").unwrap();
     let output = outcome(folder.path(), &["heads", "--points", "points.csv"]);
     insta::assert_snapshot!(printed(&output));
+}
+
+#[test]
+fn heads_less_exact_than_the_plan_asks_come_with_a_note() {
+    let output = with_plan(FAR, "heads");
+    assert_eq!(output.status.code(), Some(0));
+    let notes = String::from_utf8(output.stderr).unwrap();
+    assert!(notes.starts_with("note: Heads are computed only to 6e-9 m"));
 }

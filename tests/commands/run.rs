@@ -1,6 +1,6 @@
 //! `mirrorwell run`.
 
-use crate::support::{SMALL, folder, mirrorwell, outcome, printed, with_plan};
+use crate::support::{FAR, SMALL, folder, mirrorwell, outcome, printed, with_plan};
 
 #[test]
 fn the_demo_prints_a_summary_for_people() {
@@ -43,6 +43,53 @@ fn strict_ends_with_status_0_when_all_limits_are_kept() {
         .args(["run", "plan.toml", "--strict"])
         .assert()
         .code(0);
+}
+
+/// The plan has no limit to break, but asks for more than was proven.
+#[test]
+fn strict_ends_with_status_3_when_the_plan_s_accuracy_is_missed() {
+    let folder = folder();
+    std::fs::write(folder.path().join("plan.toml"), FAR).unwrap();
+    let output = outcome(folder.path(), &["run", "plan.toml", "--strict"]);
+    insta::assert_snapshot!(printed(&output));
+    let findings = std::fs::read(folder.path().join("mirrorwell-out/findings.json")).unwrap();
+    let document: serde_json::Value = serde_json::from_slice(&findings).unwrap();
+    let flag = &document["flags"][0];
+    assert_eq!(flag["code"], "accuracy-not-reached");
+    assert_eq!(flag["kind"], "aquifer");
+    assert_eq!(flag["who"], "PW-1");
+    assert_eq!(flag["value_m"], document["outline"]["error_bound_m"]);
+    assert_eq!(flag["limit_m"], 1e-9);
+}
+
+/// 25 m/d · 18 m · 1.5 m / 1800 m · 1200 m = 450 m³/d flow from the river to
+/// the canal before pumping.
+#[test]
+fn the_findings_state_what_rivers_and_aquifer_exchange() {
+    let folder = folder();
+    let plan = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("examples/box.toml");
+    outcome(folder.path(), &["run", plan.to_str().unwrap()]);
+    let findings = std::fs::read(folder.path().join("mirrorwell-out/findings.json")).unwrap();
+    let document: serde_json::Value = serde_json::from_slice(&findings).unwrap();
+    for (boundary, before) in [(0, 450.0), (1, -450.0), (2, 0.0)] {
+        let boundary = &document["boundaries"][boundary];
+        let rate = |name: &str| boundary[name].as_f64().unwrap();
+        assert!((rate("exchange_before_m3_per_d") - before).abs() < 1e-9);
+        let after = before + rate("inflow_m3_per_d");
+        assert!((rate("exchange_after_m3_per_d") - after).abs() < 1e-9);
+    }
+}
+
+/// Ambient flow crosses an endless creek.
+#[test]
+fn an_exchange_that_is_no_number_is_null() {
+    let folder = folder();
+    let plan = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("examples/us_units.toml");
+    outcome(folder.path(), &["run", plan.to_str().unwrap()]);
+    let findings = std::fs::read(folder.path().join("mirrorwell-out/findings.json")).unwrap();
+    let document: serde_json::Value = serde_json::from_slice(&findings).unwrap();
+    assert!(document["boundaries"][0]["exchange_before_gpm"].is_null());
+    assert!(document["boundaries"][0]["exchange_after_gpm"].is_null());
 }
 
 #[test]

@@ -68,3 +68,25 @@ name = "Lot 14"
 at = [200.0, 0.0]
 allowed_drawdown = 0.3
 "#;
+
+/// A plan whose accuracy the rounding of its coordinates misses: a narrow well
+/// 90 km from its river.
+pub const FAR: &str = r#"
+title = "Far from the river"
+crs = { origin = [15.0, 48.0] }
+units = "metric"
+[aquifer]
+transmissivity = 500.0
+roof = 40.0
+[accuracy]
+head = 1e-9
+[[river]]
+name = "Ostra"
+line = [[0.0, -1000.0], [0.0, 1000.0]]
+stage = 60.0
+[[well]]
+name = "PW-1"
+at = [90000.0, 0.0]
+pumping = 1000.0
+radius = 0.01
+"#;

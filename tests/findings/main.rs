@@ -7,6 +7,8 @@
     reason = "a test that meets something unexpected should fail"
 )]
 
+mod accuracy;
+mod exchange;
 mod inflow;
 mod plans;
 mod remedies;

@@ -8,7 +8,7 @@
 use mirrorwell::site::EdgeKind;
 use proptest::prelude::*;
 
-use crate::drawings::{case_of, drawing, drawing_with_river};
+use crate::drawings::{Form, case_of, drawing, drawing_with_river};
 
 const SHARE_TOLERANCE: f64 = 1e-12;
 
@@ -45,6 +45,25 @@ proptest! {
             for edge in 0..site.edges.len() {
                 prop_assert_eq!(field.inflow_m3_d(edge, well), 0.0);
             }
+        }
+    }
+
+    /// Before pumping, what enters a box leaves it again: each inflow carries
+    /// four roundings of 1e-16.
+    #[test]
+    fn a_box_keeps_no_water_before_pumping(
+        (drawing, setting) in case_of(drawing_with_river()
+            .prop_filter("no box", |drawing| matches!(drawing.form, Form::Box(..)))),
+    ) {
+        let solution = drawing.solve(&setting);
+        let (site, field) = (solution.site(), &solution.fields()[0]);
+        let inflows: Option<Vec<f64>> =
+            (0..site.edges.len()).map(|edge| field.ambient_inflow_m3_d(edge)).collect();
+        if let Some(inflows) = inflows {
+            let (sum, size) = inflows.iter().fold((0.0, 0.0), |(sum, size), inflow| {
+                (sum + inflow, f64::max(size, inflow.abs()))
+            });
+            prop_assert!(f64::abs(sum) <= 1e-14 * size, "{sum} of {size}");
         }
     }
 

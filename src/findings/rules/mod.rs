@@ -1,6 +1,7 @@
 //! When a flag is raised: one file a rule.
 
 mod above_ground;
+mod accuracy_not_reached;
 mod below_roof_at_well;
 mod below_roof_on_map;
 mod interference;
@@ -42,6 +43,7 @@ pub fn flags(judged: &Judged<'_>) -> Vec<Flag> {
         level_too_low::flags,
         below_roof_at_well::flags,
         below_roof_on_map::flags,
+        accuracy_not_reached::flags,
         interference::flags,
         no_limit_given::flags,
     ];
