@@ -21,6 +21,7 @@ mod boundary;
 mod chords;
 mod circle;
 mod clip;
+mod cutting;
 mod drain;
 mod drawn;
 mod error;
