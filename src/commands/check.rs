@@ -183,7 +183,7 @@ fn list(text: &mut String, heading: &str, items: &[String]) {
 fn steady_state(solution: &Solution, field: &WellField) -> String {
     let site = solution.site();
     let outline = field.outline();
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let mut rivers: Vec<String> = Vec::new();
     for (kind, pieces) in kinds.iter().zip(&outline.sides) {
         for piece in pieces.iter().filter(|_| *kind == Kind::FixedHead) {

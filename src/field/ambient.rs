@@ -119,7 +119,7 @@ pub(super) fn solve(
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
-    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     add_free_flow(&mut head, outline, stated);
     head.recharge = recharge;
     notes.extend(recharge.map(|recharge| recharge.note()));
@@ -171,7 +171,7 @@ fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
 
 /// The head that the rivers fix, without any uniform flow.
 fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let rivers: Vec<(usize, &Piece)> = kinds
         .iter()
         .zip(&outline.sides)

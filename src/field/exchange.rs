@@ -10,6 +10,7 @@
 //! | bent around a lake | 0: what enters on one side leaves on the other |
 //! | linear in a wedge's angle | none: infinite at the apex, where two stages meet |
 //! | by harmonic measures | none, see below |
+//! | in a general outline | none |
 //!
 //! Rivers of several stages that are not just two opposite ones always touch
 //! somewhere, if only at infinity, and where two stages touch the flow from one
@@ -36,7 +37,7 @@ impl WellField {
     /// barrier, none where it is infinite or not determined.
     pub fn ambient_inflow_m3_d(&self, edge: usize) -> Option<f64> {
         let shape = &self.outline.shape;
-        let kinds = shape.side_kinds();
+        let kinds = self.outline.side_kinds();
         let sides = kinds.iter().zip(&self.outline.sides).enumerate();
         let inflow_m: Option<f64> = sides
             .filter(|(_, (kind, _))| **kind == Kind::FixedHead)
@@ -60,7 +61,8 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
         // Added by the caller, as what leaves.
         recharge: _,
     } = head;
-    if *per_radian_m != 0.0 || !measured.is_empty() {
+    let is_general = matches!(shape, Shape::General);
+    if is_general || *per_radian_m != 0.0 || !measured.is_empty() {
         return None;
     }
     let across = (slope.conj() * inward(shape, side)).re;
@@ -77,7 +79,7 @@ fn inward(shape: &Shape, side: usize) -> Complex64 {
     let (x, y) = match *shape {
         Shape::Axes { x, y } => (x, y),
         Shape::CloggedHalfPlane { .. } => return Complex64::ONE,
-        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } | Shape::General => {
             return Complex64::ZERO;
         }
     };

@@ -32,7 +32,7 @@ fn free_flow(shape: &Shape) -> FreeFlow {
     match *shape {
         Shape::DiskExterior { .. } => FreeFlow::Any,
         Shape::CloggedHalfPlane { .. } => FreeFlow::Along(x_axis),
-        Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
+        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::General => FreeFlow::No,
         Shape::Axes { x, y } => match (x, y) {
             (Open, Open) => FreeFlow::Any,
             (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),

@@ -59,12 +59,12 @@ impl WellField {
     /// edges; the refusals say which numbers disagree and what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
         let mut notes = Vec::new();
-        let recharge = recharge::of(site, &outline).map_err(|fault| vec![*fault])?;
+        let recharge = recharge::of(site, &outline).map_err(|fault| vec![fault.into()])?;
         let green = steady::green_of(site, &outline, &mut notes).map_err(|fault| vec![fault])?;
         let ambient = ambient::solve(site, &outline, green.as_ref(), recharge, &mut notes)
             .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
         let datum = steady::datum(site, &outline, &mut notes);
-        let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+        let has_river = outline.side_kinds().contains(&Kind::FixedHead);
         let rim_factor = outline.frame.stretch.rim_factor();
         let of_well = |&index: &usize| {
             let well = site.wells.get(index)?;
@@ -258,6 +258,7 @@ impl WellField {
             Shape::CloggedHalfPlane { .. } => {
                 "one image well and a line of image sinks behind it, in closed form"
             }
+            Shape::General => "general solver",
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }
@@ -299,8 +300,7 @@ impl WellField {
     /// Whether barriers close the aquifer on all sides, so that pumping and
     /// injection must balance.
     pub fn is_closed_basin(&self) -> bool {
-        !self.outline.shape.side_kinds().contains(&Kind::FixedHead)
-            && self.influence_radius_m.is_none()
+        !self.outline.side_kinds().contains(&Kind::FixedHead) && self.influence_radius_m.is_none()
     }
 
     /// Q/T, metres.

@@ -29,15 +29,14 @@
 //! them by separation of variables.
 
 mod chi;
-mod drain;
 
 use std::f64::consts::PI;
 use std::ops::Range;
 
 use num_complex::Complex64;
 
-use crate::outline::{Axis, Kind, Outline, Shape};
-use crate::site::{Refusal, Site};
+use crate::outline::{Axis, Kind, Outline, OutlineError, Shape};
+use crate::site::Site;
 use chi::chi;
 
 /// Waves that have faded to e^(−40) are left out.
@@ -139,18 +138,18 @@ struct Wave {
     direction: f64,
 }
 
-/// The rise by a site's recharge; none without recharge.
+/// The rise by a site's recharge in closed form; none without recharge, and
+/// none in a general outline.
 ///
 /// # Errors
 /// Where the outline cannot drain it.
-pub(super) fn of(site: &Site, outline: &Outline) -> Result<Option<Recharge>, Box<Refusal>> {
+pub(super) fn of(site: &Site, outline: &Outline) -> Result<Option<Recharge>, OutlineError> {
     let flux_m_d = site.aquifer.recharge.si();
     if flux_m_d == 0.0 {
         return Ok(None);
     }
-    let mound =
-        Mound::of(&outline.shape).ok_or_else(|| drain::refusal(flux_m_d, &outline.shape))?;
-    Ok(Some(Recharge {
+    outline.check_drainage(site)?;
+    Ok(Mound::of(&outline.shape).map(|mound| Recharge {
         flux_m_d,
         transmissivity_m2_d: site.aquifer.transmissivity.si(),
         mound,
@@ -205,12 +204,15 @@ impl Recharge {
 }
 
 impl Mound {
-    /// None where the outline cannot drain recharge.
+    /// None where the outline cannot drain recharge, or has no closed form.
     fn of(shape: &Shape) -> Option<Self> {
         let (x, y) = match *shape {
             Shape::Disk { radius_m } => return Some(Self::Round(radius_m)),
             Shape::Axes { x, y } => (x, y),
-            _ => return None,
+            Shape::Wedge { .. }
+            | Shape::CloggedHalfPlane { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => return None,
         };
         if !matches!(x, Axis::TwoEdges { .. }) {
             return None;

@@ -17,7 +17,7 @@ pub(super) fn green_of(
 ) -> Result<Box<dyn Green>, Refusal> {
     let radius_m = site.aquifer.influence_radius.map(|radius| radius.si());
     let green = green::of(&outline.shape, radius_m).map_err(|error| refusal(error, outline))?;
-    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     let closed = is_closed(outline);
     match radius_m {
         Some(_) if has_river => notes.push(
@@ -58,8 +58,7 @@ pub(super) fn datum(site: &Site, outline: &Outline, notes: &mut Vec<String>) -> 
 }
 
 fn is_closed(outline: &Outline) -> bool {
-    let sides = outline.shape.side_kinds();
-    sides.len() == 4 && !sides.contains(&Kind::FixedHead)
+    outline.is_closed() && !outline.side_kinds().contains(&Kind::FixedHead)
 }
 
 fn check_balance(site: &Site, outline: &Outline) -> Result<(), Refusal> {
@@ -106,6 +105,12 @@ fn refusal(error: GreenError, outline: &Outline) -> Refusal {
             .replace("an wedge", "a wedge"),
             "add influence_radius to [aquifer] (Thiem's formula then ends each cone there), or a \
              river",
+        ),
+        GreenError::General => (
+            Subject::Plan,
+            "no closed form fits the rivers and barriers around it".to_owned(),
+            "leave out edges far from the wells, or simplify the outline to a straight line, a \
+             strip, a wedge, a half-strip, a box or a single circle",
         ),
         GreenError::TooManyImages { .. } => (
             Subject::Aquifer(Some("influence_radius")),

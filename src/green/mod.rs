@@ -101,6 +101,9 @@ pub enum GreenError {
     /// No edge fixes the head and no influence radius is given.
     #[error("no river fixes the head, so a steady cone of depression has no edge")]
     NoSteadyState,
+    /// The outline is a general one.
+    #[error("the outline is a general one, which is not solved yet")]
+    General,
     /// The influence radius reaches over too many images.
     #[error("the influence radius reaches some {images:.0} image wells, more than {most:.0}")]
     TooManyImages {
@@ -147,6 +150,7 @@ pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Gree
         Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
             Box::new(Disk::new(radius_m))
         }
+        Shape::General => return Err(GreenError::General),
     })
 }
 

@@ -135,15 +135,34 @@ fn successor(line: &[Point], lines: &[Vec<Point>]) -> Option<(usize, bool)> {
     })
 }
 
-/// Whether two lines run between the same ends, to a millimetre.
+/// Whether two lines run between the same ends and over the same middle, to a
+/// millimetre.
 fn same_course(a: &[Point], b: &[Point]) -> bool {
     let ends = |line: &[Point]| Some((*line.first()?, *line.last()?));
+    if !near(middle(a), middle(b)) {
+        return false;
+    }
     match (ends(a), ends(b)) {
         (Some((a0, a1)), Some((b0, b1))) => {
             (near(a0, b0) && near(a1, b1)) || (near(a0, b1) && near(a1, b0))
         }
         _ => false,
     }
+}
+
+/// The place halfway along a line.
+fn middle(line: &[Point]) -> Point {
+    let legs = || line.iter().zip(line.iter().skip(1));
+    let whole: f64 = legs().map(|(a, b)| (b - a).norm()).sum();
+    let mut left = 0.5 * whole;
+    for (a, b) in legs() {
+        let length = (b - a).norm();
+        if length >= left && length > 0.0 {
+            return a + (b - a) * (left / length);
+        }
+        left -= length;
+    }
+    line.first().copied().unwrap_or(Point::origin())
 }
 
 /// Whether two points are the same to a millimetre.

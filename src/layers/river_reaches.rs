@@ -11,7 +11,6 @@ use super::geojson::Layer;
 use super::units::Properties;
 use super::{LayerError, Planned};
 use crate::findings::ReachFinding;
-use crate::outline::Shape;
 use crate::site::Point;
 
 /// The layer.
@@ -40,14 +39,7 @@ fn lines(planned: &Planned<'_>, reach: &ReachFinding) -> Vec<Vec<Point>> {
         return Vec::new();
     };
     let outline = field.outline();
-    if let Shape::Disk { .. } | Shape::DiskExterior { .. } = outline.shape {
-        return super::boundaries::lines(planned, reach.edge);
-    }
     let extent = planned.survey.window.extent;
     let beyond_m = (extent.max - extent.min).norm();
-    vec![
-        outline
-            .reach_line(reach.side, &reach.along, beyond_m)
-            .to_vec(),
-    ]
+    vec![outline.reach_course(reach.side, &reach.along, beyond_m)]
 }

@@ -12,8 +12,8 @@ use geo::{Coord, LineString, MultiPolygon, Polygon};
 use num_complex::Complex64;
 
 use super::shape::{Axis, Shape};
-use super::walk;
 use super::{Outline, Piece};
+use super::{walk, window};
 use crate::site::{Extent, Point};
 
 impl Outline {
@@ -31,6 +31,10 @@ impl Outline {
             Shape::Wedge { .. } => polygon(walk::corners(extent).to_vec()),
             Shape::Disk { radius_m } => self.clip_circle(extent, radius_m, true),
             Shape::DiskExterior { radius_m } => self.clip_circle(extent, radius_m, false),
+            Shape::General => match &self.boundary {
+                Some(boundary) => window::clip(&self.frame, boundary, extent),
+                None => MultiPolygon::new(Vec::new()),
+            },
         }
     }
 
@@ -57,6 +61,9 @@ impl Outline {
         let Some(piece) = self.sides.get(side).and_then(|pieces| pieces.get(piece)) else {
             return Vec::new();
         };
+        if let (Shape::General, Some(curve)) = (self.shape, self.round_side(side)) {
+            return window::arcs_within(&self.frame, &curve, extent);
+        }
         match self.shape {
             Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
                 let centre = self.frame.to_site(Complex64::ZERO);
@@ -113,7 +120,10 @@ impl Outline {
                     Box::new(move |z: Complex64| -(z * back).im),
                 ]
             }
-            _ => Vec::new(),
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => Vec::new(),
         }
     }
 

@@ -41,37 +41,59 @@ pub enum OutlineError {
         /// The azimuth given.
         azimuth_deg: f64,
     },
-    /// A clogged river bank needs another method.
-    #[error("{river} has a bank resistance of {days} days, and the aquifer is a {shape}")]
-    BankResistance {
+    /// A clogged bank beside an aquifer of unknown conductivity.
+    #[error(
+        "{river} has a bank resistance of {days} days, but the aquifer's thickness is not given"
+    )]
+    NoThickness {
         /// The river.
         river: Named,
         /// Its bank resistance.
         days: f64,
+    },
+    /// Recharge that would have to flow without end.
+    #[error(
+        "no steady state: the {shape} around {well} has a recharge of {metres_a_day} m/d, and recharge over an unbounded area cannot drain"
+    )]
+    RechargeWithoutEnd {
+        /// The recharge.
+        metres_a_day: f64,
+        /// A well that stands in the aquifer.
+        well: Named,
         /// The shape's name.
         shape: &'static str,
     },
-    /// Banks in one line that differ.
+    /// Recharge within barriers.
     #[error(
-        "{river} has a bank resistance of {days} days, but {other} beside it one of {other_days} days"
+        "{well} stands in an aquifer that barriers close on all sides, with a recharge of {metres_a_day} m/d that cannot drain"
     )]
-    BanksDiffer {
-        /// The river.
-        river: Named,
-        /// Its bank resistance.
-        days: f64,
-        /// Another river along the same line.
-        other: Named,
-        /// The other's bank resistance; 0 where it has none.
-        other_days: f64,
+    RechargeWithoutRiver {
+        /// The recharge.
+        metres_a_day: f64,
+        /// A well that stands in the aquifer.
+        well: Named,
     },
-    /// A bank's resistance says nothing without the aquifer's thickness.
-    #[error("{river} has a bank resistance of {days} days, and the aquifer has no thickness")]
-    BankWithoutThickness {
-        /// The river.
+    /// Two parallel rivers of different stage that go on without end.
+    #[error(
+        "{river} and {other} run to infinity side by side, {apart} apart, with stages of {} m and {} m", .stages_m[0], .stages_m[1]
+    )]
+    ParallelStages {
+        /// The later river.
         river: Named,
-        /// Its bank resistance.
-        days: f64,
+        /// The earlier river.
+        other: Named,
+        /// How far apart, in words.
+        apart: String,
+        /// The stages of the two far away, metres.
+        stages_m: [f64; 2],
+    },
+    /// Sides that cross where places were joined.
+    #[error("{edge} crosses or touches another side of its aquifer {place}")]
+    SidesCross {
+        /// The edge.
+        edge: Named,
+        /// Where, in words.
+        place: String,
     },
     /// A line that is a point, or a circle without a radius.
     #[error("{edge} has no length: all of it lies within 1 mm")]
@@ -171,40 +193,6 @@ pub enum OutlineError {
         /// The other edges.
         others: Vec<Named>,
     },
-    /// A stage that is no linear function.
-    #[error("the stage of {river} departs by {departure} from a straight fall along its line")]
-    StageNotLinear {
-        /// The river.
-        river: Named,
-        /// By how much, in words.
-        departure: String,
-    },
-    /// Stages along one line that fall differently.
-    #[error(
-        "the stage of {river} slopes by {slope:.3e} along its line, that of {other} before it by {other_slope:.3e}"
-    )]
-    StagesBend {
-        /// The river.
-        river: Named,
-        /// Its slope.
-        slope: f64,
-        /// The first river of the same line.
-        other: Named,
-        /// The first river's slope.
-        other_slope: f64,
-    },
-    /// A stage that varies beside an outline that allows none.
-    #[error("the stage of {river} varies by {spread}, and the aquifer is a {shape}")]
-    StageVaries {
-        /// The river.
-        river: Named,
-        /// Highest less lowest, in words.
-        spread: String,
-        /// The shape's name.
-        shape: &'static str,
-        /// The mean of the stages, metres.
-        mean_m: f64,
-    },
     /// Not one stage for each vertex.
     #[error("{river} has {stages} stages for {vertices} vertices")]
     StageCount {
@@ -223,21 +211,20 @@ impl OutlineError {
         match self {
             Self::NoWell => Subject::Plan,
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
-            Self::BankResistance { river, .. }
-            | Self::BanksDiffer { river, .. }
-            | Self::BankWithoutThickness { river, .. } => {
-                with_key(&river.subject, "bank_resistance")
+            Self::RechargeWithoutEnd { .. } | Self::RechargeWithoutRiver { .. } => {
+                Subject::Aquifer(Some("recharge"))
             }
-            Self::StageNotLinear { river, .. }
-            | Self::StagesBend { river, .. }
-            | Self::StageVaries { river, .. }
-            | Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
+            Self::NoThickness { .. } => Subject::Aquifer(None),
+            Self::ParallelStages { river, .. } | Self::StageCount { river, .. } => {
+                with_key(&river.subject, "stage")
+            }
             Self::WildCoordinate { part } | Self::OnEdge { part, .. } => part.subject.clone(),
             Self::RimCrossesEdge { well, .. } => well.subject.clone(),
             Self::NoLength { edge }
             | Self::TooManyPieces { edge, .. }
             | Self::CrossesItself { edge, .. }
             | Self::Overlap { edge, .. }
+            | Self::SidesCross { edge, .. }
             | Self::NoClosedForm { edge, .. } => edge.subject.clone(),
             Self::OtherBank { neighbour, .. } | Self::AcrossAquifers { neighbour, .. } => {
                 neighbour.subject.clone()
@@ -249,24 +236,23 @@ impl OutlineError {
     fn why(&self) -> Option<String> {
         match self {
             Self::NoClosedForm { why, .. } => why.clone(),
-            Self::StageVaries { .. } => Some(
-                "a stage that falls along the river has a closed form beside a half-plane alone"
-                    .to_owned(),
-            ),
-            Self::StagesBend { .. } => Some(
-                "the outer rivers go on for ever, and only one straight fall along the whole line \
-                 fixes the head beside them"
-                    .to_owned(),
-            ),
             Self::NoWell => Some("the aquifer is found from the wells that stand in it".to_owned()),
-            Self::BankResistance { .. } | Self::BanksDiffer { .. } => Some(
-                "behind a clogged bank the head depends on the inflow, and the closed form covers \
-                 a half-plane beside one straight bank that is clogged alike all along"
+            Self::NoThickness { .. } => Some(
+                "how much a clogged bank holds back depends on the aquifer's conductivity, and \
+                 transmissivity alone does not tell it"
                     .to_owned(),
             ),
-            Self::BankWithoutThickness { .. } => Some(
-                "a bank lets through thickness / bank_resistance of water for each metre of its \
-                 length and of lost head"
+            Self::RechargeWithoutEnd { .. } => Some(
+                "parts of it have no river within reach, and there the head would rise or fall \
+                 without end"
+                    .to_owned(),
+            ),
+            Self::RechargeWithoutRiver { .. } => Some(
+                "with no river to take it up, the head would rise or fall without end".to_owned(),
+            ),
+            Self::ParallelStages { .. } => Some(
+                "water would cross between them all the way to infinity, which the general method \
+                 does not cover"
                     .to_owned(),
             ),
             _ => None,
@@ -285,14 +271,23 @@ impl OutlineError {
                  largest, such as { ratio = 3.0, azimuth = 40.0 }"
                     .to_owned()
             }
-            Self::BankResistance { .. } => "remove `bank_resistance`: the river then gives more \
-                 water than a clogged one would, which overstates heads near it"
-                .to_owned(),
-            Self::BanksDiffer { .. } => {
-                "give the rivers of this line one `bank_resistance`".to_owned()
+            Self::NoThickness { .. } => {
+                "give the aquifer `thickness` and `conductivity`, or remove `bank_resistance`"
+                    .to_owned()
             }
-            Self::BankWithoutThickness { .. } => {
-                "add `thickness` to [aquifer], beside the transmissivity".to_owned()
+            Self::RechargeWithoutEnd { .. } => "close the aquifer with rivers and barriers on all \
+                 sides, or make it a strip beside a river; or set `recharge` to 0, which leaves \
+                 its water out"
+                .to_owned(),
+            Self::RechargeWithoutRiver { .. } => {
+                "give the aquifer a river, or set `recharge` to 0, which leaves its water out"
+                    .to_owned()
+            }
+            Self::ParallelStages { .. } => "close the valley between them with a barrier or a \
+                 river across it, or give both one stage"
+                .to_owned(),
+            Self::SidesCross { .. } => {
+                "redraw the edges there so that they clearly meet, or clearly stay apart".to_owned()
             }
             Self::NoLength { .. } => "give it two vertices that lie apart, or remove it".to_owned(),
             Self::TooManyPieces { .. } => "simplify the lines to fewer vertices".to_owned(),
@@ -313,12 +308,6 @@ impl OutlineError {
                 "split the area into one neighbour for each side".to_owned()
             }
             Self::NoClosedForm { remedy, .. } => remedy.clone(),
-            Self::StageNotLinear { .. } | Self::StagesBend { .. } => {
-                "write stages that fall evenly along the line, or one constant stage".to_owned()
-            }
-            Self::StageVaries { mean_m, .. } => {
-                format!("write one constant stage for it, for instance its mean of {mean_m:.3} m")
-            }
             Self::StageCount { .. } => {
                 "write one stage for each vertex of `line`, or one number for all".to_owned()
             }
@@ -330,11 +319,13 @@ impl OutlineError {
         let label = |part: &Named, text: &str| (part.subject.clone(), text.to_owned());
         match self {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
+            Self::ParallelStages { other, .. } => vec![label(other, "the other river")],
+            Self::NoThickness { river, .. } => vec![label(river, "this river")],
+            Self::RechargeWithoutEnd { well, .. } | Self::RechargeWithoutRiver { well, .. } => {
+                vec![label(well, "stands in it")]
+            }
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
-            }
-            Self::StagesBend { other, .. } | Self::BanksDiffer { other, .. } => {
-                vec![label(other, "along the same line")]
             }
             Self::OtherBank { edge, .. } => vec![label(edge, "the edge between")],
             Self::AcrossAquifers {

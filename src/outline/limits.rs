@@ -8,8 +8,8 @@ use crate::site::{Anisotropy, Point, Site};
 /// Largest coordinate in the local frame, metres.
 pub(super) const FARTHEST_M: f64 = 1e8;
 
-/// Capabilities that a plan asks for and the closed forms do not have.
-pub(super) fn not_covered(site: &Site) -> Vec<OutlineError> {
+/// What a plan lacks before any geometry.
+pub(super) fn lacks(site: &Site) -> Vec<OutlineError> {
     let mut errors = Vec::new();
     if site.wells.is_empty() {
         errors.push(OutlineError::NoWell);

@@ -38,7 +38,7 @@ pub enum Axis {
 ///
 /// The canonical sides come in this order: x low, x high, y low, y high, as
 /// far as they exist; a wedge has arg z = 0, then arg z = angle; a disk has
-/// its circle.
+/// its circle; a general outline the sides of its boundary.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Shape {
     /// An axis-parallel outline: the product of two mirror sets. An axis with
@@ -74,6 +74,8 @@ pub enum Shape {
         /// Radius, metres.
         radius_m: f64,
     },
+    /// Any other outline: its sides are those of `Outline::boundary`.
+    General,
 }
 
 impl Shape {
@@ -93,6 +95,7 @@ impl Shape {
             Self::CloggedHalfPlane { .. } => "half-plane behind a clogged bank",
             Self::Disk { .. } => "disk",
             Self::DiskExterior { .. } => "plane around a lake",
+            Self::General => "general outline",
         }
     }
 
@@ -144,11 +147,15 @@ impl Shape {
                 }
             }
             // Behind a clogged bank nothing jumps.
-            Self::CloggedHalfPlane { .. } | Self::Disk { .. } | Self::DiskExterior { .. } => z,
+            Self::CloggedHalfPlane { .. }
+            | Self::Disk { .. }
+            | Self::DiskExterior { .. }
+            | Self::General => z,
         }
     }
 
-    /// The kinds of the canonical sides, in their order.
+    /// The kinds of the canonical sides, in their order. Those of a general
+    /// outline the shape alone does not know: see `Outline::side_kinds`.
     pub fn side_kinds(&self) -> Vec<Kind> {
         match *self {
             Self::Axes { x, y } => [x, y]
@@ -163,6 +170,7 @@ impl Shape {
             Self::CloggedHalfPlane { .. } | Self::Disk { .. } | Self::DiskExterior { .. } => {
                 vec![Kind::FixedHead]
             }
+            Self::General => Vec::new(),
         }
     }
 }
@@ -170,7 +178,8 @@ impl Shape {
 /// A piece of a canonical side that one river or barrier of the site makes.
 ///
 /// Positions along a side: y on a side across x, x on a side across y, the
-/// distance from the apex on a wedge; on a circle the arc angle, 0 to 2π.
+/// distance from the apex on a wedge; on a circle the arc angle, 0 to 2π; on a
+/// side of a general outline those of its `Curve`.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Piece {
     /// Index in `Site::edges`.

@@ -1,5 +1,6 @@
 //! Says in words what an outline is.
 
+use super::general::Condition;
 use super::names;
 use super::shape::{Axis, Kind, Shape};
 use super::{Outline, Piece};
@@ -23,21 +24,13 @@ impl Outline {
     /// The outline in one line: "strip 1,240 m wide between river Ostra
     /// (fixed head) and barrier granite edge (no flow)".
     pub fn words(&self, site: &Site) -> String {
-        let kinds = self.shape.side_kinds();
-        // One edge may bend round several sides; it is named once.
-        let mut sides: Vec<String> = Vec::new();
-        for (side, kind) in kinds.iter().enumerate() {
-            let words = format!(
-                "{} ({})",
-                self.side_name(site, side),
-                self.kind_words(*kind)
-            );
-            if !sides.contains(&words) {
-                sides.push(words);
-            }
-        }
+        let kinds = self.side_kinds();
+        let sides = self.sides_in_words(site);
         let between = if sides.len() > 1 { "between" } else { "within" };
-        let sides = names::listed(&sides);
+        let sides = match self.shape {
+            Shape::General => names::few(&sides),
+            _ => names::listed(&sides),
+        };
         let name = self.shape.name();
         let stretched = if self.frame.stretch == super::Stretch::none() {
             ""
@@ -64,6 +57,7 @@ impl Outline {
                     names::length(radius_m)
                 )
             }
+            Shape::General => format!("{name} {between} {sides}"),
             Shape::DiskExterior { radius_m } => {
                 let radius = names::length(radius_m);
                 format!("{name} of radius {radius}: {sides}")
@@ -72,12 +66,33 @@ impl Outline {
         text + stretched
     }
 
-    /// What a side of a kind does.
-    fn kind_words(&self, kind: Kind) -> &'static str {
-        match (kind, self.shape) {
-            (Kind::FixedHead, Shape::CloggedHalfPlane { .. }) => "clogged bank",
-            (Kind::FixedHead, _) => "fixed head",
-            (Kind::NoFlow, _) => "no flow",
+    /// The sides with what they do to the head. One edge may bend round
+    /// several sides; it is named once.
+    fn sides_in_words(&self, site: &Site) -> Vec<String> {
+        let mut sides: Vec<String> = Vec::new();
+        for (side, kind) in self.side_kinds().into_iter().enumerate() {
+            let condition = self.condition_words(side, kind);
+            let words = format!("{} ({condition})", self.side_name(site, side));
+            if !sides.contains(&words) {
+                sides.push(words);
+            }
+        }
+        sides
+    }
+
+    /// What a side of a kind does to the head.
+    fn condition_words(&self, side: usize, kind: Kind) -> &'static str {
+        let is_clogged = match &self.boundary {
+            Some(boundary) => boundary
+                .sides
+                .get(side)
+                .is_some_and(|side| matches!(side.condition, Condition::Clogged { .. })),
+            None => matches!(self.shape, Shape::CloggedHalfPlane { .. }),
+        };
+        match kind {
+            Kind::FixedHead if is_clogged => "clogged bank",
+            Kind::FixedHead => "fixed head",
+            Kind::NoFlow => "no flow",
         }
     }
 }

@@ -74,6 +74,7 @@ fn inside(shape: &Shape, z: Complex64) -> bool {
         Shape::Disk { radius_m } => z.norm() < radius_m,
         Shape::DiskExterior { radius_m } => z.norm() > radius_m,
         Shape::CloggedHalfPlane { .. } => z.re > 0.0,
+        Shape::General => panic!("a named shape expected"),
     }
 }
 

@@ -58,11 +58,11 @@ fn water(stage: Stage) -> EdgeKind {
 pub trait With: Sized {
     fn river(self, name: &str, line: &[(f64, f64)]) -> Self;
     fn falling_river(self, name: &str, line: &[(f64, f64)], stages: &[f64]) -> Self;
-    /// Clogs the bank of the last river.
-    fn clogged(self, days: f64) -> Self;
     fn barrier(self, name: &str, line: &[(f64, f64)]) -> Self;
     fn lake(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
     fn round_barrier(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
+    /// Gives the rivers of a name a bank resistance, days.
+    fn clogged(self, name: &str, days: f64) -> Self;
     fn neighbour(self, name: &str, at: (f64, f64)) -> Self;
     fn property(self, name: &str, corners: &[(f64, f64)]) -> Self;
 }
@@ -80,16 +80,6 @@ impl With for Site {
         let kind = water(Stage::AtVertices(stages));
         self.edges
             .push(edge(name, kind, EdgeShape::Line(points(line))));
-        self
-    }
-
-    fn clogged(mut self, days: f64) -> Self {
-        if let Some(EdgeKind::River {
-            bank_resistance, ..
-        }) = self.edges.last_mut().map(|edge| &mut edge.kind)
-        {
-            *bank_resistance = Some(Time::from_si(days));
-        }
         self
     }
 
@@ -113,6 +103,18 @@ impl With for Site {
         self = self.lake(name, centre, radius);
         if let Some(edge) = self.edges.last_mut() {
             edge.kind = EdgeKind::Barrier;
+        }
+        self
+    }
+
+    fn clogged(mut self, name: &str, days: f64) -> Self {
+        for edge in self.edges.iter_mut().filter(|edge| edge.name == name) {
+            if let EdgeKind::River {
+                bank_resistance, ..
+            } = &mut edge.kind
+            {
+                *bank_resistance = Some(Time::from_si(days));
+            }
         }
         self
     }

@@ -219,21 +219,26 @@ fn an_endless_reach_takes_up_endless_recharge() {
     assert_eq!(field.recharge_to_m3_d(1), Some(0.0));
 }
 
+/// `find` refuses them too; a field may be given an outline found without the
+/// recharge.
 #[test]
-fn outlines_that_cannot_drain_recharge_are_refused_by_name() {
+fn outlines_that_cannot_drain_recharge_are_refused_by_a_field_too() {
     for (kinds, across, name) in [
-        ("NN", "", "strip"),
-        ("NN", "D", "half-strip"),
-        ("NN", "NN", "box"),
+        ("NN", "", "the strip"),
+        ("NN", "D", "the half-strip"),
+        ("NN", "NN", "barriers close"),
     ] {
         let site = Drawn::new(kinds, 3.0, across, 2.0).site();
-        let outline = find(&site).expect("the outline is found").remove(0);
+        assert!(find(&site).is_err());
+        let mut dry = site.clone();
+        dry.aquifer.recharge = Flux::from_si(0.0);
+        let outline = find(&dry).expect("the outline is found").remove(0);
         let refused = WellField::solve(&site, outline)
             .err()
             .expect("it is refused");
         let text = refused[0].to_string();
         assert!(
-            text.contains(&format!("a {name}, cannot drain it")),
+            text.contains(name) && text.contains("cannot drain"),
             "{text}"
         );
         assert_eq!(
