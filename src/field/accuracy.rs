@@ -1,13 +1,14 @@
 //! A bound on the error of a head.
 //!
-//! Closed forms have no truncation beyond 1e-16, so three roundings count; the
+//! Closed forms have no truncation beyond 1e-16, so these roundings count; the
 //! general solver adds the bound that it has proven.
 //!
 //! 1. G itself: `green` states at most 64ε (1 + κ·distance) for each well; with
 //!    distances up to e^40 periods left out, 64 · 40 ε bounds it.
 //! 2. Places: stretching, moving and turning a coordinate of size c costs at
 //!    most 8εc; beside a well's rim the head changes by Q/(2πT r_w) a metre.
-//! 3. The sums: one rounding of the level and of each well's part.
+//! 3. Recharge: `recharge` states its own bound.
+//! 4. The sums: one rounding of the level and of each well's part.
 
 use super::WellField;
 
@@ -40,7 +41,8 @@ pub(super) fn bound_m(field: &WellField) -> f64 {
             strength_m * (of_green + of_place)
         })
         .sum();
+    let of_recharge = field.ambient.recharge.map_or(0.0, |mound| mound.error_m());
     let solved = field.ambient.solved.as_ref();
     let of_solver = solved.map_or(0.0, |solved| solved.general.bound_m());
-    of_wells + 4.0 * EPSILON * level_m + of_solver
+    of_wells + of_recharge + 4.0 * EPSILON * level_m + of_solver
 }

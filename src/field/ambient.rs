@@ -11,8 +11,10 @@
 //! | other rivers of different stage | Σ stage · harmonic measure of the river |
 //! | no closed form | all of it by the general solver |
 //! | half-plane, river across an open end | plus slope · distance from the river |
+//! | half-plane, river behind a clogged bank | plus slope · (distance from the river + skin) |
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
+//! Recharge adds its own mound (`recharge`).
 //! The harmonic measure of a river seen from x is the share that it would give
 //! to a well at x, so `green` knows it; on the river itself it jumps with the
 //! last digit of x, so x is taken a hair inside. What the plan states is compared with
@@ -23,6 +25,8 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::ambient_error::AmbientError;
+use super::free_flow;
+use super::recharge::Recharge;
 use super::solved::Solved;
 use crate::green::Green;
 use crate::outline::{Axis, Kind, Outline, Piece, Shape};
@@ -53,6 +57,16 @@ pub(super) struct AmbientHead {
     pub(super) measured: Vec<(usize, Range<f64>, f64)>,
     /// All of it, where the outline has no closed form.
     pub(super) solved: Option<Solved>,
+    /// The mound built by recharge, where there is some.
+    pub(super) recharge: Option<Recharge>,
+}
+
+/// What a head before pumping is built from beside stages and uniform flow.
+pub(super) enum Built {
+    /// The mound of recharge, where there is some.
+    InClosedForm(Option<Recharge>),
+    /// All of it, the mound and the uniform flow included.
+    BySolver(Solved),
 }
 
 impl AmbientHead {
@@ -86,7 +100,8 @@ impl AmbientHead {
             .iter()
             .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), inside))
             .sum();
-        self.level_m + linear * bend + turned + measured
+        let mound = self.recharge.map_or(0.0, |recharge| recharge.rise_m(z));
+        self.level_m + linear * bend + turned + measured + mound
     }
 
     /// ∂h/∂x + i ∂h/∂y at a canonical place. The part of harmonic measures is
@@ -102,10 +117,9 @@ impl AmbientHead {
                 self.slope - radius * radius * inner
             }
         };
-        let turned = if self.per_radian_m == 0.0 {
-            Complex64::new(0.0, 0.0)
-        } else {
-            self.per_radian_m * i * z / z.norm_sqr()
+        let turned = match self.per_radian_m {
+            0.0 => Complex64::ZERO,
+            rise_m => rise_m * i * z / z.norm_sqr(),
         };
         let measured: Complex64 = self
             .measured
@@ -117,9 +131,10 @@ impl AmbientHead {
                 rise_m * Complex64::new(along_x, along_y) / (2.0 * step_m)
             })
             .sum();
+        let mound = self.recharge.map(|recharge| recharge.gradient(z));
         let solved = self.solved.as_ref();
         let solved = solved.map(|solved| solved.general.gradient_before(z));
-        linear + turned + measured + solved.unwrap_or_default()
+        linear + turned + measured + mound.unwrap_or_default() + solved.unwrap_or_default()
     }
 
     /// The uniform flow that a plan states as the one far away, where the
@@ -133,40 +148,6 @@ impl AmbientHead {
     }
 }
 
-/// Which uniform flow the edges leave free, in the canonical frame.
-#[derive(Clone, Copy, Debug, PartialEq)]
-enum FreeFlow {
-    /// None.
-    No,
-    /// Along one axis only: a unit number.
-    Along(Complex64),
-    /// In any direction.
-    Any,
-}
-
-fn free_flow(shape: &Shape) -> FreeFlow {
-    use Axis::{OneEdge, Open, TwoEdges};
-    use Kind::{FixedHead, NoFlow};
-    let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
-    match *shape {
-        Shape::DiskExterior { .. } => FreeFlow::Any,
-        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::General => FreeFlow::No,
-        Shape::Axes { x, y } => match (x, y) {
-            (Open, Open) => FreeFlow::Any,
-            (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),
-            (OneEdge(NoFlow), Open | OneEdge(FixedHead)) => FreeFlow::Along(y_axis),
-            (
-                TwoEdges {
-                    kinds: [NoFlow, NoFlow],
-                    ..
-                },
-                Open | OneEdge(FixedHead),
-            ) => FreeFlow::Along(y_axis),
-            _ => FreeFlow::No,
-        },
-    }
-}
-
 /// Finds the head before pumping of one aquifer.
 ///
 /// `notes` receives what the reader should know of it.
@@ -174,22 +155,19 @@ pub(super) fn solve(
     site: &Site,
     outline: &Outline,
     green: &dyn Green,
-    solved: Option<Solved>,
+    built: Built,
     notes: &mut Vec<String>,
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
     let mut head = fixed_by_rivers(outline);
-    head.solved = solved;
     let has_river = outline.side_kinds().contains(&Kind::FixedHead);
-    let canonical = outline.frame.gradient_to_canonical(stated);
-    let free = match free_flow(&outline.shape) {
-        FreeFlow::No => Complex64::new(0.0, 0.0),
-        FreeFlow::Any => canonical,
-        FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
-    };
-    head.slope += free;
-    if let Shape::DiskExterior { radius_m } = outline.shape {
-        head.lake_radius_m = Some(radius_m);
+    add_free_flow(&mut head, outline, stated);
+    match built {
+        Built::BySolver(solved) => head.solved = Some(solved),
+        Built::InClosedForm(recharge) => {
+            head.recharge = recharge;
+            notes.extend(recharge.map(|recharge| recharge.note()));
+        }
     }
     let Some(ambient) = &site.ambient else {
         return if has_river {
@@ -210,6 +188,18 @@ pub(super) fn solve(
         fix_level(&mut head, ambient, outline, stated, notes)?;
     }
     Ok(head)
+}
+
+/// Adds what the edges leave free of a stated uniform flow.
+fn add_free_flow(head: &mut AmbientHead, outline: &Outline, stated: Vector) {
+    let free = free_flow::part_of(&outline.shape, outline.frame.gradient_to_canonical(stated));
+    head.slope += free;
+    match outline.shape {
+        // ∂h/∂x = (h − stage)/b: the flow through the bank takes a step of head.
+        Shape::CloggedHalfPlane { skin_m } => head.level_m += free.re * skin_m,
+        Shape::DiskExterior { radius_m } => head.lake_radius_m = Some(radius_m),
+        _ => {}
+    }
 }
 
 /// ∇h of the plan's `[ambient]`, in the site's frame.
@@ -237,17 +227,17 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         .collect();
     let mut head = AmbientHead {
         level_m: rivers.first().map_or(0.0, |(_, piece)| piece.stage_m),
-        slope: Complex64::new(0.0, 0.0),
+        slope: Complex64::ZERO,
         lake_radius_m: None,
         per_radian_m: 0.0,
         measured: Vec::new(),
         solved: None,
+        recharge: None,
     };
-    if let [(0, piece)] = rivers.as_slice() {
-        // A half-plane's river may fall along its side, x = 0.
-        head.slope = Complex64::new(0.0, piece.stage_slope);
-        return head;
-    }
+    // A half-plane's rivers may fall along its side, x = 0, all alike; their
+    // levels at y = 0 may differ.
+    let fall = rivers.first().map_or(0.0, |(_, piece)| piece.stage_slope);
+    head.slope = Complex64::new(0.0, fall);
     // Several rivers that make one side at one stage count as one.
     let mut sides: Vec<(usize, f64)> = rivers
         .iter()
@@ -368,6 +358,10 @@ impl Comparison<'_> {
                 faults.push(AmbientError::HeadDiffers {
                     stated_m: level.si(),
                     fixed_m,
+                    cause: match self.head.recharge {
+                        Some(_) => "the rivers and the recharge",
+                        None => "the rivers",
+                    },
                 });
             }
         }
@@ -411,6 +405,7 @@ impl Comparison<'_> {
             && head.per_radian_m == 0.0
             && head.measured.is_empty()
             && head.solved.is_none()
+            && head.recharge.is_none()
     }
 
     fn middle_of_wells(&self) -> Point {

@@ -7,6 +7,8 @@ mod accuracy;
 mod ambient;
 mod ambient_error;
 mod exchange;
+mod free_flow;
+mod recharge;
 mod solved;
 mod steady;
 
@@ -74,7 +76,13 @@ impl WellField {
         };
         steady::note_radius(site, &outline, &mut notes);
         let hardest_edge = solved.as_ref().and_then(|solved| solved.hardest_edge(&outline));
-        let ambient = ambient::solve(site, &outline, green.as_ref(), solved, &mut notes)
+        let parts = match solved {
+            Some(solved) => ambient::Built::BySolver(solved),
+            None => ambient::Built::InClosedForm(
+                recharge::of(site, &outline).map_err(|fault| vec![fault.into()])?,
+            ),
+        };
+        let ambient = ambient::solve(site, &outline, green.as_ref(), parts, &mut notes)
             .map_err(refusals)?;
         let datum = steady::datum(site, &outline, &mut notes);
         let has_river = outline.side_kinds().contains(&Kind::FixedHead);
@@ -213,6 +221,26 @@ impl WellField {
         self.wells.iter().map(given).sum()
     }
 
+    /// Recharge that leaves the aquifer through a part of a side, m³/d; none
+    /// where the part is endless. It does so with or without wells: what they
+    /// take from a river is `inflow_m3_d`.
+    pub fn recharge_through_m3_d(&self, side: usize, along: &Range<f64>) -> Option<f64> {
+        let through = |recharge: recharge::Recharge| recharge.through_m3_d(side, along);
+        self.ambient.recharge.map_or(Some(0.0), through)
+    }
+
+    /// Recharge that edge `Site::edges[edge]` takes up, m³/d, none where it
+    /// takes up recharge along an endless reach. Over all edges of a closed outline this is
+    /// N times its area.
+    pub fn recharge_to_m3_d(&self, edge: usize) -> Option<f64> {
+        let pieces = self.outline.sides.iter().enumerate();
+        pieces
+            .flat_map(|(side, pieces)| pieces.iter().map(move |piece| (side, piece)))
+            .filter(|(_, piece)| piece.edge == edge)
+            .map(|(side, piece)| self.recharge_through_m3_d(side, &piece.along))
+            .sum()
+    }
+
     /// A proven bound on the error of a head, metres; of a closed form, which
     /// has no other error, on its rounding.
     pub fn error_bound_m(&self) -> f64 {
@@ -238,6 +266,9 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::CloggedHalfPlane { .. } => {
+                "one image well and a line of image sinks behind it, in closed form"
+            }
             Shape::General => "general solver on the edges, its error proven",
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"

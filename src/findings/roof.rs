@@ -3,8 +3,9 @@
 //!
 //! The area is measured between the contour of the roof's elevation and the
 //! outline. The lowest head is looked for at the grid's nodes and at the rims
-//! of the wells: the head has no minimum elsewhere inside an aquifer without
-//! recharge (maximum principle), only on its edges.
+//! of the wells: the head has no minimum elsewhere inside an aquifer that loses
+//! no water over its area (minimum principle), only on its edges. Where `recharge` is
+//! negative the nodes must be fine enough.
 
 use super::flag::Cause;
 use super::neighbour::largest;

@@ -52,7 +52,10 @@ impl Influence {
         let images = match shape {
             Shape::Axes { x, y } => across(x) * across(y),
             Shape::Wedge { angle_rad, .. } => 2.0 * PI / angle_rad,
-            Shape::Disk { .. } | Shape::DiskExterior { .. } | Shape::General => 1.0,
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => 1.0,
         };
         if images > MOST_IMAGES {
             return Err(GreenError::TooManyImages {
@@ -75,7 +78,10 @@ impl Influence {
                 &mirrors::images_within(y, pole.im, self.radius),
             ),
             Shape::Wedge { angle_rad, kinds } => images_in_wedge(angle_rad, kinds, pole),
-            Shape::Disk { .. } | Shape::DiskExterior { .. } | Shape::General => Vec::new(),
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => Vec::new(),
         }
     }
 

@@ -1,10 +1,12 @@
 //! One Green's function for each kind of outline, behind one small trait.
 //!
 //! G solves −∇²G = δ(z − z₀) in the canonical frame of an outline, with G = 0
-//! on fixed-head sides and ∂G/∂n = 0 on no-flow sides. A well that pumps Q at
+//! on fixed-head sides and ∂G/∂n = 0 on no-flow sides; behind a clogged bank
+//! G obeys the bank's own condition (`clogged`). A well that pumps Q at
 //! z₀ lowers the head at z by Q/T · G(z, z₀).
 
 mod batch;
+mod clogged;
 mod corner;
 mod disk;
 mod general;
@@ -26,6 +28,7 @@ use num_complex::Complex64;
 use thiserror::Error;
 
 use crate::outline::{Axis, Kind, Shape};
+use clogged::Clogged;
 use corner::Corner;
 use disk::Disk;
 use influence::Influence;
@@ -146,6 +149,7 @@ pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Arc<dyn Gree
             (Open, _) => return Err(GreenError::NoSteadyState),
         },
         Shape::Wedge { angle_rad, kinds } => Arc::new(Wedge::new(angle_rad, kinds)),
+        Shape::CloggedHalfPlane { skin_m } => Arc::new(Clogged::new(skin_m)),
         Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
             Arc::new(Disk::new(radius_m))
         }

@@ -1,5 +1,5 @@
-//! What the banks of a general outline do to the head: their condition and the
-//! stage along them.
+//! What the banks of an outline do to the head: their condition and the stage
+//! along them.
 
 use super::boundary::Bit;
 use super::error::OutlineError;
@@ -9,7 +9,7 @@ use super::names;
 use super::stroke::TOUCH_M;
 use crate::site::{EdgeKind, EdgeShape, Point, Site, Stage, Vector};
 
-/// Whether any of these edges is a river behind a clogged bank.
+/// Whether an edge is a river behind a clogged bank.
 pub(super) fn is_clogged(site: &Site, edge: usize) -> bool {
     resistance_d(site, edge).is_some()
 }
@@ -64,7 +64,7 @@ pub(super) fn condition(
 }
 
 /// The stages of a straight piece at its ends and wherever the plan gives one
-/// between, with their distances from its anchor: see `Knots`.
+/// between, by their distances from a place of it along its direction.
 ///
 /// # Errors
 /// `StageCount`, and `CrossesItself` where the vertices that were straightened

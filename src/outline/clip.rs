@@ -20,8 +20,8 @@ impl Outline {
     /// The aquifer within a rectangle, in site coordinates; empty where they
     /// do not overlap.
     pub fn clip(&self, extent: Extent) -> MultiPolygon<f64> {
-        match self.shape {
-            Shape::Axes { .. } => self.clip_convex(extent),
+        match self.shape.unclogged() {
+            Shape::Axes { .. } | Shape::CloggedHalfPlane { .. } => self.clip_convex(extent),
             Shape::Wedge { angle_rad, .. } if angle_rad <= PI => self.clip_convex(extent),
             Shape::Wedge { angle_rad, .. } if angle_rad < TAU => {
                 let paths = self.reflex_paths(extent);
@@ -107,7 +107,7 @@ impl Outline {
 
     /// For each straight side the canonical distance inward from its line.
     fn inward_distances(&self) -> Vec<Box<dyn Fn(Complex64) -> f64>> {
-        match self.shape {
+        match self.shape.unclogged() {
             Shape::Axes { x, y } => {
                 let mut sides = across(x, |z| z.re);
                 sides.extend(across(y, |z| z.im));
@@ -120,7 +120,10 @@ impl Outline {
                     Box::new(move |z: Complex64| -(z * back).im),
                 ]
             }
-            Shape::Disk { .. } | Shape::DiskExterior { .. } | Shape::General => Vec::new(),
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => Vec::new(),
         }
     }
 

@@ -243,13 +243,13 @@ impl OutlineError {
                     .to_owned(),
             ),
             Self::RechargeWithoutEnd { .. } => Some(
-                "the water of an area without end has no river within reach, so heads would rise \
+                "parts of it have no river within reach, and there the head would rise or fall \
                  without end"
                     .to_owned(),
             ),
-            Self::RechargeWithoutRiver { .. } => {
-                Some("with no river to take it, the head would rise without end".to_owned())
-            }
+            Self::RechargeWithoutRiver { .. } => Some(
+                "with no river to take it up, the head would rise or fall without end".to_owned(),
+            ),
             Self::ParallelStages { .. } => Some(
                 "water would cross between them all the way to infinity, which the general method \
                  does not cover"
@@ -276,7 +276,8 @@ impl OutlineError {
                     .to_owned()
             }
             Self::RechargeWithoutEnd { .. } => "close the aquifer with rivers and barriers on all \
-                 sides, or set `recharge` to 0, which leaves its water out"
+                 sides, or make it a strip beside a river; or set `recharge` to 0, which leaves \
+                 its water out"
                 .to_owned(),
             Self::RechargeWithoutRiver { .. } => {
                 "give the aquifer a river, or set `recharge` to 0, which leaves its water out"

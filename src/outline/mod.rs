@@ -21,6 +21,8 @@ mod boundary;
 mod chords;
 mod circle;
 mod clip;
+mod clogged;
+mod cutting;
 mod drain;
 mod drawn;
 mod error;

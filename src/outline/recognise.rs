@@ -18,7 +18,7 @@ use super::pieces::finish;
 use super::scene::Scene;
 use super::shape::{Kind, Shape};
 use super::{Naming, Outline, Piece};
-use super::{assemble, banks, drain, refuse, stages};
+use super::{assemble, banks, clogged, refuse, stages};
 use crate::site::{EdgeShape, Site};
 
 /// What a face is recognised with.
@@ -51,7 +51,9 @@ pub(super) fn outline(
         Some(outline) => outline,
         None => general(context, &loops)?,
     };
-    drain::check(context, &outline).map_err(|error| vec![error])?;
+    outline
+        .check_drainage(context.site)
+        .map_err(|error| vec![error])?;
     Ok(outline)
 }
 
@@ -95,14 +97,21 @@ impl Loops {
 /// The outline where it has a closed form, all conditions considered.
 fn named(context: Context<'_>, loops: &Loops) -> Result<Option<Outline>, Vec<OutlineError>> {
     let site = context.site;
-    let is_clogged = loops.bits().any(|bit| banks::is_clogged(site, bit.edge));
     let is_unnamed = context.naming == Naming::NoRivers
         && loops.has_river()
         && site.aquifer.influence_radius.is_none();
-    if is_clogged || is_unnamed {
+    if is_unnamed {
         return Ok(None);
     }
-    Ok(match (loops.around.as_slice(), loops.islands.as_slice()) {
+    match unclogged(context, loops) {
+        Some(outline) => clogged::with_banks(site, outline).map_err(|error| vec![error]),
+        None => Ok(None),
+    }
+}
+
+/// The outline where it has a closed form with all banks clean.
+fn unclogged(context: Context<'_>, loops: &Loops) -> Option<Outline> {
+    match (loops.around.as_slice(), loops.islands.as_slice()) {
         ([], []) => Some(finish(context, &named::open_plane())),
         ([], [island]) => whole_circle(island).and_then(|edge| circle(context, edge, false)),
         ([_, ..], []) => match whole_circle(&loops.around) {
@@ -111,7 +120,7 @@ fn named(context: Context<'_>, loops: &Loops) -> Result<Option<Outline>, Vec<Out
             None => straight(context, &sides(context, &loops.around)),
         },
         _ => None,
-    })
+    }
 }
 
 /// The straight sides of a loop.

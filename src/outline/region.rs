@@ -20,8 +20,9 @@ impl Outline {
     pub fn holds(&self, point: Point) -> bool {
         let z = self.frame.to_canonical(point);
         let slack = ON_EDGE * z.norm() + self.rounding_m(point);
-        match self.shape {
+        match self.shape.unclogged() {
             Shape::Axes { x, y } => within(x, z.re, slack) && within(y, z.im, slack),
+            Shape::CloggedHalfPlane { .. } => z.re >= -slack,
             Shape::Wedge { angle_rad, .. } => {
                 // Near the apex no angle tells a place on a side from one off it.
                 let slack_rad = slack / z.norm().max(slack);
@@ -89,7 +90,7 @@ impl Outline {
             Shape::General => self
                 .curve(side)
                 .filter(|curve| matches!(curve, Curve::Arc { .. })),
-            Shape::Axes { .. } | Shape::Wedge { .. } => None,
+            Shape::Axes { .. } | Shape::Wedge { .. } | Shape::CloggedHalfPlane { .. } => None,
         }
     }
 
@@ -120,7 +121,7 @@ impl Outline {
 
     /// The straight line of a canonical side.
     pub(super) fn side_line(&self, side: usize) -> SideLine {
-        let lines = match self.shape {
+        let lines = match self.shape.unclogged() {
             Shape::Axes { x, y } => {
                 let across_x = places(x).map(|x| SideLine {
                     origin: Complex64::new(x, 0.0),
@@ -140,7 +141,9 @@ impl Outline {
                     Complex64::cis(angle_rad)
                 },
             }),
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => None,
+            Shape::CloggedHalfPlane { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+                None
+            }
             Shape::General => self.curve(side).and_then(straight_line),
         };
         lines.unwrap_or(SideLine {

@@ -8,7 +8,8 @@ use num_complex::Complex64;
 /// What an edge of the outline does to the head.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Kind {
-    /// The head is given: a river. Images change sign.
+    /// The head is given: a river. Images change sign. Behind a clogged bank
+    /// the river's stage is given, not the head.
     FixedHead,
     /// No flow crosses: a barrier. Images keep their sign.
     NoFlow,
@@ -57,6 +58,12 @@ pub enum Shape {
         /// The kinds of the sides at arg z = 0 and arg z = angle.
         kinds: [Kind; 2],
     },
+    /// x > 0 beside a river on x = 0 whose bank is clogged.
+    CloggedHalfPlane {
+        /// b of the bank's condition ∂s/∂x = s/b for the drawdown s, metres,
+        /// > 0: the aquifer's conductivity times the bank's resistance.
+        skin_m: f64,
+    },
     /// abs z < `radius_m` inside a river.
     Disk {
         /// Radius, metres.
@@ -85,9 +92,21 @@ impl Shape {
                 (TwoEdges { .. }, TwoEdges { .. }) => "box",
             },
             Self::Wedge { .. } => "wedge",
+            Self::CloggedHalfPlane { .. } => "half-plane behind a clogged bank",
             Self::Disk { .. } => "disk",
             Self::DiskExterior { .. } => "plane around a lake",
             Self::General => "general outline",
+        }
+    }
+
+    /// The shape with the same sides, all banks clean: where it lies.
+    pub fn unclogged(self) -> Self {
+        match self {
+            Self::CloggedHalfPlane { .. } => Self::Axes {
+                x: Axis::OneEdge(Kind::FixedHead),
+                y: Axis::Open,
+            },
+            other => other,
         }
     }
 
@@ -127,7 +146,11 @@ impl Shape {
                     Complex64::from_polar(corner_m, inside)
                 }
             }
-            Self::Disk { .. } | Self::DiskExterior { .. } | Self::General => z,
+            // Behind a clogged bank nothing jumps.
+            Self::CloggedHalfPlane { .. }
+            | Self::Disk { .. }
+            | Self::DiskExterior { .. }
+            | Self::General => z,
         }
     }
 
@@ -144,7 +167,9 @@ impl Shape {
                 })
                 .collect(),
             Self::Wedge { kinds, .. } => kinds.to_vec(),
-            Self::Disk { .. } | Self::DiskExterior { .. } => vec![Kind::FixedHead],
+            Self::CloggedHalfPlane { .. } | Self::Disk { .. } | Self::DiskExterior { .. } => {
+                vec![Kind::FixedHead]
+            }
             Self::General => Vec::new(),
         }
     }

@@ -2,7 +2,8 @@
 //!
 //! A stage is constant, or, beside a half-plane, one linear function of the
 //! position, which the drawn vertices follow to within 1 mm and which is
-//! carried on to infinity. Any other stage makes a general outline.
+//! carried on to infinity; the rivers of one half-plane all fall alike. Any
+//! other stage makes a general outline.
 
 use super::boundary::Side;
 use super::frame::Frame;
@@ -13,6 +14,9 @@ use crate::site::{EdgeKind, EdgeShape, Level, Point, Site, Stage};
 
 /// Stages that differ by less count as the same, metres.
 const SAME_STAGE_M: f64 = 1e-9;
+
+/// Slopes that differ by less count as the same: a millimetre a kilometre.
+const SAME_SLOPE: f64 = 1e-6;
 
 /// Sets the stages of all pieces of an outline, whose sides are given in
 /// canonical order; none where no closed form takes them.
@@ -25,7 +29,28 @@ pub(super) fn set(site: &Site, sides: &[&Side], mut outline: Outline) -> Option<
             piece.stage_slope = slope;
         }
     }
-    Some(outline)
+    let mut sides = outline.sides.iter_mut();
+    sides.all(|side| fall_alike(side)).then_some(outline)
+}
+
+/// Whether the rivers of one side share one slope, as the closed form needs;
+/// they are then given that of the first.
+fn fall_alike(side: &mut [Piece]) -> bool {
+    let Some((first, others)) = side.split_first_mut() else {
+        return true;
+    };
+    for piece in others {
+        let turn = piece.stage_slope - first.stage_slope;
+        if turn.abs() > SAME_SLOPE {
+            return false;
+        }
+        if turn != 0.0 {
+            // The pieces meet at the start of the later one.
+            piece.stage_m += turn * piece.along.start;
+            piece.stage_slope = first.stage_slope;
+        }
+    }
+    true
 }
 
 /// Stage at position 0 and slope of one piece.

@@ -38,6 +38,7 @@ impl Outline {
             ", lengths and angles stretched to isotropy"
         };
         let text = match self.shape {
+            Shape::CloggedHalfPlane { .. } => format!("half-plane beside {sides}"),
             Shape::Axes { x, y } => match (width(x), width(y)) {
                 (None, None) if kinds.is_empty() => name.to_owned(),
                 (None, None) if kinds.len() == 1 => format!("{name} beside {sides}"),
@@ -64,28 +65,35 @@ impl Outline {
         };
         text + stretched
     }
-}
 
-impl Outline {
-    /// The sides with their kinds. One edge may bend round several sides; it
-    /// is named once.
+    /// The sides with what they do to the head. One edge may bend round
+    /// several sides; it is named once.
     fn sides_in_words(&self, site: &Site) -> Vec<String> {
         let mut sides: Vec<String> = Vec::new();
-        for (side, kind) in self.side_kinds().iter().enumerate() {
-            let condition = self.boundary.as_ref().and_then(|boundary| {
-                let side = boundary.sides.get(side)?;
-                Some(side.condition)
-            });
-            let kind = match condition {
-                Some(Condition::Clogged { .. }) => "clogged bank",
-                _ => kind_words(*kind),
-            };
-            let words = format!("{} ({kind})", self.side_name(site, side));
+        for (side, kind) in self.side_kinds().into_iter().enumerate() {
+            let condition = self.condition_words(side, kind);
+            let words = format!("{} ({condition})", self.side_name(site, side));
             if !sides.contains(&words) {
                 sides.push(words);
             }
         }
         sides
+    }
+
+    /// What a side of a kind does to the head.
+    fn condition_words(&self, side: usize, kind: Kind) -> &'static str {
+        let is_clogged = match &self.boundary {
+            Some(boundary) => boundary
+                .sides
+                .get(side)
+                .is_some_and(|side| matches!(side.condition, Condition::Clogged { .. })),
+            None => matches!(self.shape, Shape::CloggedHalfPlane { .. }),
+        };
+        match kind {
+            Kind::FixedHead if is_clogged => "clogged bank",
+            Kind::FixedHead => "fixed head",
+            Kind::NoFlow => "no flow",
+        }
     }
 }
 
@@ -94,12 +102,5 @@ fn width(axis: Axis) -> Option<String> {
     match axis {
         Axis::TwoEdges { width_m, .. } => Some(names::length(width_m)),
         Axis::Open | Axis::OneEdge(_) => None,
-    }
-}
-
-fn kind_words(kind: Kind) -> &'static str {
-    match kind {
-        Kind::FixedHead => "fixed head",
-        Kind::NoFlow => "no flow",
     }
 }

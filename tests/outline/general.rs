@@ -6,7 +6,8 @@ use std::f64::consts::{PI, TAU};
 use approx::assert_relative_eq;
 use geo::{Area, Validation};
 use mirrorwell::outline::{
-    Boundary, BoundaryChain, BoundarySide, Condition, Curve, Kind, Outline, find, find_unnamed,
+    Boundary, BoundaryChain, BoundarySide, Condition, Curve, Kind, Outline, Shape, find,
+    find_unnamed,
 };
 use mirrorwell::site::{Anisotropy, Extent, Length, Point, Site};
 use num_complex::Complex64;
@@ -15,7 +16,15 @@ use crate::plans::{With, only, site};
 
 /// The boundary of the only outline of a plan.
 fn boundary(plan: &Site) -> (Outline, Boundary) {
-    let outline = only(plan);
+    general(only(plan))
+}
+
+/// The boundary of the only outline of a plan, closed form or not.
+fn unnamed(plan: &Site) -> (Outline, Boundary) {
+    general(find_unnamed(plan).expect("an outline").remove(0))
+}
+
+fn general(outline: Outline) -> (Outline, Boundary) {
     assert_eq!(outline.shape.name(), "general outline");
     let boundary = outline.boundary.as_deref().cloned().expect("a boundary");
     check(&outline, &boundary);
@@ -484,6 +493,14 @@ fn falling_rivers_in_every_shape_become_general_boundaries() {
     let wedge = fall(&[(0.0, 0.0), (0.0, 500.0)]).barrier("dyke", &[(0.0, 0.0), (300.0, -50.0)]);
     let (_, wedge) = boundary(&wedge);
     assert_eq!(wedge.sides.len(), 3);
+    // Two rivers of one line that fall differently.
+    let bent = fall(&[(0.0, 0.0), (0.0, 500.0)]).falling_river(
+        "Rapids",
+        &[(0.0, 500.0), (0.0, 900.0)],
+        &[60.0, 57.0],
+    );
+    let (_, bent) = boundary(&bent);
+    assert_eq!(bent.sides.len(), 4);
     // One stage at all vertices keeps the name.
     let level = site(&[(50.0, 250.0)])
         .falling_river("Ostra", &[(0.0, 0.0), (0.0, 500.0)], &[61.0; 2])
@@ -498,7 +515,7 @@ fn a_clogged_bank_has_a_skin_of_conductivity_times_resistance() {
         .river("Ostra", &[(0.0, 0.0), (0.0, 1.0)])
         .clogged("Ostra", 2.0);
     plan.aquifer.thickness = Some(Length::from_si(20.0));
-    let (outline, clogged) = boundary(&plan);
+    let (outline, clogged) = unnamed(&plan);
     assert_eq!(clogged.sides.len(), 2);
     assert!(
         clogged
@@ -511,11 +528,6 @@ fn a_clogged_bank_has_a_skin_of_conductivity_times_resistance() {
         outline.words(&plan),
         "general outline within river Ostra (clogged bank)"
     );
-    // No resistance is no skin.
-    assert_eq!(
-        only(&plan.clone().clogged("Ostra", 0.0)).shape.name(),
-        "half-plane"
-    );
     // Where conductivity is K√r across the bank, ∂h/∂n = (h − stage)/(K√r c) in
     // the site. Stretched, n' = n r^(−1/4): a skin of K c r^(1/4). And
     // K c r^(−1/4) where K√r runs along the bank.
@@ -524,12 +536,45 @@ fn a_clogged_bank_has_a_skin_of_conductivity_times_resistance() {
             ratio: 16.0,
             azimuth_deg,
         });
-        let (_, clogged) = boundary(&plan);
+        let (_, clogged) = unnamed(&plan);
+        let Shape::CloggedHalfPlane { skin_m: in_name } = only(&plan).shape else {
+            panic!("not clogged");
+        };
         for side in &clogged.sides {
             let Condition::Clogged { skin_m } = side.condition else {
                 panic!("not clogged");
             };
             assert_relative_eq!(skin_m, 50.0 * 16.0_f64.powf(power), max_relative = 1e-12);
+            assert_relative_eq!(skin_m, in_name, max_relative = 1e-15);
+        }
+    }
+}
+
+#[test]
+fn clogged_banks_that_no_closed_form_covers_are_general() {
+    let ring = [
+        (0.0, 0.0),
+        (300.0, 0.0),
+        (300.0, 200.0),
+        (0.0, 200.0),
+        (0.0, 0.0),
+    ];
+    let beside = |well| site(&[well]).river("Ostra", &[(0.0, 0.0), (0.0, 1.0)]);
+    for plan in [
+        beside((50.0, 0.0)).barrier("granite", &[(100.0, 0.0), (100.0, 1.0)]),
+        beside((50.0, 0.0)).river("Lower Ostra", &[(0.0, -9.0), (0.0, 0.0)]),
+        beside((50.0, 50.0)).barrier("sill", &[(0.0, 0.0), (9.0, 0.0)]),
+        site(&[(50.0, 50.0)]).river("Ostra", &ring),
+        site(&[(50.0, 0.0)]).lake("Ostra", (0.0, 0.0), 20.0),
+        site(&[(5.0, 0.0)]).lake("Ostra", (0.0, 0.0), 20.0),
+    ] {
+        assert_ne!(only(&plan).shape.name(), "general outline");
+        let mut clogged = plan.clogged("Ostra", 2.0);
+        clogged.aquifer.thickness = Some(Length::from_si(20.0));
+        let (_, clogged) = boundary(&clogged);
+        for side in &clogged.sides {
+            let is_clogged = matches!(side.condition, Condition::Clogged { .. });
+            assert_eq!(is_clogged, side.edge == 0);
         }
     }
 }
@@ -550,7 +595,7 @@ fn the_flux_through_an_oblique_clogged_bank_is_the_same_stretched_or_not() {
         ratio,
         azimuth_deg: azimuth,
     });
-    let (outline, clogged) = boundary(&plan);
+    let (outline, clogged) = unnamed(&plan);
     let Condition::Clogged { skin_m } = clogged.sides[0].condition else {
         panic!("not clogged");
     };

@@ -61,6 +61,23 @@ fn recharge_over_an_area_without_end_or_without_a_river_is_refused() {
             "close the aquifer",
         ],
     );
+    let mut clogged = half_plane.clone().clogged("Ostra", 2.0);
+    clogged.aquifer.thickness = Some(Length::from_si(20.0));
+    says(
+        &clogged,
+        &["half-plane behind a clogged bank", "cannot drain"],
+    );
+    let corridor = site(&[(50.0, 50.0)])
+        .barrier("west", &[(0.0, 0.0), (0.0, 700.0)])
+        .barrier("east", &[(100.0, 0.0), (100.0, 700.0)]);
+    says(
+        &wet(corridor.clone()),
+        &["the strip around well PW-1", "cannot drain"],
+    );
+    says(
+        &wet(corridor.river("Ostra", &[(0.0, 0.0), (100.0, 0.0)])),
+        &["the half-strip around well PW-1", "cannot drain"],
+    );
     let line = [(0.0, 300.0), (0.0, 0.0), (100.0, -50.0), (100.0, -400.0)];
     let bent = wet(site(&[(200.0, 50.0)]).river("Ostra", &line));
     says(
