@@ -43,7 +43,7 @@ const GRADIENT_TOLERANCE: f64 = 0.0175;
 const NO_GRADIENT: f64 = 1e-6;
 
 /// The head before any pumping, in an outline's canonical frame.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub(super) struct AmbientHead {
     /// Head at the canonical origin, without the other parts.
     pub(super) level_m: f64,
@@ -159,16 +159,19 @@ pub(super) fn solve(
     notes: &mut Vec<String>,
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
-    let mut head = fixed_by_rivers(outline);
-    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
-    add_free_flow(&mut head, outline, stated);
-    match built {
-        Built::BySolver(solved) => head.solved = Some(solved),
+    let mut head = match built {
+        Built::BySolver(solved) => AmbientHead {
+            solved: Some(solved),
+            ..AmbientHead::default()
+        },
         Built::InClosedForm(recharge) => {
-            head.recharge = recharge;
             notes.extend(recharge.map(|recharge| recharge.note()));
+            let mut head = fixed_by_rivers(outline);
+            add_free_flow(&mut head, outline, stated);
+            AmbientHead { recharge, ..head }
         }
-    }
+    };
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     let Some(ambient) = &site.ambient else {
         return if has_river {
             Ok(head)
@@ -227,12 +230,7 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         .collect();
     let mut head = AmbientHead {
         level_m: rivers.first().map_or(0.0, |(_, piece)| piece.stage_m),
-        slope: Complex64::ZERO,
-        lake_radius_m: None,
-        per_radian_m: 0.0,
-        measured: Vec::new(),
-        solved: None,
-        recharge: None,
+        ..AmbientHead::default()
     };
     // A half-plane's rivers may fall along its side, x = 0, all alike; their
     // levels at y = 0 may differ.

@@ -70,9 +70,9 @@ impl WellField {
         let canonical = outline.frame.gradient_to_canonical(stated);
         let solved =
             solved::solve(site, &outline, &wells, canonical).map_err(|fault| vec![fault])?;
-        let green = match &solved {
+        let green: Arc<dyn Green> = match &solved {
             Some(solved) => solved.general.clone(),
-            None => steady::green_of(site, &outline).map_err(|fault| vec![fault])?,
+            None => steady::green_of(site, &outline).map_err(|fault| vec![fault])?.into(),
         };
         steady::note_radius(site, &outline, &mut notes);
         let hardest_edge = solved.as_ref().and_then(|solved| solved.hardest_edge(&outline));

@@ -1,7 +1,5 @@
 //! Whether a steady state exists, and what the plan must say where it does not.
 
-use std::sync::Arc;
-
 use num_complex::Complex64;
 
 use crate::green::{self, Green, GreenError};
@@ -13,7 +11,7 @@ const BALANCE: f64 = 1e-6;
 
 /// The Green's function of an outline in closed form in which a steady state
 /// exists.
-pub(super) fn green_of(site: &Site, outline: &Outline) -> Result<Arc<dyn Green>, Refusal> {
+pub(super) fn green_of(site: &Site, outline: &Outline) -> Result<Box<dyn Green>, Refusal> {
     let radius_m = site.aquifer.influence_radius.map(|radius| radius.si());
     let green = green::of(&outline.shape, radius_m).map_err(|error| refusal(error, outline))?;
     if is_closed(outline) {

@@ -22,7 +22,6 @@ pub use logarithm::ln_lanes;
 
 use std::f64::consts::FRAC_1_PI;
 use std::ops::Range;
-use std::sync::Arc;
 
 use num_complex::Complex64;
 use thiserror::Error;
@@ -125,12 +124,12 @@ pub enum GreenError {
 ///
 /// # Errors
 /// `NoSteadyState` where a radius is needed and missing; `TooManyImages`.
-pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Arc<dyn Green>, GreenError> {
+pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Green>, GreenError> {
     use Axis::{OneEdge, Open, TwoEdges};
     use Kind::{FixedHead, NoFlow};
     if influence::needs_radius(shape) {
         let radius = influence_radius_m.ok_or(GreenError::NoSteadyState)?;
-        return Ok(Arc::new(Influence::new(*shape, radius)?));
+        return Ok(Box::new(Influence::new(*shape, radius)?));
     }
     Ok(match *shape {
         Shape::Axes { x, y } => match (x, y) {
@@ -140,18 +139,18 @@ pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Arc<dyn Gree
                     width_m: height_m,
                     kinds: across,
                 },
-            ) => Arc::new(Rows::of_box(width_m, kinds, height_m, across)),
-            (TwoEdges { width_m, kinds }, y_axis) => Arc::new(Rows::new(width_m, kinds, y_axis)),
-            (OneEdge(FixedHead), OneEdge(FixedHead)) => Arc::new(Corner::TwoRivers),
-            (OneEdge(FixedHead), OneEdge(NoFlow)) => Arc::new(Corner::RiverThenBarrier),
-            (OneEdge(NoFlow), OneEdge(FixedHead)) => Arc::new(Corner::BarrierThenRiver),
-            (OneEdge(_), _) => Arc::new(Corner::River),
+            ) => Box::new(Rows::of_box(width_m, kinds, height_m, across)),
+            (TwoEdges { width_m, kinds }, y_axis) => Box::new(Rows::new(width_m, kinds, y_axis)),
+            (OneEdge(FixedHead), OneEdge(FixedHead)) => Box::new(Corner::TwoRivers),
+            (OneEdge(FixedHead), OneEdge(NoFlow)) => Box::new(Corner::RiverThenBarrier),
+            (OneEdge(NoFlow), OneEdge(FixedHead)) => Box::new(Corner::BarrierThenRiver),
+            (OneEdge(_), _) => Box::new(Corner::River),
             (Open, _) => return Err(GreenError::NoSteadyState),
         },
-        Shape::Wedge { angle_rad, kinds } => Arc::new(Wedge::new(angle_rad, kinds)),
-        Shape::CloggedHalfPlane { skin_m } => Arc::new(Clogged::new(skin_m)),
+        Shape::Wedge { angle_rad, kinds } => Box::new(Wedge::new(angle_rad, kinds)),
+        Shape::CloggedHalfPlane { skin_m } => Box::new(Clogged::new(skin_m)),
         Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
-            Arc::new(Disk::new(radius_m))
+            Box::new(Disk::new(radius_m))
         }
         Shape::General => return Err(GreenError::General),
     })
