@@ -10,8 +10,9 @@ impl Outline {
     /// That a steady state exists under the plan's recharge.
     ///
     /// # Errors
-    /// `RechargeWithoutEnd` over an unbounded area, `RechargeWithoutRiver` where
-    /// barriers alone close the aquifer.
+    /// `RechargeWithoutEnd` over an unbounded area, `RechargeInOpenOutline` over
+    /// that of a general outline, `RechargeWithoutRiver` where barriers alone
+    /// close the aquifer.
     pub(crate) fn check_drainage(&self, site: &Site) -> Result<(), OutlineError> {
         let metres_a_day = site.aquifer.recharge.si();
         if metres_a_day == 0.0 || self.drains() {
@@ -26,6 +27,8 @@ impl Outline {
         );
         Err(if self.is_closed() {
             OutlineError::RechargeWithoutRiver { metres_a_day, well }
+        } else if self.shape == Shape::General {
+            OutlineError::RechargeInOpenOutline { metres_a_day, well }
         } else {
             OutlineError::RechargeWithoutEnd {
                 metres_a_day,
@@ -35,7 +38,8 @@ impl Outline {
         })
     }
 
-    /// Whether a river lies within a bounded distance of every place.
+    /// Whether a river lies within a bounded distance of every place; of an
+    /// open general outline that is not known.
     fn drains(&self) -> bool {
         let is_drained = |axis: Axis| match axis {
             Axis::TwoEdges { kinds, .. } => kinds.contains(&Kind::FixedHead),

@@ -63,6 +63,16 @@ pub enum OutlineError {
         /// The shape's name.
         shape: &'static str,
     },
+    /// Recharge in a general outline that is open.
+    #[error(
+        "the general outline around {well} has a recharge of {metres_a_day} m/d, and it goes on without end"
+    )]
+    RechargeInOpenOutline {
+        /// The recharge.
+        metres_a_day: f64,
+        /// A well that stands in the aquifer.
+        well: Named,
+    },
     /// Recharge within barriers.
     #[error(
         "{well} stands in an aquifer that barriers close on all sides, with a recharge of {metres_a_day} m/d that cannot drain"
@@ -211,9 +221,9 @@ impl OutlineError {
         match self {
             Self::NoWell => Subject::Plan,
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
-            Self::RechargeWithoutEnd { .. } | Self::RechargeWithoutRiver { .. } => {
-                Subject::Aquifer(Some("recharge"))
-            }
+            Self::RechargeWithoutEnd { .. }
+            | Self::RechargeInOpenOutline { .. }
+            | Self::RechargeWithoutRiver { .. } => Subject::Aquifer(Some("recharge")),
             Self::NoThickness { .. } => Subject::Aquifer(None),
             Self::ParallelStages { river, .. } | Self::StageCount { river, .. } => {
                 with_key(&river.subject, "stage")
@@ -247,6 +257,11 @@ impl OutlineError {
                  without end"
                     .to_owned(),
             ),
+            Self::RechargeInOpenOutline { .. } => Some(
+                "the general method takes in recharge only where rivers and barriers close the \
+                 aquifer on all sides"
+                    .to_owned(),
+            ),
             Self::RechargeWithoutRiver { .. } => Some(
                 "with no river to take it up, the head would rise or fall without end".to_owned(),
             ),
@@ -278,6 +293,9 @@ impl OutlineError {
             Self::RechargeWithoutEnd { .. } => "close the aquifer with rivers and barriers on all \
                  sides, or make it a strip beside a river; or set `recharge` to 0, which leaves \
                  its water out"
+                .to_owned(),
+            Self::RechargeInOpenOutline { .. } => "close the aquifer with rivers and barriers on \
+                 all sides, or set `recharge` to 0, which leaves its water out"
                 .to_owned(),
             Self::RechargeWithoutRiver { .. } => {
                 "give the aquifer a river, or set `recharge` to 0, which leaves its water out"
@@ -321,9 +339,9 @@ impl OutlineError {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
             Self::ParallelStages { other, .. } => vec![label(other, "the other river")],
             Self::NoThickness { river, .. } => vec![label(river, "this river")],
-            Self::RechargeWithoutEnd { well, .. } | Self::RechargeWithoutRiver { well, .. } => {
-                vec![label(well, "stands in it")]
-            }
+            Self::RechargeWithoutEnd { well, .. }
+            | Self::RechargeInOpenOutline { well, .. }
+            | Self::RechargeWithoutRiver { well, .. } => vec![label(well, "stands in it")],
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
             }
