@@ -67,10 +67,6 @@ pub(super) struct Place {
     /// `outward` slope of a unit charge's term ln|a − c x| on its own side.
     pub bend: f64,
     pub condition: Condition,
-    /// Whether its residual counts as one in head: on head sides, and behind a
-    /// skin that is thin for its panel, where slope and head together are
-    /// divided by the skin's conductance.
-    pub counts_head: bool,
 }
 
 impl Place {
@@ -94,6 +90,17 @@ impl Place {
             self.u
         } else {
             1.0 - self.u
+        }
+    }
+
+    /// Whether its residual counts as one in head: on head sides, and behind a
+    /// skin that is thin for its panel, where slope and head together are
+    /// divided by the skin's conductance.
+    pub fn counts_head(&self) -> bool {
+        match self.condition {
+            Condition::Head => true,
+            Condition::Flux => false,
+            Condition::Clogged { skin_m } => self.conductance(skin_m) >= 1.0,
         }
     }
 
@@ -236,19 +243,6 @@ impl Panel {
             outward: Complex64::I * self.curve.derivative(u) * right,
             bend: right * (self.curve.c() / below).im,
             condition,
-            counts_head: self.counts_head(condition),
-        }
-    }
-
-    fn counts_head(&self, condition: Condition) -> bool {
-        match condition {
-            Condition::Head => true,
-            Condition::Flux => false,
-            Condition::Clogged { skin_m } => [-1.0, 0.0, 1.0].into_iter().any(|t| {
-                let stretch = self.curve.derivative(self.u(t)).norm() * self.u_slope(t);
-                // Infinite or undefined on the last panel of a half-line.
-                stretch >= skin_m || !stretch.is_finite()
-            }),
         }
     }
 }

@@ -7,7 +7,7 @@
 //! ∂e/∂n + e/skin is; a constant δ outweighs it where it is at most δ/skin, so
 //! it counts as head where the skin is thin for its panel and as slope elsewhere.
 //! Let φ be harmonic, zero on head sides, with slope ω(p) ≥ ε(p) on flux sides
-//! (on clogged sides slope and head together; zero where they count as head): then |e| ≤ δ + φ everywhere. φ is one more solution of
+//! (on clogged sides slope and head together): then |e| ≤ δ + φ everywhere. φ is one more solution of
 //! the same system; its own residual, δ′ in head and a share ε′ of ω in slope,
 //! obeys the same rule, so that
 //!
@@ -19,7 +19,7 @@
 
 use super::mesh::{Mesh, Place};
 use super::problem::{Posed, Problem};
-use super::region::Region;
+use super::region::{Condition, Region};
 use super::system::{Densities, System, asked_by};
 
 /// Residuals between two checks exceed the larger of both at most by this: a
@@ -245,15 +245,13 @@ fn measure(
 fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f64>) {
     let a_panel = system.mesh.rule.checks.len();
     let panels = checks.chunks(a_panel).zip(sums.chunks(a_panel));
+    let largest = |places: &[Place], sums: &[f64], counts_head: bool| {
+        let parts = places.iter().zip(sums);
+        let counted = parts.filter(|(place, _)| place.counts_head() == counts_head);
+        BETWEEN_CHECKS * counted.map(|(_, sum)| *sum).fold(0.0, f64::max)
+    };
     panels
-        .map(|(places, sums)| {
-            let largest = BETWEEN_CHECKS * sums.iter().copied().fold(0.0, f64::max);
-            if places.first().is_some_and(|place| place.counts_head) {
-                (largest, 0.0)
-            } else {
-                (0.0, largest)
-            }
-        })
+        .map(|(places, sums)| (largest(places, sums, true), largest(places, sums, false)))
         .unzip()
 }
 
@@ -261,10 +259,9 @@ fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f6
 fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]) -> f64 {
     let floor = SMALLEST_OMEGA * slopes.iter().copied().fold(0.0, f64::max);
     let omega: Vec<f64> = slopes.iter().map(|slope| slope.max(floor)).collect();
-    let asked = |_: usize, place: &Place| {
-        if place.counts_head {
-            0.0
-        } else {
+    let asked = |_: usize, place: &Place| match place.condition {
+        Condition::Head => 0.0,
+        Condition::Flux | Condition::Clogged { .. } => {
             omega.get(place.panel).copied().unwrap_or(floor)
         }
     };

@@ -213,7 +213,7 @@ fn row(place: &Place, value: f64, slope: f64) -> f64 {
 /// What one metre of head residual amounts to in a place's row, or one of slope.
 fn unit(place: &Place) -> f64 {
     match place.condition {
-        Condition::Clogged { skin_m } if place.counts_head => place.conductance(skin_m),
+        Condition::Clogged { skin_m } if place.counts_head() => place.conductance(skin_m),
         _ => 1.0,
     }
 }

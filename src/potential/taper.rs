@@ -17,6 +17,12 @@ use num_complex::Complex64;
 use super::curve::Curve;
 use super::mesh::Place;
 
+/// |ζ| beyond which L is summed as a series in 1/ζ.
+const FAR: f64 = 16.0;
+
+/// Terms of that series: 16⁻¹⁴ is below rounding.
+const TERMS: u32 = 14;
+
 /// A side's taper, times its height.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Taper {
@@ -54,7 +60,12 @@ impl Taper {
     }
 
     fn value_at(&self, zeta: Complex64) -> f64 {
-        let value = ((1.0 - zeta) * angle_log(zeta)).im;
+        let value = if zeta.norm_sqr() > FAR * FAR {
+            let small = zeta.inv();
+            ((small - 1.0) * series(small, 1)).im
+        } else {
+            ((1.0 - zeta) * angle_log(zeta)).im
+        };
         -self.height_m * FRAC_1_PI * value
     }
 
@@ -69,9 +80,21 @@ impl Taper {
     }
 
     fn derivative_at(&self, x: Complex64, zeta: Complex64) -> Complex64 {
-        let slope = (angle_log(zeta) - zeta.inv()) * FRAC_1_PI;
-        -Complex64::I * slope * self.curve.parameter_slope(x) * self.height_m
+        let slope = if zeta.norm_sqr() > FAR * FAR {
+            let small = zeta.inv();
+            small * small * series(small, 2)
+        } else {
+            angle_log(zeta) - zeta.inv()
+        };
+        -Complex64::I * FRAC_1_PI * slope * self.curve.parameter_slope(x) * self.height_m
     }
+}
+
+/// Σ zᵏ/(k + first), k ≥ 0, for |z| ≤ 1/FAR: L without cancellation far away,
+/// to 1e-16.
+fn series(z: Complex64, first: u32) -> Complex64 {
+    let terms = (0..TERMS).rev();
+    terms.fold(Complex64::ZERO, |sum, k| sum * z + f64::from(first + k).recip())
 }
 
 /// A place that rounding put just beyond the side counts as on it.
