@@ -108,9 +108,9 @@ fn refusal(error: GreenError, outline: &Outline) -> Refusal {
         ),
         GreenError::General => (
             Subject::Plan,
-            "no closed form fits the rivers and barriers around it".to_owned(),
-            "leave out edges far from the wells, or simplify the outline to a straight line, a \
-             strip, a wedge, a half-strip, a box or a single circle",
+            "such an outline is solved on its boundary, not by image wells".to_owned(),
+            "draw it with a river, or simplify it to a straight line, a strip, a wedge, a \
+             half-strip, a box or a single circle",
         ),
         GreenError::TooManyImages { .. } => (
             Subject::Aquifer(Some("influence_radius")),

@@ -103,8 +103,9 @@ pub enum GreenError {
     /// No edge fixes the head and no influence radius is given.
     #[error("no river fixes the head, so a steady cone of depression has no edge")]
     NoSteadyState,
-    /// The outline is a general one.
-    #[error("the outline is a general one, which is not solved yet")]
+    /// A general outline: its shape does not tell where its edges run;
+    /// [`General::new`] solves its boundary.
+    #[error("the outline is a general one, and its shape alone does not tell where its edges run")]
     General,
     /// The influence radius reaches over too many images.
     #[error("the influence radius reaches some {images:.0} image wells, more than {most:.0}")]
@@ -123,7 +124,8 @@ pub enum GreenError {
 /// of zero mean, right only for wells whose pumping and injection balance.
 ///
 /// # Errors
-/// `NoSteadyState` where a radius is needed and missing; `TooManyImages`.
+/// `NoSteadyState` where a radius is needed and missing; `TooManyImages`;
+/// `General` for a general outline, which [`General::new`] solves.
 pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Green>, GreenError> {
     use Axis::{OneEdge, Open, TwoEdges};
     use Kind::{FixedHead, NoFlow};

@@ -3,7 +3,7 @@
 //! Every side is the image of 0 ≤ s ≤ 1 under a Möbius map
 //! x(s) = (a s + b)/(c s + d). Harmonic functions stay harmonic under it, and
 //!
-//!     ln|x − y| = ln|s(x) − s(y)| + ln|a − c x| + (a term of y alone),
+//! > ln|x − y| = ln|s(x) − s(y)| + ln|a − c x| + (a term of y alone),
 //!
 //! so that the logarithmic potential of a straight piece serves half-lines and
 //! arcs as well: infinity is a place like any other, s = 1 or s = 0.

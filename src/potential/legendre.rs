@@ -1,7 +1,8 @@
 //! Logarithmic potentials of Legendre polynomials on the interval (−1, 1).
 //!
-//!     Qₙ(ζ) = ½ ∫ Pₙ(t)/(ζ − t) dt
-//!     ∫ Pₙ(t) ln(ζ − t) dt = 2 (Qₙ₊₁(ζ) − Qₙ₋₁(ζ))/(2n + 1),   n ≥ 1
+//! > Qₙ(ζ) = ½ ∫ Pₙ(t)/(ζ − t) dt
+//! >
+//! > ∫ Pₙ(t) ln(ζ − t) dt = 2 (Qₙ₊₁(ζ) − Qₙ₋₁(ζ))/(2n + 1),   n ≥ 1
 //!
 //! Qₙ falls as ρ⁻ⁿ with ρ = |ζ + √(ζ² − 1)|, so its recurrence is run upward
 //! where ρ < 1.25 (at most 1.25²ⁿ of the rounding is gained, two digits at

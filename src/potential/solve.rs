@@ -11,7 +11,7 @@
 //! the same system; its own residual, δ′ in head and a share ε′ of ω in slope,
 //! obeys the same rule, so that
 //!
-//!     |e| ≤ δ + (max φ̂ + δ′)/(1 − ε′).
+//! > |e| ≤ δ + (max φ̂ + δ′)/(1 − ε′).
 //!
 //! Residuals are measured between the nodes and beside the ends of each panel,
 //! where those of a polynomial collocation are largest; [`BETWEEN_CHECKS`]
@@ -142,7 +142,6 @@ impl Solution {
             }
             let next = Attempt::on(&region, &posed, finer, target_m);
             rounds += 1;
-            if std::env::var("DBG").is_ok() { let ex = next.measure.excess(aim_m); let w = ex.iter().enumerate().fold((0.0,0),|a,(i,e)| if *e>a.0 {(*e,i)} else {a}); let p=&next.system.mesh.panels[w.1]; eprintln!("N {} bound {:.2e} head {:.2e} slope {:.2e} worst side {} of {} power {} mid {} half {} excess {:.2e} n {} at {}", next.system.mesh.unknowns(), next.measure.bound_m, next.measure.heads_m.iter().copied().fold(0.0,f64::max), next.measure.slopes.iter().copied().fold(0.0,f64::max), p.side, region.sides().len(), p.power, p.middle, p.half, w.0, ex.iter().filter(|e| **e>1.0).count(), p.curve.at(p.u(0.0))); }
             if next.measure.bound_m <= best.measure.bound_m {
                 best = next;
                 latest = None;

@@ -3,7 +3,7 @@
 //! Where two sides of different head meet, the density would grow as 1/r.
 //! With L = ln(ζ/(ζ − 1)), ζ the parameter of the side that starts there,
 //!
-//!     −1/π · Im[(1 − ζ) L]
+//! > −1/π · Im[(1 − ζ) L]
 //!
 //! is 1 − s on that side (from above) and 1 − θ/π close to the corner, θ the
 //! angle from the side; its multiple by J π/α takes up a jump J across the
