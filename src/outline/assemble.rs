@@ -20,17 +20,19 @@ use super::join;
 use super::named::{centre_of_wells, number, place};
 use super::recognise::Context;
 use super::shape::{Kind, Piece, Shape};
+use super::slits;
 use crate::site::{EdgeShape, Point, Vector};
 
 /// The outline of a face between loops of pieces.
 ///
 /// # Errors
-/// Where a stage or a bank cannot be read, parallel rivers of different stage
+/// Where an edge has the aquifer on both its banks, a stage or a bank cannot be read, parallel rivers of different stage
 /// run to infinity, or the sides cross one another.
 pub(super) fn outline(
     context: Context<'_>,
     loops: &[Vec<Bit>],
 ) -> Result<Outline, Vec<OutlineError>> {
+    slits::check(context, loops)?;
     let frame = Frame {
         stretch: context.scene.stretch,
         origin: centre_of_wells(context),

@@ -105,6 +105,14 @@ pub enum OutlineError {
         /// Where, in words.
         place: String,
     },
+    /// An edge within the aquifer, which lies on both its banks.
+    #[error("{edge} has the aquifer of {well} on both its banks")]
+    BothBanks {
+        /// The edge.
+        edge: Named,
+        /// A well of the aquifer.
+        well: Named,
+    },
     /// A line that is a point, or a circle without a radius.
     #[error("{edge} has no length: all of it lies within 1 mm")]
     NoLength {
@@ -235,6 +243,7 @@ impl OutlineError {
             | Self::CrossesItself { edge, .. }
             | Self::Overlap { edge, .. }
             | Self::SidesCross { edge, .. }
+            | Self::BothBanks { edge, .. }
             | Self::NoClosedForm { edge, .. } => edge.subject.clone(),
             Self::OtherBank { neighbour, .. } | Self::AcrossAquifers { neighbour, .. } => {
                 neighbour.subject.clone()
@@ -268,6 +277,11 @@ impl OutlineError {
             Self::ParallelStages { .. } => Some(
                 "water would cross between them all the way to infinity, which the general method \
                  does not cover"
+                    .to_owned(),
+            ),
+            Self::BothBanks { .. } => Some(
+                "its line, with its free ends carried on straight, reaches into the aquifer without \
+                 parting it, and the general method takes only edges with the aquifer on one bank"
                     .to_owned(),
             ),
             _ => None,
@@ -306,6 +320,9 @@ impl OutlineError {
                 .to_owned(),
             Self::SidesCross { .. } => {
                 "redraw the edges there so that they clearly meet, or clearly stay apart".to_owned()
+            }
+            Self::BothBanks { .. } => {
+                "draw both its banks, as one closed line around its width, or remove it".to_owned()
             }
             Self::NoLength { .. } => "give it two vertices that lie apart, or remove it".to_owned(),
             Self::TooManyPieces { .. } => "simplify the lines to fewer vertices".to_owned(),
@@ -356,6 +373,7 @@ impl OutlineError {
                 label(second, "a well of the other"),
                 label(edge, "the edge between"),
             ],
+            Self::BothBanks { well, .. } => vec![label(well, "stands in the aquifer")],
             Self::NoClosedForm { well, others, .. } => {
                 let mut parts: Vec<_> = others
                     .iter()

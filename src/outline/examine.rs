@@ -43,7 +43,7 @@ pub(super) fn faults(context: Context<'_>, outline: &Outline) -> Result<(), Vec<
     let crossed = boundary
         .sides
         .iter()
-        .find_map(|side| Some((side, misplaced(outline, boundary, side, context)?)));
+        .find_map(|side| Some((side, misplaced(outline, side, context)?)));
     match crossed {
         None => Ok(()),
         Some((side, z)) => Err(vec![OutlineError::SidesCross {
@@ -74,12 +74,7 @@ fn place_in_words(context: Context<'_>, edge: usize, place: Point) -> String {
 }
 
 /// A place of a side that has not the aquifer to its left alone.
-fn misplaced(
-    outline: &Outline,
-    boundary: &Boundary,
-    side: &BoundarySide,
-    context: Context<'_>,
-) -> Option<Complex64> {
+fn misplaced(outline: &Outline, side: &BoundarySide, context: Context<'_>) -> Option<Complex64> {
     let along = side.curve.along();
     let extent_m = context.scene.extent_m;
     let (length, scale) = match side.curve {
@@ -96,43 +91,9 @@ fn misplaced(
         .find(|&(z, heading)| {
             let left = heading * Complex64::I * beside_m;
             let misses = !finder.inside.holds(z + left, 0.0);
-            misses || (finder.inside.holds(z - left, 0.0) && !has_twin(boundary, side, z, heading))
+            misses || finder.inside.holds(z - left, 0.0)
         })
         .map(|(z, _)| z)
-}
-
-/// Whether another side runs the other way at a place: both banks of an edge
-/// that has the aquifer on either side.
-fn has_twin(boundary: &Boundary, side: &BoundarySide, z: Complex64, heading: Complex64) -> bool {
-    let runs_against = |other: &&BoundarySide| {
-        let curve = &other.curve;
-        let along = curve.along();
-        let position = match *curve {
-            Curve::Segment { from, .. } | Curve::RayOut { from, .. } => {
-                (curve.heading(0.0).conj() * (z - from)).re
-            }
-            Curve::RayIn { to, .. } => (curve.heading(0.0).conj() * (z - to)).re,
-            Curve::Arc {
-                centre,
-                start_rad,
-                sweep_rad,
-                ..
-            } => ((z - centre).arg() - start_rad) * sweep_rad.signum(),
-        };
-        let position = match *curve {
-            Curve::Arc { .. } => position.rem_euclid(std::f64::consts::TAU),
-            _ => position,
-        };
-        let is_there = position >= along.start && position <= along.end;
-        is_there
-            && (curve.at(position) - z).norm() <= BESIDE_M
-            && (curve.heading(position) * heading.conj()).re < 0.0
-    };
-    let others = boundary
-        .sides
-        .iter()
-        .filter(|other| other.edge == side.edge);
-    others.into_iter().any(|other| runs_against(&other))
 }
 
 /// The edge of the side that is nearest to a place of the site.

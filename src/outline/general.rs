@@ -9,7 +9,7 @@ use super::shape::Kind;
 
 /// Sides of an aquifer in the canonical frame: stretched to isotropy, the
 /// origin at the middle of its wells, not turned. The aquifer lies to the LEFT
-/// of every side. An edge with the aquifer on both its banks makes two sides.
+/// of every side. No side has it on both its banks.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Boundary {
     /// All sides, those of one chain together and in order along it.

@@ -49,6 +49,7 @@ mod refuse;
 mod region;
 mod scene;
 mod shape;
+mod slits;
 mod stages;
 mod stroke;
 mod walk;

@@ -664,21 +664,24 @@ fn one_river_with_a_bend_parts_two_aquifers() {
 }
 
 #[test]
-fn a_dyke_between_lake_and_river_has_the_aquifer_on_both_sides() {
+fn a_dyke_between_lake_and_river_is_an_island_of_two_banks_once_it_has_a_width() {
     let plan = site(&[(60.0, 80.0)])
         .river("Ostra", &[(0.0, -500.0), (0.0, 500.0)])
-        .lake("Pond", (300.0, 0.0), 50.0)
-        .barrier("dyke", &[(0.0, 0.0), (250.0, 0.0)]);
-    let outline = only(&plan);
+        .lake("Pond", (300.0, 0.0), 50.0);
+    let around = [
+        (-10.0, -2.0),
+        (260.0, -2.0),
+        (260.0, 2.0),
+        (-10.0, 2.0),
+        (-10.0, -2.0),
+    ];
+    let outline = only(&plan.barrier("dyke", &around));
     let boundary = outline.boundary.as_deref().expect("a boundary");
-    // In along the river, out along the dyke, round the lake, back, on.
+    // In along the river, out along one bank, round the lake, back, on.
     let edges: Vec<usize> = boundary.sides.iter().map(|side| side.edge).collect();
     assert_eq!(edges, [0, 2, 1, 2, 0]);
-    let Curve::Arc { sweep_rad, .. } = boundary.sides[2].curve else {
-        panic!("no arc");
-    };
-    assert_eq!(sweep_rad, -TAU);
-    assert!(outline.holds(Point::new(100.0, 1e-3)) && outline.holds(Point::new(100.0, -1e-3)));
+    assert!(outline.holds(Point::new(100.0, 2.1)) && outline.holds(Point::new(100.0, -2.1)));
+    assert!(!outline.holds(Point::new(100.0, 1.9)));
 }
 
 #[test]

@@ -182,6 +182,36 @@ fn a_line_that_crosses_itself_is_refused_with_the_place() {
 }
 
 #[test]
+fn an_edge_with_the_aquifer_on_both_its_banks_is_refused_by_name() {
+    let ostra = site(&[(60.0, 80.0)]).river("Ostra", &[(0.0, -500.0), (0.0, 500.0)]);
+    let pond = ostra.lake("Pond", (300.0, 0.0), 50.0);
+    let dyke = pond.clone().barrier("dyke", &[(0.0, 0.0), (250.0, 0.0)]);
+    says(
+        &dyke,
+        &[
+            "barrier dyke has the aquifer of well PW-1 on both its banks",
+            "without parting it",
+            "draw both its banks",
+        ],
+    );
+    let refused = refused(&dyke);
+    assert_eq!(refused[0].subject, Subject::Edge(2, None));
+    assert_eq!(refused[0].related[0].0, Subject::Well(0, None));
+    // A canal does no better, nor a line that a free end carries on.
+    let canal = pond.clone().river("canal", &[(0.0, 0.0), (250.0, 0.0)]);
+    says(&canal, &["river canal has the aquifer of well PW-1"]);
+    let stump = pond.clone().barrier("stump", &[(100.0, 5.0), (200.0, 5.0)]);
+    says(
+        &stump,
+        &["barrier stump has the aquifer", "carried on straight"],
+    );
+    // From a lake to infinity.
+    let lake = site(&[(60.0, 80.0)]).lake("Pond", (300.0, 0.0), 50.0);
+    let spur = lake.barrier("spur", &[(300.0, 10.0), (320.0, 90.0)]);
+    says(&spur, &["barrier spur has the aquifer"]);
+}
+
+#[test]
 fn edges_on_one_another_are_refused_with_both_names() {
     let plan = site(&[(50.0, 10.0)])
         .river("Ostra", &[(0.0, 0.0), (100.0, 0.0)])
