@@ -65,6 +65,9 @@ impl WellField {
         let refusals = |faults: Vec<AmbientError>| -> Vec<Refusal> {
             faults.into_iter().map(Refusal::from).collect()
         };
+        outline
+            .check_drainage(site)
+            .map_err(|fault| vec![fault.into()])?;
         let wells = wells_of(site, &outline);
         let stated = ambient::stated_gradient(site).map_err(refusals)?;
         let canonical = outline.frame.gradient_to_canonical(stated);
@@ -82,9 +85,7 @@ impl WellField {
             .and_then(|solved| solved.hardest_edge(&outline));
         let parts = match solved {
             Some(solved) => ambient::Built::BySolver(solved),
-            None => ambient::Built::InClosedForm(
-                recharge::of(site, &outline).map_err(|fault| vec![fault.into()])?,
-            ),
+            None => ambient::Built::InClosedForm(recharge::of(site, &outline)),
         };
         let ambient =
             ambient::solve(site, &outline, green.as_ref(), parts, &mut notes).map_err(refusals)?;

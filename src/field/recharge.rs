@@ -35,7 +35,7 @@ use std::ops::Range;
 
 use num_complex::Complex64;
 
-use crate::outline::{Axis, Kind, Outline, OutlineError, Shape};
+use crate::outline::{Axis, Kind, Outline, Shape};
 use crate::site::Site;
 use chi::chi;
 
@@ -140,20 +140,16 @@ struct Wave {
 
 /// The rise by a site's recharge in closed form; none without recharge, and
 /// none in a general outline.
-///
-/// # Errors
-/// Where the outline cannot drain it.
-pub(super) fn of(site: &Site, outline: &Outline) -> Result<Option<Recharge>, OutlineError> {
+pub(super) fn of(site: &Site, outline: &Outline) -> Option<Recharge> {
     let flux_m_d = site.aquifer.recharge.si();
     if flux_m_d == 0.0 {
-        return Ok(None);
+        return None;
     }
-    outline.check_drainage(site)?;
-    Ok(Mound::of(&outline.shape).map(|mound| Recharge {
+    Mound::of(&outline.shape).map(|mound| Recharge {
         flux_m_d,
         transmissivity_m2_d: site.aquifer.transmissivity.si(),
         mound,
-    }))
+    })
 }
 
 impl Recharge {

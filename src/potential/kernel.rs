@@ -173,7 +173,13 @@ impl Source {
         if place.side != self.panel.side {
             let u = place.parameter_on(&self.panel.curve, self.panel.corner);
             let mut effect = Effect::NONE;
-            self.effect(rule, place.x, u, &mut effect);
+            if place.corner.map(|(corner, _)| corner) == Some(self.panel.corner) {
+                // Close to a common corner x − node has no digits left; u has.
+                let root = self.panel.root(u);
+                self.as_polynomials(rule, place.x, u, root, &mut effect);
+            } else {
+                self.effect(rule, place.x, u, &mut effect);
+            }
             out.values = effect.values;
             for (slope, derivative) in out.slopes.iter_mut().zip(&effect.slopes) {
                 *slope = (derivative * place.outward).re;

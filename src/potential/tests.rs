@@ -270,6 +270,28 @@ fn a_well_a_millimetre_from_two_edges_is_solved_within_the_bound() {
     }
 }
 
+/// Where a river meets a barrier at 20° the panels end far below the rounding
+/// of coordinates: only offsets from the corner tell their nodes apart.
+#[test]
+fn a_sharp_corner_far_from_the_origin_is_solved_like_one_at_the_origin() {
+    let solved = |shift: Complex64| {
+        let corners = [
+            (0.0, 0.0),
+            (1.0, 0.0),
+            (20f64.to_radians().cos(), 20f64.to_radians().sin()),
+        ];
+        let moved = corners.map(|(x, y)| (x + shift.re, y + shift.im));
+        let solution = green_of(polygon(&moved, &[D, N, N]), c(0.7, 0.1) + shift);
+        let value = solution.value(&solution.sum(&[1.0]), c(0.3, 0.05) + shift);
+        (value, solution.bound_m())
+    };
+    let (here, there) = (solved(c(0.0, 0.0)), solved(c(4000.0, 550.0)));
+    assert!(here.1 <= 2e-8 && there.1 <= 2e-8, "{here:?} {there:?}");
+    // A coordinate of 4000 is rounded to 5e-13.
+    let allowed = here.1 + there.1 + 1e-11;
+    assert!((here.0 - there.0).abs() <= allowed, "{here:?} {there:?}");
+}
+
 #[test]
 fn values_in_batches_are_those_of_single_places() {
     let well = c(1.5, 0.5);
