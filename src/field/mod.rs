@@ -72,18 +72,22 @@ impl WellField {
             solved::solve(site, &outline, &wells, canonical).map_err(|fault| vec![fault])?;
         let green: Arc<dyn Green> = match &solved {
             Some(solved) => solved.general.clone(),
-            None => steady::green_of(site, &outline).map_err(|fault| vec![fault])?.into(),
+            None => steady::green_of(site, &outline)
+                .map_err(|fault| vec![fault])?
+                .into(),
         };
         steady::note_radius(site, &outline, &mut notes);
-        let hardest_edge = solved.as_ref().and_then(|solved| solved.hardest_edge(&outline));
+        let hardest_edge = solved
+            .as_ref()
+            .and_then(|solved| solved.hardest_edge(&outline));
         let parts = match solved {
             Some(solved) => ambient::Built::BySolver(solved),
             None => ambient::Built::InClosedForm(
                 recharge::of(site, &outline).map_err(|fault| vec![fault.into()])?,
             ),
         };
-        let ambient = ambient::solve(site, &outline, green.as_ref(), parts, &mut notes)
-            .map_err(refusals)?;
+        let ambient =
+            ambient::solve(site, &outline, green.as_ref(), parts, &mut notes).map_err(refusals)?;
         let datum = steady::datum(site, &outline, &mut notes);
         let has_river = outline.side_kinds().contains(&Kind::FixedHead);
         let mut field = Self {
@@ -121,7 +125,9 @@ impl WellField {
         self.evaluate(points, |places, drawdowns_m| {
             let (green, shape) = (self.green.as_ref(), &self.outline.shape);
             let before_m = self.ambient.heads_m(places, green, shape).into_iter();
-            let heads = before_m.zip(drawdowns_m).map(|(before, drawdown)| before - drawdown);
+            let heads = before_m
+                .zip(drawdowns_m)
+                .map(|(before, drawdown)| before - drawdown);
             heads.collect()
         })
     }

@@ -94,7 +94,9 @@ impl Taper {
 /// to 1e-16.
 fn series(z: Complex64, first: u32) -> Complex64 {
     let terms = (0..TERMS).rev();
-    terms.fold(Complex64::ZERO, |sum, k| sum * z + f64::from(first + k).recip())
+    terms.fold(Complex64::ZERO, |sum, k| {
+        sum * z + f64::from(first + k).recip()
+    })
 }
 
 /// A place that rounding put just beyond the side counts as on it.
