@@ -1,5 +1,6 @@
-//! Aquifers without a closed form: what the general solver is asked for, and
-//! which uniform flow their edges leave free.
+//! Aquifers without a closed form: what the general solver is asked for.
+
+mod far;
 
 use std::sync::Arc;
 
@@ -7,15 +8,12 @@ use num_complex::Complex64;
 
 use super::FieldWell;
 use crate::green::{Before, General, WeightedPole};
-use crate::outline::{Boundary, BoundarySide, Condition, Curve, Kind, Outline};
+use crate::outline::{Kind, Outline};
 use crate::site::{Refusal, Site, Subject};
 
 /// The solver's share of the head error that the plan allows; the rest is for
 /// rounding.
 const SHARE_OF_ERROR: f64 = 0.9;
-
-/// Half-lines count as parallel or square to within this angle, radians.
-const PARALLEL_RAD: f64 = 1e-9;
 
 /// The solution of an aquifer without a closed form.
 #[derive(Clone)]
@@ -69,65 +67,20 @@ pub(super) fn solve(
         strength_m: well.pumping_m3_d / transmissivity_m2_d,
     };
     let weighted: Vec<_> = wells.iter().map(weighted).collect();
-    let far_flow = free_flow(boundary, stated);
+    let source_per_m = site.aquifer.recharge.si() / transmissivity_m2_d;
+    let far = far::of(boundary, stated, source_per_m)
+        .map_err(|error| error.refusal(site, outline, boundary))?;
     let before = Before {
-        flow: far_flow.unwrap_or_default(),
-        source_per_m: site.aquifer.recharge.si() / transmissivity_m2_d,
+        flow: far.flow,
+        source_per_m,
+        source_axis: far.drained_across,
     };
     let target_m = SHARE_OF_ERROR * site.head_tolerance.si();
     let general = General::new(boundary, &weighted, before, target_m);
     Ok(Some(Solved {
         general: Arc::new(general),
-        far_flow,
+        far_flow: far.is_free.then_some(far.flow),
     }))
-}
-
-/// The part of a stated uniform flow that can go on far away; none where the
-/// edges leave no flow free. It is square to endless rivers and runs along
-/// endless barriers.
-fn free_flow(boundary: &Boundary, stated: Complex64) -> Option<Complex64> {
-    if boundary.is_bounded() {
-        return None;
-    }
-    let rays: Vec<(Complex64, Kind)> = boundary.sides.iter().filter_map(ray).collect();
-    let axis_of = |(direction, kind): &(Complex64, Kind)| match kind {
-        Kind::FixedHead => direction * Complex64::I,
-        Kind::NoFlow => *direction,
-    };
-    let Some(axis) = rays.first().map(axis_of) else {
-        return Some(stated);
-    };
-    let is_across = |ray| (axis.conj() * axis_of(ray)).im.abs() > PARALLEL_RAD;
-    if rays.iter().any(is_across) || is_between_rivers(&rays) {
-        return None;
-    }
-    Some(axis * (axis.conj() * stated).re)
-}
-
-/// Direction toward infinity and kind of a side that goes there.
-fn ray(side: &BoundarySide) -> Option<(Complex64, Kind)> {
-    let direction = match side.curve {
-        Curve::RayIn { from_direction, .. } => from_direction,
-        Curve::RayOut { direction, .. } => direction,
-        Curve::Segment { .. } | Curve::Arc { .. } => return None,
-    };
-    let kind = match side.condition {
-        Condition::NoFlow => Kind::NoFlow,
-        Condition::Head | Condition::Clogged { .. } => Kind::FixedHead,
-    };
-    Some((direction, kind))
-}
-
-/// Whether two rivers go to infinity side by side: their stages alone fix the
-/// flow between them.
-fn is_between_rivers(rays: &[(Complex64, Kind)]) -> bool {
-    rays.iter().enumerate().any(|(index, (one, kind))| {
-        let others = rays.iter().skip(index + 1);
-        *kind == Kind::FixedHead
-            && others
-                .filter(|(_, other)| *other == Kind::FixedHead)
-                .any(|(other, _)| (other - one).norm() < PARALLEL_RAD)
-    })
 }
 
 fn without_river(outline: &Outline) -> Refusal {

@@ -61,7 +61,7 @@ fn boundary(
     }
     // Open chains all belong to one loop; sorting keeps their order.
     chains.sort_by_key(|(closed, _)| *closed);
-    infinity::align(context, frame, &mut chains)?;
+    infinity::align(context, &mut chains);
     let mut boundary = Boundary {
         sides: Vec::new(),
         chains: Vec::new(),

@@ -10,9 +10,9 @@ impl Outline {
     /// That a steady state exists under the plan's recharge.
     ///
     /// # Errors
-    /// `RechargeWithoutEnd` over an unbounded area, `RechargeInOpenOutline` over
-    /// that of a general outline, `RechargeWithoutRiver` where barriers alone
-    /// close the aquifer.
+    /// `RechargeWithoutEnd` over an unbounded area, `RechargeWithoutRiver` where
+    /// barriers alone close the aquifer. Of an open general outline the solver
+    /// knows more.
     pub(crate) fn check_drainage(&self, site: &Site) -> Result<(), OutlineError> {
         let metres_a_day = site.aquifer.recharge.si();
         if metres_a_day == 0.0 || self.drains() {
@@ -27,8 +27,6 @@ impl Outline {
         );
         Err(if self.is_closed() {
             OutlineError::RechargeWithoutRiver { metres_a_day, well }
-        } else if self.shape == Shape::General {
-            OutlineError::RechargeInOpenOutline { metres_a_day, well }
         } else {
             OutlineError::RechargeWithoutEnd {
                 metres_a_day,
@@ -38,8 +36,8 @@ impl Outline {
         })
     }
 
-    /// Whether a river lies within a bounded distance of every place; of an
-    /// open general outline that is not known.
+    /// Whether a river lies within a bounded distance of every place, as it may
+    /// in an open general outline.
     fn drains(&self) -> bool {
         let is_drained = |axis: Axis| match axis {
             Axis::TwoEdges { kinds, .. } => kinds.contains(&Kind::FixedHead),
@@ -48,7 +46,7 @@ impl Outline {
         match self.shape {
             Shape::Axes { x, y } => is_drained(x) || is_drained(y),
             Shape::Disk { .. } => true,
-            Shape::General => self.is_closed() && self.side_kinds().contains(&Kind::FixedHead),
+            Shape::General => !self.is_closed() || self.side_kinds().contains(&Kind::FixedHead),
             Shape::Wedge { .. } | Shape::CloggedHalfPlane { .. } | Shape::DiskExterior { .. } => {
                 false
             }

@@ -63,16 +63,6 @@ pub enum OutlineError {
         /// The shape's name.
         shape: &'static str,
     },
-    /// Recharge in a general outline that is open.
-    #[error(
-        "the general outline around {well} has a recharge of {metres_a_day} m/d, and it goes on without end"
-    )]
-    RechargeInOpenOutline {
-        /// The recharge.
-        metres_a_day: f64,
-        /// A well that stands in the aquifer.
-        well: Named,
-    },
     /// Recharge within barriers.
     #[error(
         "{well} stands in an aquifer that barriers close on all sides, with a recharge of {metres_a_day} m/d that cannot drain"
@@ -82,20 +72,6 @@ pub enum OutlineError {
         metres_a_day: f64,
         /// A well that stands in the aquifer.
         well: Named,
-    },
-    /// Two parallel rivers of different stage that go on without end.
-    #[error(
-        "{river} and {other} run to infinity side by side, {apart} apart, with stages of {} m and {} m", .stages_m[0], .stages_m[1]
-    )]
-    ParallelStages {
-        /// The later river.
-        river: Named,
-        /// The earlier river.
-        other: Named,
-        /// How far apart, in words.
-        apart: String,
-        /// The stages of the two far away, metres.
-        stages_m: [f64; 2],
     },
     /// Sides that cross where places were joined.
     #[error("{edge} crosses or touches another side of its aquifer {place}")]
@@ -229,13 +205,11 @@ impl OutlineError {
         match self {
             Self::NoWell => Subject::Plan,
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
-            Self::RechargeWithoutEnd { .. }
-            | Self::RechargeInOpenOutline { .. }
-            | Self::RechargeWithoutRiver { .. } => Subject::Aquifer(Some("recharge")),
-            Self::NoThickness { .. } => Subject::Aquifer(None),
-            Self::ParallelStages { river, .. } | Self::StageCount { river, .. } => {
-                with_key(&river.subject, "stage")
+            Self::RechargeWithoutEnd { .. } | Self::RechargeWithoutRiver { .. } => {
+                Subject::Aquifer(Some("recharge"))
             }
+            Self::NoThickness { .. } => Subject::Aquifer(None),
+            Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
             Self::WildCoordinate { part } | Self::OnEdge { part, .. } => part.subject.clone(),
             Self::RimCrossesEdge { well, .. } => well.subject.clone(),
             Self::NoLength { edge }
@@ -266,18 +240,8 @@ impl OutlineError {
                  without end"
                     .to_owned(),
             ),
-            Self::RechargeInOpenOutline { .. } => Some(
-                "the general method takes in recharge only where rivers and barriers close the \
-                 aquifer on all sides"
-                    .to_owned(),
-            ),
             Self::RechargeWithoutRiver { .. } => Some(
                 "with no river to take it up, the head would rise or fall without end".to_owned(),
-            ),
-            Self::ParallelStages { .. } => Some(
-                "water would cross between them all the way to infinity, which the general method \
-                 does not cover"
-                    .to_owned(),
             ),
             Self::BothBanks { .. } => Some(
                 "its line, with its free ends carried on straight, reaches into the aquifer without \
@@ -308,16 +272,10 @@ impl OutlineError {
                  sides, or make it a strip beside a river; or set `recharge` to 0, which leaves \
                  its water out"
                 .to_owned(),
-            Self::RechargeInOpenOutline { .. } => "close the aquifer with rivers and barriers on \
-                 all sides, or set `recharge` to 0, which leaves its water out"
-                .to_owned(),
             Self::RechargeWithoutRiver { .. } => {
                 "give the aquifer a river, or set `recharge` to 0, which leaves its water out"
                     .to_owned()
             }
-            Self::ParallelStages { .. } => "close the valley between them with a barrier or a \
-                 river across it, or give both one stage"
-                .to_owned(),
             Self::SidesCross { .. } => {
                 "redraw the edges there so that they clearly meet, or clearly stay apart".to_owned()
             }
@@ -354,11 +312,10 @@ impl OutlineError {
         let label = |part: &Named, text: &str| (part.subject.clone(), text.to_owned());
         match self {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
-            Self::ParallelStages { other, .. } => vec![label(other, "the other river")],
             Self::NoThickness { river, .. } => vec![label(river, "this river")],
-            Self::RechargeWithoutEnd { well, .. }
-            | Self::RechargeInOpenOutline { well, .. }
-            | Self::RechargeWithoutRiver { well, .. } => vec![label(well, "stands in it")],
+            Self::RechargeWithoutEnd { well, .. } | Self::RechargeWithoutRiver { well, .. } => {
+                vec![label(well, "stands in it")]
+            }
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
             }

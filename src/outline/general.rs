@@ -198,6 +198,55 @@ impl Boundary {
     }
 }
 
+/// Where the aquifer goes on to infinity: between a half-line that goes out and
+/// the next that comes in.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Opening {
+    /// The side that goes out.
+    pub out: usize,
+    /// The side that comes in next, counterclockwise.
+    pub back: usize,
+    /// Their distance where they run side by side; none where they open by
+    /// an angle.
+    pub width_m: Option<f64>,
+}
+
+/// Half-lines whose directions differ by less run side by side; those that
+/// count as parallel were made so.
+const PARALLEL: f64 = 1e-9;
+
+impl Boundary {
+    /// Where the aquifer goes on to infinity, in order around it.
+    pub fn openings(&self) -> Vec<Opening> {
+        let open: Vec<_> = self.open_chains().collect();
+        let next = open.iter().cycle().skip(1);
+        open.iter()
+            .zip(next)
+            .filter_map(|(chain, next)| self.opening(chain.sides.clone().last()?, next.sides.start))
+            .collect()
+    }
+
+    fn opening(&self, out: usize, back: usize) -> Option<Opening> {
+        let (one, other) = (self.sides.get(out)?.curve, self.sides.get(back)?.curve);
+        let (
+            Curve::RayOut { from, direction },
+            Curve::RayIn {
+                to, from_direction, ..
+            },
+        ) = (one, other)
+        else {
+            return None;
+        };
+        let width_m = (direction.conj() * (to - from)).im;
+        let is_parallel = (direction - from_direction).norm() < PARALLEL && width_m > 0.0;
+        Some(Opening {
+            out,
+            back,
+            width_m: is_parallel.then_some(width_m),
+        })
+    }
+}
+
 /// Twice the area that closed sides run around, negative where clockwise.
 fn doubled_area(sides: &[BoundarySide]) -> f64 {
     let Some(origin) = sides.first().and_then(|side| side.curve.from()) else {

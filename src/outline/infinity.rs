@@ -7,29 +7,15 @@
 
 use num_complex::Complex64;
 
-use super::error::OutlineError;
-use super::frame::Frame;
 use super::general::{BoundarySide, Curve};
-use super::names;
 use super::recognise::Context;
-use super::shape::Kind;
 use super::stroke::TOUCH_M;
-
-/// Stages that differ by less count as the same, metres.
-const SAME_STAGE_M: f64 = 1e-9;
 
 /// A chain: whether it is closed, and its sides.
 type Chain = (bool, Vec<BoundarySide>);
 
 /// Makes half-lines parallel that count as parallel.
-///
-/// # Errors
-/// `ParallelStages` where both are rivers and their stages differ.
-pub(super) fn align(
-    context: Context<'_>,
-    frame: &Frame,
-    chains: &mut [Chain],
-) -> Result<(), Box<OutlineError>> {
+pub(super) fn align(context: Context<'_>, chains: &mut [Chain]) {
     let open = chains.iter().take_while(|(closed, _)| !closed).count();
     let tolerance_rad = context.scene.angle_tolerance_rad();
     for number in 0..open {
@@ -42,7 +28,6 @@ pub(super) fn align(
         let Some(direction) = common(out, back, tolerance_rad) else {
             continue;
         };
-        check_stages(context, frame, out, back)?;
         if let Some(Curve::RayOut { direction: old, .. }) = last_curve(chains, number) {
             *old = direction;
         }
@@ -50,7 +35,6 @@ pub(super) fn align(
             *from_direction = direction;
         }
     }
-    Ok(())
 }
 
 fn last_curve(chains: &mut [Chain], chain: usize) -> Option<&mut Curve> {
@@ -86,35 +70,4 @@ fn common(out: &BoundarySide, back: &BoundarySide, tolerance_rad: f64) -> Option
 /// same one it does not.
 pub(super) fn lies_left(direction: Complex64, from: Complex64, place: Complex64) -> bool {
     (direction.conj() * (place - from)).im > TOUCH_M
-}
-
-/// That two parallel rivers have one stage far away.
-fn check_stages(
-    context: Context<'_>,
-    frame: &Frame,
-    out: &BoundarySide,
-    back: &BoundarySide,
-) -> Result<(), Box<OutlineError>> {
-    let both_rivers = [out, back]
-        .iter()
-        .all(|side| side.condition.kind() == Kind::FixedHead);
-    let stages_m = [out.stage_m[1], back.stage_m[0]];
-    if !both_rivers || (stages_m[0] - stages_m[1]).abs() <= SAME_STAGE_M {
-        return Ok(());
-    }
-    let apart_m = out.curve.from().zip(back.curve.to()).map_or(0.0, |ends| {
-        let direction = out.curve.heading(0.0);
-        (direction.conj() * (ends.1 - ends.0)).im
-    });
-    let across = frame.direction_to_site(out.curve.heading(0.0) * Complex64::I * apart_m);
-    Err(Box::new(OutlineError::ParallelStages {
-        river: names::edge(context.site, out.edge.max(back.edge)),
-        other: names::edge(context.site, out.edge.min(back.edge)),
-        apart: names::length(across.norm()),
-        stages_m: if out.edge > back.edge {
-            stages_m
-        } else {
-            [stages_m[1], stages_m[0]]
-        },
-    }))
 }

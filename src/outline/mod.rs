@@ -58,7 +58,7 @@ mod words;
 
 pub use error::{Named, OutlineError};
 pub use frame::{Frame, Stretch};
-pub use general::{Boundary, BoundaryChain, BoundarySide, Condition, Curve};
+pub use general::{Boundary, BoundaryChain, BoundarySide, Condition, Curve, Opening};
 pub use shape::{Axis, Kind, Piece, Shape, argument_in_wedge};
 
 use std::sync::Arc;

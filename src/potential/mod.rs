@@ -4,6 +4,7 @@
 mod batch;
 mod curve;
 mod flux;
+mod gap;
 mod kernel;
 mod layer;
 mod legendre;

@@ -2,12 +2,14 @@
 //!
 //! A problem's solution is `known(x)` + C + the potential of the panels. Known
 //! are the logarithms of its poles, a uniform flow, the bowl of an areal source
-//! and the tapers of its jumps; the panels make up what the sides still ask for.
+//! and the tapers and gaps of its jumps; the panels make up what the sides still
+//! ask for.
 
 use std::ops::Range;
 
 use num_complex::Complex64;
 
+use super::gap::Gap;
 use super::kernel::of_pole;
 use super::mesh::Place;
 use super::region::{Condition, Region};
@@ -22,11 +24,14 @@ pub struct Problem {
     /// (constant on half-lines and arcs); empty where all are zero. On a flux
     /// side it is not read.
     pub heads_m: Vec<[f64; 2]>,
-    /// ∂u/∂x + i ∂u/∂y of a flow that is uniform far away. It must run along
-    /// flux half-lines and square to the others.
+    /// ∂u/∂x + i ∂u/∂y of a flow that is uniform far away. Together with the
+    /// bowl of an areal source it must not cross flux half-lines nor rise along
+    /// the others.
     pub flow: Complex64,
     /// −∇²u, 1/m: recharge over transmissivity.
     pub source_per_m: f64,
+    /// Where half-lines drain an areal source: the unit number across them.
+    pub source_axis: Option<Complex64>,
     /// What its error counts in the bound of the whole; 1 where it is one of
     /// the parts of a sum, 0 where it is not to steer the refinement.
     pub weight: f64,
@@ -37,28 +42,88 @@ pub struct Problem {
 pub(super) struct Posed {
     problem: Problem,
     tapers: Vec<Taper>,
+    gaps: Vec<Gap>,
 }
 
 impl Posed {
     pub fn new(region: &Region, problem: Problem) -> Self {
-        let mut tapers = Vec::new();
-        for (index, side) in region.sides().iter().enumerate() {
-            let Some(joint) = region.joint(index) else {
-                continue;
-            };
-            let jump = if side.goes_out() {
-                far_jump(region, &problem, index, joint.next)
-            } else {
-                jump(region, &problem, index, joint.next)
-            };
-            if let (Some(jump_m), Some(next)) = (jump, region.sides().get(joint.next))
-                && jump_m != 0.0
-            {
-                let taper = Taper::new(joint.next, next.curve, index, jump_m, joint.angle_rad);
-                tapers.push(taper);
-            }
+        let mut posed = Self {
+            problem,
+            tapers: Vec::new(),
+            gaps: Vec::new(),
+        };
+        posed.gaps = (0..region.sides().len())
+            .filter_map(|side| posed.gap(region, side))
+            .collect();
+        posed.tapers = (0..region.sides().len())
+            .filter_map(|side| posed.taper(region, side))
+            .collect();
+        posed
+    }
+
+    /// The gap between a half-line and the next where they run side by side.
+    fn gap(&self, region: &Region, side: usize) -> Option<Gap> {
+        let (next, width_m) = region.gap_after(side)?;
+        let (from, to) = (self.far_head(region, side)?, self.far_head(region, next)?);
+        let skins = [side, next].map(|side| skin_m(region, side));
+        let out = region.sides().get(side)?;
+        let gap = Gap {
+            out: side,
+            back: next,
+            start: out.curve.at(0.0),
+            direction: out.arrives,
+            width_m,
+            rise: (to - from) / (width_m + skins.iter().sum::<f64>()),
+        };
+        Some(gap).filter(|gap| gap.rise != 0.0)
+    }
+
+    /// The taper for the jump of the head from the end of a side to the next.
+    fn taper(&self, region: &Region, side: usize) -> Option<Taper> {
+        let joint = region.joint(side)?;
+        let here = region.sides().get(side)?;
+        let next = region.sides().get(joint.next)?;
+        let jump_m = if !here.goes_out() {
+            self.drawn_head(region, joint.next, 0)? - self.drawn_head(region, side, 1)?
+        } else if region.gap_after(side).is_none() {
+            self.far_head(region, joint.next)? - self.far_head(region, side)?
+        } else {
+            return None;
+        };
+        let taper = Taper::new(joint.next, next.curve, side, jump_m, joint.angle_rad);
+        Some(taper).filter(|_| jump_m != 0.0)
+    }
+
+    /// The head given at the start or the end of a head side.
+    fn drawn_head(&self, region: &Region, side: usize, end: usize) -> Option<f64> {
+        let is_head = region.sides().get(side)?.condition == Condition::Head;
+        let heads = self.problem.heads_m.get(side).copied().unwrap_or_default();
+        heads.get(end).copied().filter(|_| is_head)
+    }
+
+    /// What a half-line asks of the head far away beside its known smooth part
+    /// and the gaps elsewhere; none where it fixes none.
+    fn far_head(&self, region: &Region, index: usize) -> Option<f64> {
+        let side = region.sides().get(index)?;
+        if side.condition == Condition::Flux {
+            return None;
         }
-        Self { problem, tapers }
+        let heads = self.problem.heads_m.get(index).copied().unwrap_or_default();
+        let drawn_end = side.curve.at(f64::from(!side.goes_out()));
+        let outward = -Complex64::I * side.arrives;
+        let slope = (self.smooth_derivative(drawn_end) * outward).re;
+        let to_infinity = if side.goes_out() {
+            side.arrives
+        } else {
+            -side.leaves
+        };
+        let gaps = self.gaps.iter().map(|gap| gap.far_value(to_infinity));
+        Some(
+            heads[0]
+                - self.smooth_value(drawn_end)
+                - skin_m(region, index) * slope
+                - gaps.sum::<f64>(),
+        )
     }
 
     pub fn poles(&self) -> &[(Complex64, f64)] {
@@ -81,22 +146,39 @@ impl Posed {
     /// ∂/∂x − i ∂/∂y of the known part.
     pub fn derivative(&self, x: Complex64) -> Complex64 {
         let tapers = self.tapers.iter().map(|taper| taper.derivative(x));
+        let gaps = self.gaps.iter().map(|gap| gap.derivative(x));
         let poles = self.problem.poles.iter();
         let poles = poles.map(|(pole, strength)| of_pole(x, *pole).1 * *strength);
-        self.smooth_derivative(x) + tapers.sum::<Complex64>() + poles.sum::<Complex64>()
+        self.smooth_derivative(x) + tapers.chain(gaps).chain(poles).sum::<Complex64>()
     }
 
-    /// Whether a jump of the head lies at the start or the end of a side and
-    /// within a range of it.
+    /// Whether the flux through a range of a side is infinite or undetermined: a
+    /// jump of the head lies at its start or its end, or a flow goes on along it
+    /// to infinity.
     pub fn jumps_within(&self, region: &Region, side: usize, along: &Range<f64>) -> bool {
         let jumps_at = |joint: usize| self.tapers.iter().any(|taper| taper.corner == joint);
-        (along.start <= 0.0 && jumps_at(region.before(side)))
-            || (along.end >= 1.0 && jumps_at(side))
+        let starts = along.start <= 0.0;
+        let ends = along.end >= 1.0;
+        let is_in_gap = self
+            .gaps
+            .iter()
+            .any(|gap| gap.out == side && ends || gap.back == side && starts);
+        let endless = region
+            .sides()
+            .get(side)
+            .is_some_and(|side| side.goes_out() && ends || side.comes_in() && starts);
+        let flows = self.problem.flow != Complex64::ZERO || self.problem.source_per_m != 0.0;
+        starts && jumps_at(region.before(side))
+            || ends && jumps_at(side)
+            || is_in_gap
+            || endless && flows
     }
 
     /// The known part but for the poles.
     pub fn value_without_poles(&self, x: Complex64) -> f64 {
-        self.smooth_value(x) + self.taper_values(x)
+        let tapers = self.tapers.iter().map(|taper| taper.value(x));
+        let gaps = self.gaps.iter().map(|gap| gap.value(x));
+        self.smooth_value(x) + tapers.chain(gaps).sum::<f64>()
     }
 
     /// What the panels and C must bring about at a place of a side, in the
@@ -121,8 +203,9 @@ impl Posed {
 
     fn known_head(&self, region: &Region, place: &Place) -> f64 {
         let tapers = self.tapers.iter().map(|taper| taper.value_on(place));
+        let gaps = self.gaps.iter().map(|gap| gap.value_on(place));
         let x = drawn_end(region, place).unwrap_or(place.x);
-        self.smooth_value(x) + self.pole_values(place.x) + tapers.sum::<f64>()
+        self.smooth_value(x) + self.pole_values(place.x) + tapers.chain(gaps).sum::<f64>()
     }
 
     /// Outward slope of the known part on a side, in the measure of its panel.
@@ -134,26 +217,32 @@ impl Posed {
 
     /// The same but for the poles.
     pub fn slope_without_poles(&self, region: &Region, place: &Place) -> f64 {
-        let is_endless = drawn_end(region, place).is_some();
-        let smooth = if is_endless && place.condition == Condition::Flux {
-            Complex64::ZERO
-        } else {
-            self.smooth_derivative(place.x)
+        let smooth = match drawn_end(region, place) {
+            Some(_) if place.condition == Condition::Flux => Complex64::ZERO,
+            None if is_closing(region, place) => Complex64::ZERO,
+            end => self.smooth_derivative(end.unwrap_or(place.x)),
         };
         let tapers = self.tapers.iter().map(|taper| taper.derivative_on(place));
-        let all = smooth + tapers.sum::<Complex64>();
+        let gaps = self.gaps.iter().map(|gap| gap.derivative_on(place));
+        let all = smooth + tapers.chain(gaps).sum::<Complex64>();
         (all * place.outward).re
     }
 
     fn smooth_value(&self, x: Complex64) -> f64 {
-        let Problem {
-            flow, source_per_m, ..
-        } = self.problem;
-        (flow.conj() * x).re - 0.25 * source_per_m * x.norm_sqr()
+        let source_per_m = self.problem.source_per_m;
+        let bowl = match self.problem.source_axis {
+            Some(axis) => 2.0 * (axis.conj() * x).re.powi(2),
+            None => x.norm_sqr(),
+        };
+        (self.problem.flow.conj() * x).re - 0.25 * source_per_m * bowl
     }
 
     fn smooth_derivative(&self, x: Complex64) -> Complex64 {
-        self.problem.flow.conj() - 0.5 * self.problem.source_per_m * x.conj()
+        let bowl = match self.problem.source_axis {
+            Some(axis) => axis.conj() * (2.0 * (axis.conj() * x).re),
+            None => x.conj(),
+        };
+        self.problem.flow.conj() - 0.5 * self.problem.source_per_m * bowl
     }
 
     fn pole_values(&self, x: Complex64) -> f64 {
@@ -162,41 +251,19 @@ impl Posed {
             .map(|(pole, strength)| strength * of_pole(x, *pole).0)
             .sum()
     }
+}
 
-    fn taper_values(&self, x: Complex64) -> f64 {
-        self.tapers.iter().map(|taper| taper.value(x)).sum()
+/// The skin of a side; zero of a clean one.
+fn skin_m(region: &Region, side: usize) -> f64 {
+    match region.sides().get(side).map(|side| side.condition) {
+        Some(Condition::Clogged { skin_m }) => skin_m,
+        _ => 0.0,
     }
 }
 
-/// By how much the given head rises from the end of a side to the start of the
-/// next, where both are head sides.
-fn jump(region: &Region, problem: &Problem, side: usize, next: usize) -> Option<f64> {
-    let head = |index: usize| {
-        let side = region.sides().get(index)?;
-        let heads = problem.heads_m.get(index).copied().unwrap_or_default();
-        (side.condition == Condition::Head).then_some(heads)
-    };
-    Some(head(next)?[0] - head(side)?[1])
-}
-
-/// The same far away on two half-lines, where clogged banks act as clean ones:
-/// of what is left of the head beside the uniform flow.
-fn far_jump(region: &Region, problem: &Problem, side: usize, next: usize) -> Option<f64> {
-    let far_head = |index: usize| {
-        let side = region.sides().get(index)?;
-        let heads = problem.heads_m.get(index).copied().unwrap_or_default();
-        let drawn_end = side.curve.at(f64::from(!side.goes_out()));
-        let beside_flow = heads[0] - (problem.flow.conj() * drawn_end).re;
-        let outward = -Complex64::I * side.arrives;
-        match side.condition {
-            Condition::Head => Some(beside_flow),
-            Condition::Flux => None,
-            Condition::Clogged { skin_m } => {
-                Some(beside_flow - skin_m * (problem.flow.conj() * outward).re)
-            }
-        }
-    };
-    Some(far_head(next)? - far_head(side)?)
+fn is_closing(region: &Region, place: &Place) -> bool {
+    let side = region.sides().get(place.side);
+    side.is_some_and(|side| side.is_closing)
 }
 
 /// On a half-line a uniform flow, square to it, has the head of its drawn

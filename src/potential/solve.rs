@@ -223,8 +223,8 @@ fn measure(
     });
     let sums: Vec<f64> = sums.collect();
     let (heads_m, slopes) = largest(system, &checks, &sums);
-    let head_m = heads_m.iter().copied().fold(0.0, f64::max);
-    let slope = slopes.iter().copied().fold(0.0, f64::max);
+    let head_m = highest(heads_m.iter().copied());
+    let slope = highest(slopes.iter().copied());
     // φ is not worth solving for while the residuals alone exceed the target.
     let bound_m = if slope == 0.0 {
         head_m
@@ -247,16 +247,28 @@ fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f6
     let largest = |places: &[Place], sums: &[f64], counts_head: bool| {
         let parts = places.iter().zip(sums);
         let counted = parts.filter(|(place, _)| place.counts_head() == counts_head);
-        BETWEEN_CHECKS * counted.map(|(_, sum)| *sum).fold(0.0, f64::max)
+        BETWEEN_CHECKS * highest(counted.map(|(_, sum)| *sum))
     };
     panels
         .map(|(places, sums)| (largest(places, sums, true), largest(places, sums, false)))
         .unzip()
 }
 
+/// The largest of some values and zero; infinite where one is not a number, so
+/// that nothing undefined passes for small.
+fn highest(values: impl Iterator<Item = f64>) -> f64 {
+    values.fold(0.0, |highest, value| {
+        if value.is_nan() {
+            f64::INFINITY
+        } else {
+            highest.max(value)
+        }
+    })
+}
+
 /// The bound on φ whose slopes exceed the given ones.
 fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]) -> f64 {
-    let floor = SMALLEST_OMEGA * slopes.iter().copied().fold(0.0, f64::max);
+    let floor = SMALLEST_OMEGA * highest(slopes.iter().copied());
     let omega: Vec<f64> = slopes.iter().map(|slope| slope.max(floor)).collect();
     let asked = |_: usize, place: &Place| match place.condition {
         Condition::Head => 0.0,
@@ -267,7 +279,7 @@ fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]
     let densities = system.solve(&asked, &[0.0]);
     let fields = system.fields(&densities, checks);
     let residuals = fields.residuals(checks, 1, &asked);
-    let highest = fields.values.iter().copied().fold(0.0, f64::max);
+    let highest_m = highest(fields.values.iter().copied());
     let (heads_m, slopes) = largest(
         system,
         checks,
@@ -276,14 +288,32 @@ fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]
             .map(|residual| residual.abs())
             .collect::<Vec<_>>(),
     );
-    let head_m = heads_m.iter().copied().fold(0.0, f64::max);
+    let head_m = highest(heads_m.iter().copied());
     let shares = slopes
         .iter()
         .zip(&omega)
         .map(|(slope, omega)| slope / omega);
-    let share = shares.fold(0.0, f64::max);
+    let share = highest(shares);
+    if std::env::var("DBG").is_ok() {
+        let w = slopes
+            .iter()
+            .zip(&omega)
+            .enumerate()
+            .map(|(i, (s, o))| (s / o, i))
+            .fold((0.0, 0), |a, b| if b.0 > a.0 { b } else { a });
+        let p = &system.mesh.panels[w.1];
+        eprintln!(
+            "phi highest {highest_m:.2e} head {head_m:.2e} share {share:.2e} side {} power {} mid {} half {} omega {:.2e} floor {floor:.2e} at {}",
+            p.side,
+            p.power,
+            p.middle,
+            p.half,
+            omega[w.1],
+            p.curve.at(p.u(0.0))
+        );
+    }
     if share < 1.0 && region.has_head() {
-        (highest + head_m) / (1.0 - share)
+        (highest_m + head_m) / (1.0 - share)
     } else {
         f64::INFINITY
     }

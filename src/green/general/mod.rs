@@ -10,12 +10,12 @@ use std::ops::Range;
 
 use num_complex::Complex64;
 
-use super::{Green, Image, Source};
-use crate::outline::{Boundary, BoundarySide, Condition, Curve};
-use crate::potential::{self, Layer, Problem, Region, RimmedPole, Side, Solution};
+mod sides;
 
-/// Arcs are cut so that none sweeps more than this.
-const WIDEST_ARC_RAD: f64 = std::f64::consts::FRAC_PI_2;
+use super::{Green, Image, Source};
+use crate::outline::{Boundary, Condition};
+use crate::potential::{Layer, Problem, RimmedPole, Solution};
+use sides::{Channel, Sides};
 
 /// A well as it enters the bound.
 #[derive(Clone, Copy, Debug)]
@@ -33,6 +33,8 @@ pub struct Before {
     pub flow: Complex64,
     /// Recharge over transmissivity, 1/m.
     pub source_per_m: f64,
+    /// In an open outline, the unit number across the half-lines that drain it.
+    pub source_axis: Option<Complex64>,
 }
 
 /// The Green's function of an outline without closed form, and its head before
@@ -41,8 +43,8 @@ pub struct General {
     boundary: Boundary,
     solution: Solution,
     poles: Vec<Complex64>,
-    /// For each side of the boundary, the sides of the region that make it.
-    parts: Vec<Range<usize>>,
+    sides: Sides,
+    flow: Complex64,
     /// The head before pumping, the last of the problems.
     before: Layer,
     target_m: f64,
@@ -53,22 +55,13 @@ impl General {
     /// wells and its head before pumping, until the error of every head is
     /// proven to be at most `target_m`, or as near as it comes.
     pub fn new(boundary: &Boundary, wells: &[WeightedPole], before: Before, target_m: f64) -> Self {
-        let scale_m = reach_m(boundary, wells);
-        let mut parts = Vec::with_capacity(boundary.sides.len());
-        let mut heads_m = Vec::new();
-        let mut count = 0;
-        let mut chains = Vec::new();
-        for chain in &boundary.chains {
-            let mut sides = Vec::new();
-            for side in boundary.sides_of(chain) {
-                let pieces = pieces(side, scale_m);
-                heads_m.extend(pieces.iter().map(|_| side.stage_m));
-                parts.push(count..count + pieces.len());
-                count += pieces.len();
-                sides.extend(pieces);
-            }
-            chains.push(sides);
-        }
+        let ends = boundary
+            .sides
+            .iter()
+            .flat_map(|side| [side.curve.from(), side.curve.to()])
+            .flatten();
+        let drawn: Vec<_> = ends.chain(wells.iter().map(|well| well.at)).collect();
+        let sides = Sides::of(boundary, &drawn);
         let of_well = |well: &WeightedPole| Problem {
             poles: vec![(well.at, 1.0)],
             weight: well.strength_m,
@@ -76,21 +69,23 @@ impl General {
         };
         let mut problems: Vec<_> = wells.iter().map(of_well).collect();
         problems.push(Problem {
-            heads_m,
+            heads_m: sides.heads_m.clone(),
             flow: before.flow,
             source_per_m: before.source_per_m,
+            source_axis: before.source_axis,
             weight: 1.0,
             ..Problem::default()
         });
-        let solution = Solution::new(Region::new(&chains), problems, target_m);
+        let solution = Solution::new(sides.region.clone(), problems, target_m);
         let mut weights = vec![0.0; wells.len()];
         weights.push(1.0);
         Self {
             before: solution.sum(&weights),
             boundary: boundary.clone(),
             poles: wells.iter().map(|well| well.at).collect(),
+            flow: before.flow,
             solution,
-            parts,
+            sides,
             target_m,
         }
     }
@@ -109,22 +104,48 @@ impl General {
     /// The side of the boundary near which the error is largest.
     pub fn hardest_side(&self) -> Option<usize> {
         let hardest = self.solution.hardest_side()?;
-        self.parts.iter().position(|part| part.contains(&hardest))
+        self.sides
+            .parts
+            .iter()
+            .position(|part| part.contains(&hardest))
     }
 
     /// Adds the head before pumping, metres, to the sum of each place.
     pub fn add_heads_before_m(&self, places: &[Complex64], sums: &mut [f64]) {
-        self.solution.add_values(&self.before, &[], places, sums);
+        for (place, sum) in places.iter().zip(sums.iter_mut()) {
+            *sum += (self.flow.conj() * (place - self.near(*place))).re;
+        }
+        let layer = &self.before;
+        self.solution
+            .add_values(layer, &[], &self.all_near(places), sums);
     }
 
     /// The head before pumping at a place, metres.
     pub fn head_before_m(&self, z: Complex64) -> f64 {
-        self.solution.value_without_poles(&self.before, z)
+        let mut sum = [0.0];
+        self.add_heads_before_m(&[z], &mut sum);
+        sum[0]
     }
 
     /// ∂h/∂x + i ∂h/∂y before pumping.
     pub fn gradient_before(&self, z: Complex64) -> Complex64 {
-        self.solution.gradient(&self.before, z)
+        if self.near(z) == z {
+            self.solution.gradient(&self.before, z)
+        } else {
+            self.flow
+        }
+    }
+
+    /// A place, or where far in a channel nothing but the flow along it
+    /// changes any more, the one abreast of it at the end.
+    fn near(&self, z: Complex64) -> Complex64 {
+        let mut channels = self.sides.channels.iter();
+        let end = channels.find_map(|channel: &Channel| channel.end_abreast(z));
+        end.unwrap_or(z)
+    }
+
+    fn all_near(&self, places: &[Complex64]) -> Vec<Complex64> {
+        places.iter().map(|place| self.near(*place)).collect()
     }
 
     /// ∫ ∂h/∂n dl before pumping through a part of a side, metres, n pointing
@@ -137,10 +158,10 @@ impl General {
 
     fn outflow(&self, problem: usize, side: usize, along: &Range<f64>) -> Option<f64> {
         let curve = self.boundary.sides.get(side)?.curve;
-        let parts = self.parts.get(side)?.clone();
+        let parts = self.sides.parts.get(side)?.clone();
         parts
             .enumerate()
-            .map(|(piece, index)| (index, along_piece(&curve, piece, along)))
+            .map(|(piece, index)| (index, self.sides.within(side, &curve, piece, along)))
             .filter(|(_, within)| within.start < within.end)
             .map(|(index, within)| {
                 let parameter = |along: f64| self.solution.parameter(index, curve.at(along));
@@ -184,6 +205,7 @@ impl General {
 
 impl Green for General {
     fn value_outside_rim(&self, at: Complex64, pole: Complex64, rim_m: f64) -> f64 {
+        let at = self.near(at);
         let distance_m = (at - pole).norm().max(rim_m);
         let regular = self.with(pole, |general, problem| {
             let layer = general.layer_of(problem);
@@ -193,6 +215,9 @@ impl Green for General {
     }
 
     fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64 {
+        if self.near(at) != at {
+            return Complex64::ZERO;
+        }
         self.with(pole, |general, problem| {
             general.solution.gradient(&general.layer_of(problem), at)
         })
@@ -236,73 +261,12 @@ impl Green for General {
             });
         }
         let layer = self.solution.sum(&weights);
-        self.solution.add_values(&layer, &poles, points, sums);
+        let near = self.all_near(points);
+        self.solution.add_values(&layer, &poles, &near, sums);
     }
 
     /// None: the sides act through layers of their own.
     fn nearest_images(&self, _: Complex64, _: usize) -> Vec<Image> {
         Vec::new()
     }
-}
-
-/// How far the drawn places and the wells reach from the origin, metres.
-fn reach_m(boundary: &Boundary, wells: &[WeightedPole]) -> f64 {
-    let ends = boundary
-        .sides
-        .iter()
-        .flat_map(|side| [side.curve.from(), side.curve.to()])
-        .flatten();
-    let places = ends.chain(wells.iter().map(|well| well.at));
-    let reach_m = places.map(|place| place.norm()).fold(0.0, f64::max);
-    if reach_m > 0.0 { reach_m } else { 1.0 }
-}
-
-/// The sides of a region that make one side of a boundary.
-fn pieces(side: &BoundarySide, scale_m: f64) -> Vec<Side> {
-    let condition = match side.condition {
-        Condition::Head => potential::Condition::Head,
-        Condition::NoFlow => potential::Condition::Flux,
-        Condition::Clogged { skin_m } => potential::Condition::Clogged { skin_m },
-    };
-    match side.curve {
-        Curve::Segment { from, to } => vec![Side::segment(from, to, condition)],
-        Curve::RayIn { to, from_direction } => {
-            vec![Side::ray_in(to, from_direction, scale_m, condition)]
-        }
-        Curve::RayOut { from, direction } => {
-            vec![Side::ray_out(from, direction, scale_m, condition)]
-        }
-        Curve::Arc {
-            centre,
-            radius,
-            start_rad,
-            sweep_rad,
-        } => {
-            let count = arcs(sweep_rad);
-            let sweep_rad = sweep_rad / count as f64;
-            (0..count)
-                .map(|index| {
-                    let start_rad = start_rad + index as f64 * sweep_rad;
-                    Side::arc(centre, radius, start_rad, sweep_rad, condition)
-                })
-                .collect()
-        }
-    }
-}
-
-/// Into how many arcs a sweep is cut.
-fn arcs(sweep_rad: f64) -> usize {
-    ((sweep_rad.abs() / WIDEST_ARC_RAD - 1e-9).ceil() as usize).max(1)
-}
-
-/// What a range along a side covers of one of its pieces; empty if nothing.
-fn along_piece(curve: &Curve, piece: usize, along: &Range<f64>) -> Range<f64> {
-    let whole = match *curve {
-        Curve::Arc { sweep_rad, .. } => {
-            let sweep_rad = sweep_rad.abs() / arcs(sweep_rad) as f64;
-            piece as f64 * sweep_rad..(piece + 1) as f64 * sweep_rad
-        }
-        _ => curve.along(),
-    };
-    along.start.max(whole.start)..along.end.min(whole.end)
 }
