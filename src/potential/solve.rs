@@ -294,24 +294,6 @@ fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]
         .zip(&omega)
         .map(|(slope, omega)| slope / omega);
     let share = highest(shares);
-    if std::env::var("DBG").is_ok() {
-        let w = slopes
-            .iter()
-            .zip(&omega)
-            .enumerate()
-            .map(|(i, (s, o))| (s / o, i))
-            .fold((0.0, 0), |a, b| if b.0 > a.0 { b } else { a });
-        let p = &system.mesh.panels[w.1];
-        eprintln!(
-            "phi highest {highest_m:.2e} head {head_m:.2e} share {share:.2e} side {} power {} mid {} half {} omega {:.2e} floor {floor:.2e} at {}",
-            p.side,
-            p.power,
-            p.middle,
-            p.half,
-            omega[w.1],
-            p.curve.at(p.u(0.0))
-        );
-    }
     if share < 1.0 && region.has_head() {
         (highest_m + head_m) / (1.0 - share)
     } else {
