@@ -198,7 +198,10 @@ fn steady_state(solution: &Solution, field: &WellField) -> String {
     match (rivers.is_empty(), site.aquifer.influence_radius) {
         (false, _) => {
             let hold = if rivers.len() > 1 { "hold" } else { "holds" };
-            format!("exists: {} {hold} the head", rivers.join(" and "))
+            format!(
+                "exists: {} {hold} the head",
+                super::summary::listed(&rivers)
+            )
         }
         (true, Some(_)) => {
             "assumed: no edge holds the head, so each cone ends at the influence radius".into()

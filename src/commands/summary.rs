@@ -116,6 +116,7 @@ fn exchange(planned: &Planned<'_>) -> String {
     let counts = |m3_d: &f64| m3_d.abs() > noise_m3_d;
     let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
     let told: Vec<String> = boundaries
+        .clone()
         .filter_map(|(finding, edge)| {
             let before = finding.exchange_before_m3_d.filter(counts)?;
             let after = finding.exchange_after_m3_d()?;
@@ -135,7 +136,24 @@ fn exchange(planned: &Planned<'_>) -> String {
     if told.is_empty() {
         return String::new();
     }
-    wrapped(&told.join("; "), "", "  ")
+    let mut text = told.join("; ");
+    let open: Vec<String> = boundaries
+        .filter(|(finding, _)| finding.bounds_an_aquifer && finding.exchange_before_m3_d.is_none())
+        .map(|(_, edge)| one_line(&edge.name))
+        .collect();
+    if !open.is_empty() {
+        let _ = write!(text, "; not determined for {}", listed(&open));
+    }
+    wrapped(&text, "", "  ")
+}
+
+/// "Ostra", "Ostra and Marl Drain", "Ostra, Marl Drain and Mill leat".
+pub fn listed(names: &[String]) -> String {
+    match names {
+        [] => String::new(),
+        [only] => only.clone(),
+        [firsts @ .., last] => format!("{} and {last}", firsts.join(", ")),
+    }
 }
 
 /// A table with a plain heading and numbers to the right.

@@ -10,7 +10,7 @@
 //! | bent around a lake | 0: what enters on one side leaves on the other |
 //! | linear in a wedge's angle | none: infinite at the apex, where two stages meet |
 //! | by harmonic measures | none, see below |
-//! | in a general outline | none |
+//! | in a general outline | by the solver; none where two stages meet |
 //!
 //! Rivers of several stages that are not just two opposite ones always touch
 //! somewhere, if only at infinity, and where two stages touch the flow from one

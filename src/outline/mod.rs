@@ -12,7 +12,8 @@
 //! outline lies; of a general one `finder` and `window` do.
 //! Limits: at most 4000 straight pieces; sides count as parallel or square to
 //! within 1 mm over the plan's extent; circles are not stretched; open outlines
-//! of barriers alone without images are refused by name.
+//! of barriers alone without images, and edges with the aquifer on both banks
+//! (`slits`), are refused by name.
 
 mod arrangement;
 mod assemble;
