@@ -107,15 +107,17 @@ fn totals(planned: &Planned<'_>) -> String {
 }
 
 /// What passes between rivers and aquifer before pumping and after, where
-/// something does before.
+/// more than the error of the heads does before: a head wrong by δ moves T δ.
 fn exchange(planned: &Planned<'_>) -> String {
     let words = Words::of(planned);
     let verb = |m3_d: f64| if m3_d < 0.0 { "takes" } else { "gives" };
     let site = planned.solution.site();
+    let noise_m3_d = site.aquifer.transmissivity.si() * planned.solution.error_bound_m();
+    let counts = |m3_d: &f64| m3_d.abs() > noise_m3_d;
     let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
     let told: Vec<String> = boundaries
         .filter_map(|(finding, edge)| {
-            let before = finding.exchange_before_m3_d.filter(|&m3_d| m3_d != 0.0)?;
+            let before = finding.exchange_before_m3_d.filter(counts)?;
             let after = finding.exchange_after_m3_d()?;
             let again = match verb(after) {
                 same if same == verb(before) => String::new(),

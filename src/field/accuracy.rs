@@ -11,6 +11,35 @@
 //! 4. The sums: one rounding of the level and of each well's part.
 
 use super::WellField;
+use crate::site::{Refusal, Subject};
+
+/// That the heads at the wells are numbers.
+///
+/// # Errors
+/// Where the general solver's equations have no solution in the machine's
+/// precision.
+pub(super) fn check(field: &WellField) -> Result<(), Refusal> {
+    let head_m = |pole| {
+        let (green, shape) = (field.green.as_ref(), &field.outline.shape);
+        field.ambient.head_m(pole, green, shape) + green.regular_part(pole)
+    };
+    if field.wells.iter().all(|well| head_m(well.pole).is_finite()) {
+        return Ok(());
+    }
+    let well = |well: &super::FieldWell| {
+        let subject = Subject::Well(well.index, None);
+        (subject, "stands in the aquifer".to_owned())
+    };
+    Err(Refusal {
+        subject: field
+            .hardest_edge
+            .map_or(Subject::Plan, |edge| Subject::Edge(edge, None)),
+        what: "the general solver found no heads for this aquifer".to_owned(),
+        why: Some("its equations have no solution in the machine's precision".to_owned()),
+        remedy: "redraw its edges without needle-sharp corners and tiny pieces".to_owned(),
+        related: field.wells.iter().map(well).collect(),
+    })
+}
 
 /// A bound on the absolute rounding error of a head, metres, at places within
 /// the wells' neighbourhood.

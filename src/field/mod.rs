@@ -58,8 +58,8 @@ impl WellField {
     /// Solves one aquifer.
     ///
     /// # Errors
-    /// Where no steady state exists, or the ambient head contradicts the
-    /// edges; the refusals say which numbers disagree and what would help.
+    /// Where no steady state exists, the ambient head contradicts the edges, or
+    /// the solver finds no heads; the refusals say what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
         let mut notes = Vec::new();
         let refusals = |faults: Vec<AmbientError>| -> Vec<Refusal> {
@@ -108,6 +108,7 @@ impl WellField {
             notes,
         };
         field.error_bound_m = accuracy::bound_m(&field);
+        accuracy::check(&field).map_err(|fault| vec![fault])?;
         Ok(field)
     }
 
