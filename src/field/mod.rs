@@ -266,6 +266,12 @@ impl WellField {
         self.hardest_edge
     }
 
+    /// Number of unknowns of the general solver; none in closed form.
+    pub fn unknowns(&self) -> Option<usize> {
+        let solved = self.ambient.solved.as_ref();
+        solved.map(|solved| solved.general.unknowns())
+    }
+
     /// How it was computed, in a few words.
     pub fn method(&self) -> String {
         if let Some(radius_m) = self.influence_radius_m {

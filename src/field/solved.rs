@@ -69,11 +69,10 @@ pub(super) fn solve(
     let weighted: Vec<_> = wells.iter().map(weighted).collect();
     let source_per_m = site.aquifer.recharge.si() / transmissivity_m2_d;
     let far = far::of(boundary, stated, source_per_m)
-        .map_err(|error| error.refusal(site, outline, boundary))?;
+        .map_err(|undrained| undrained.refusal(site, outline))?;
     let before = Before {
         flow: far.flow,
         source_per_m,
-        source_axis: far.drained_across,
     };
     let target_m = SHARE_OF_ERROR * site.head_tolerance.si();
     let general = General::new(boundary, &weighted, before, target_m);

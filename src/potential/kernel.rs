@@ -32,6 +32,8 @@ pub(super) struct Source {
     roots: Vec<Complex64>,
     /// |ζ| from which a place is surely far.
     far_radius: f64,
+    /// |u| from which it is.
+    far_parameter: f64,
 }
 
 /// Values and slopes for each node of one panel.
@@ -56,6 +58,7 @@ pub(super) fn sources(mesh: &Mesh) -> Vec<Source> {
     let source = |panel: &Panel| {
         let parameters: Vec<f64> = rule.nodes.iter().map(|&t| panel.u(t)).collect();
         let power = f64::from(panel.power);
+        let far_radius = 0.5 * (rule.far + 1.0 / rule.far);
         let offset = |u: &f64| panel.curve.below(*u).norm().ln() - power * panel.half.ln();
         let root = |index: u32| Complex64::cis(TAU * f64::from(index) / power);
         Source {
@@ -63,7 +66,8 @@ pub(super) fn sources(mesh: &Mesh) -> Vec<Source> {
             nodes: parameters.iter().map(|&u| panel.curve.at(u)).collect(),
             offsets: parameters.iter().map(offset).collect(),
             roots: (0..panel.power).map(root).collect(),
-            far_radius: 0.5 * (rule.far + 1.0 / rule.far),
+            far_parameter: (panel.middle + far_radius * panel.half).powf(power),
+            far_radius,
         }
     };
     mesh.panels.iter().map(source).collect()
@@ -77,6 +81,11 @@ impl Source {
 
     /// The effect at a place with its parameter on this panel's side.
     fn effect(&self, rule: &Rule, x: Complex64, u: Complex64, effect: &mut Effect) {
+        // Spares most places the root.
+        if u.norm_sqr() >= self.far_parameter * self.far_parameter {
+            self.as_points(rule, x, effect);
+            return;
+        }
         let root = self.panel.root(u);
         if self.is_far(rule, root) {
             self.as_points(rule, x, effect);

@@ -329,17 +329,34 @@ fn cut(region: &Region, panel: Panel, excess: f64, panels: &mut Vec<Panel>) {
     match exponents(region, &panel) {
         (None, None) => halve(panel, excess, panels),
         (Some(first), None) if panel.power == 1 => {
-            panels.push(panel.with_power(power_for(first)));
+            bend(panel, first, excess, panels);
         }
         (Some(first), None) if is_whole(first, panel.power) => halve(panel, excess, panels),
         (Some(first), None) => grade(panel, levels(excess, first, panel.power), panels),
-        (None, Some(last)) => panels.push(turned.with_power(power_for(last))),
+        (None, Some(last)) => bend(turned, last, excess, panels),
         (Some(first), Some(last)) => {
             let [near, _] = panel.halves();
             let [far, _] = turned.halves();
-            panels.push(near.with_power(power_for(first)));
-            panels.push(far.with_power(power_for(last)));
+            bend(near, first, excess, panels);
+            bend(far, last, excess, panels);
         }
+    }
+}
+
+/// Lets a panel run through wᵐ from its corner on, and cuts it where it misses
+/// its aim by more than that gains.
+fn bend(panel: Panel, exponent: f64, excess: f64, panels: &mut Vec<Panel>) {
+    let bent = panel.with_power(power_for(exponent));
+    if excess <= QUARTERS {
+        panels.push(bent);
+    } else if is_whole(exponent, bent.power) {
+        panels.extend(bent.halves());
+    } else {
+        grade(
+            bent,
+            levels(excess / QUARTERS, exponent, bent.power),
+            panels,
+        );
     }
 }
 

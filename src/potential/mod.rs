@@ -4,7 +4,6 @@
 mod batch;
 mod curve;
 mod flux;
-mod gap;
 mod kernel;
 mod layer;
 mod legendre;

@@ -2,14 +2,12 @@
 //!
 //! A problem's solution is `known(x)` + C + the potential of the panels. Known
 //! are the logarithms of its poles, a uniform flow, the bowl of an areal source
-//! and the tapers and gaps of its jumps; the panels make up what the sides still
-//! ask for.
+//! and the tapers of its jumps; the panels make up what the sides still ask for.
 
 use std::ops::Range;
 
 use num_complex::Complex64;
 
-use super::gap::Gap;
 use super::kernel::of_pole;
 use super::mesh::Place;
 use super::region::{Condition, Region};
@@ -24,14 +22,11 @@ pub struct Problem {
     /// (constant on half-lines and arcs); empty where all are zero. On a flux
     /// side it is not read.
     pub heads_m: Vec<[f64; 2]>,
-    /// ∂u/∂x + i ∂u/∂y of a flow that is uniform far away. Together with the
-    /// bowl of an areal source it must not cross flux half-lines nor rise along
-    /// the others.
+    /// ∂u/∂x + i ∂u/∂y of a flow that is uniform far away. It must run along
+    /// flux half-lines and square to the others.
     pub flow: Complex64,
-    /// −∇²u, 1/m: recharge over transmissivity.
+    /// −∇²u, 1/m: recharge over transmissivity; zero unless the region is bounded.
     pub source_per_m: f64,
-    /// Where half-lines drain an areal source: the unit number across them.
-    pub source_axis: Option<Complex64>,
     /// What its error counts in the bound of the whole; 1 where it is one of
     /// the parts of a sum, 0 where it is not to steer the refinement.
     pub weight: f64,
@@ -42,7 +37,6 @@ pub struct Problem {
 pub(super) struct Posed {
     problem: Problem,
     tapers: Vec<Taper>,
-    gaps: Vec<Gap>,
 }
 
 impl Posed {
@@ -50,32 +44,11 @@ impl Posed {
         let mut posed = Self {
             problem,
             tapers: Vec::new(),
-            gaps: Vec::new(),
         };
-        posed.gaps = (0..region.sides().len())
-            .filter_map(|side| posed.gap(region, side))
-            .collect();
         posed.tapers = (0..region.sides().len())
             .filter_map(|side| posed.taper(region, side))
             .collect();
         posed
-    }
-
-    /// The gap between a half-line and the next where they run side by side.
-    fn gap(&self, region: &Region, side: usize) -> Option<Gap> {
-        let (next, width_m) = region.gap_after(side)?;
-        let (from, to) = (self.far_head(region, side)?, self.far_head(region, next)?);
-        let skins = [side, next].map(|side| skin_m(region, side));
-        let out = region.sides().get(side)?;
-        let gap = Gap {
-            out: side,
-            back: next,
-            start: out.curve.at(0.0),
-            direction: out.arrives,
-            width_m,
-            rise: (to - from) / (width_m + skins.iter().sum::<f64>()),
-        };
-        Some(gap).filter(|gap| gap.rise != 0.0)
     }
 
     /// The taper for the jump of the head from the end of a side to the next.
@@ -85,10 +58,8 @@ impl Posed {
         let next = region.sides().get(joint.next)?;
         let jump_m = if !here.goes_out() {
             self.drawn_head(region, joint.next, 0)? - self.drawn_head(region, side, 1)?
-        } else if region.gap_after(side).is_none() {
-            self.far_head(region, joint.next)? - self.far_head(region, side)?
         } else {
-            return None;
+            self.far_head(region, joint.next)? - self.far_head(region, side)?
         };
         let taper = Taper::new(joint.next, next.curve, side, jump_m, joint.angle_rad);
         Some(taper).filter(|_| jump_m != 0.0)
@@ -101,29 +72,20 @@ impl Posed {
         heads.get(end).copied().filter(|_| is_head)
     }
 
-    /// What a half-line asks of the head far away beside its known smooth part
-    /// and the gaps elsewhere; none where it fixes none.
+    /// What a half-line asks of the head far away beside the uniform flow; none
+    /// where it fixes none. Far away clogged banks act as clean ones.
     fn far_head(&self, region: &Region, index: usize) -> Option<f64> {
         let side = region.sides().get(index)?;
-        if side.condition == Condition::Flux {
-            return None;
-        }
+        let skin_m = match side.condition {
+            Condition::Head => 0.0,
+            Condition::Flux => return None,
+            Condition::Clogged { skin_m } => skin_m,
+        };
         let heads = self.problem.heads_m.get(index).copied().unwrap_or_default();
         let drawn_end = side.curve.at(f64::from(!side.goes_out()));
         let outward = -Complex64::I * side.arrives;
         let slope = (self.smooth_derivative(drawn_end) * outward).re;
-        let to_infinity = if side.goes_out() {
-            side.arrives
-        } else {
-            -side.leaves
-        };
-        let gaps = self.gaps.iter().map(|gap| gap.far_value(to_infinity));
-        Some(
-            heads[0]
-                - self.smooth_value(drawn_end)
-                - skin_m(region, index) * slope
-                - gaps.sum::<f64>(),
-        )
+        Some(heads[0] - self.smooth_value(drawn_end) - skin_m * slope)
     }
 
     pub fn poles(&self) -> &[(Complex64, f64)] {
@@ -146,10 +108,9 @@ impl Posed {
     /// ∂/∂x − i ∂/∂y of the known part.
     pub fn derivative(&self, x: Complex64) -> Complex64 {
         let tapers = self.tapers.iter().map(|taper| taper.derivative(x));
-        let gaps = self.gaps.iter().map(|gap| gap.derivative(x));
         let poles = self.problem.poles.iter();
         let poles = poles.map(|(pole, strength)| of_pole(x, *pole).1 * *strength);
-        self.smooth_derivative(x) + tapers.chain(gaps).chain(poles).sum::<Complex64>()
+        self.smooth_derivative(x) + tapers.chain(poles).sum::<Complex64>()
     }
 
     /// Whether the flux through a range of a side is infinite or undetermined: a
@@ -159,26 +120,18 @@ impl Posed {
         let jumps_at = |joint: usize| self.tapers.iter().any(|taper| taper.corner == joint);
         let starts = along.start <= 0.0;
         let ends = along.end >= 1.0;
-        let is_in_gap = self
-            .gaps
-            .iter()
-            .any(|gap| gap.out == side && ends || gap.back == side && starts);
         let endless = region
             .sides()
             .get(side)
             .is_some_and(|side| side.goes_out() && ends || side.comes_in() && starts);
         let flows = self.problem.flow != Complex64::ZERO || self.problem.source_per_m != 0.0;
-        starts && jumps_at(region.before(side))
-            || ends && jumps_at(side)
-            || is_in_gap
-            || endless && flows
+        starts && jumps_at(region.before(side)) || ends && jumps_at(side) || endless && flows
     }
 
     /// The known part but for the poles.
     pub fn value_without_poles(&self, x: Complex64) -> f64 {
         let tapers = self.tapers.iter().map(|taper| taper.value(x));
-        let gaps = self.gaps.iter().map(|gap| gap.value(x));
-        self.smooth_value(x) + tapers.chain(gaps).sum::<f64>()
+        self.smooth_value(x) + tapers.sum::<f64>()
     }
 
     /// What the panels and C must bring about at a place of a side, in the
@@ -203,9 +156,8 @@ impl Posed {
 
     fn known_head(&self, region: &Region, place: &Place) -> f64 {
         let tapers = self.tapers.iter().map(|taper| taper.value_on(place));
-        let gaps = self.gaps.iter().map(|gap| gap.value_on(place));
         let x = drawn_end(region, place).unwrap_or(place.x);
-        self.smooth_value(x) + self.pole_values(place.x) + tapers.chain(gaps).sum::<f64>()
+        self.smooth_value(x) + self.pole_values(place.x) + tapers.sum::<f64>()
     }
 
     /// Outward slope of the known part on a side, in the measure of its panel.
@@ -219,30 +171,22 @@ impl Posed {
     pub fn slope_without_poles(&self, region: &Region, place: &Place) -> f64 {
         let smooth = match drawn_end(region, place) {
             Some(_) if place.condition == Condition::Flux => Complex64::ZERO,
-            None if is_closing(region, place) => Complex64::ZERO,
+            None if is_closing(region, place) => {
+                self.smooth_derivative(place.x) - self.problem.flow.conj()
+            }
             end => self.smooth_derivative(end.unwrap_or(place.x)),
         };
         let tapers = self.tapers.iter().map(|taper| taper.derivative_on(place));
-        let gaps = self.gaps.iter().map(|gap| gap.derivative_on(place));
-        let all = smooth + tapers.chain(gaps).sum::<Complex64>();
+        let all = smooth + tapers.sum::<Complex64>();
         (all * place.outward).re
     }
 
     fn smooth_value(&self, x: Complex64) -> f64 {
-        let source_per_m = self.problem.source_per_m;
-        let bowl = match self.problem.source_axis {
-            Some(axis) => 2.0 * (axis.conj() * x).re.powi(2),
-            None => x.norm_sqr(),
-        };
-        (self.problem.flow.conj() * x).re - 0.25 * source_per_m * bowl
+        (self.problem.flow.conj() * x).re - 0.25 * self.problem.source_per_m * x.norm_sqr()
     }
 
     fn smooth_derivative(&self, x: Complex64) -> Complex64 {
-        let bowl = match self.problem.source_axis {
-            Some(axis) => axis.conj() * (2.0 * (axis.conj() * x).re),
-            None => x.conj(),
-        };
-        self.problem.flow.conj() - 0.5 * self.problem.source_per_m * bowl
+        self.problem.flow.conj() - 0.5 * self.problem.source_per_m * x.conj()
     }
 
     fn pole_values(&self, x: Complex64) -> f64 {
@@ -250,14 +194,6 @@ impl Posed {
         poles
             .map(|(pole, strength)| strength * of_pole(x, *pole).0)
             .sum()
-    }
-}
-
-/// The skin of a side; zero of a clean one.
-fn skin_m(region: &Region, side: usize) -> f64 {
-    match region.sides().get(side).map(|side| side.condition) {
-        Some(Condition::Clogged { skin_m }) => skin_m,
-        _ => 0.0,
     }
 }
 

@@ -6,9 +6,6 @@ use num_complex::Complex64;
 
 use super::curve::Curve;
 
-/// Half-lines that open by less run side by side.
-const PARALLEL_RAD: f64 = 1e-9;
-
 /// What holds on a side for a harmonic function u; n points out of the region.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Condition {
@@ -177,18 +174,6 @@ impl Region {
         self.joints.get(side)
     }
 
-    /// The half-line that comes in next where it runs beside one that goes
-    /// out, and their distance in metres.
-    pub(super) fn gap_after(&self, side: usize) -> Option<(usize, f64)> {
-        let out = self.sides.get(side).filter(|side| side.goes_out())?;
-        let joint = self
-            .joint(side)
-            .filter(|joint| joint.angle_rad < PARALLEL_RAD)?;
-        let back = self.sides.get(joint.next)?;
-        let across = back.curve.at(1.0) - out.curve.at(0.0);
-        Some((joint.next, (out.arrives.conj() * across).im))
-    }
-
     /// The number of the joint at the start of a side, which is the side that
     /// ends there.
     pub(super) fn before(&self, side: usize) -> usize {
@@ -232,12 +217,7 @@ fn is_alike(one: Condition, other: Condition) -> bool {
 fn next_at_infinity(sides: &[Side], side: &Side) -> Option<(usize, f64)> {
     let turn = |other: &Side| {
         let angle = (-other.leaves / side.arrives).arg();
-        // Parallel half-lines enclose a strip, not a full turn.
-        if angle < -PARALLEL_RAD {
-            angle + TAU
-        } else {
-            angle.max(0.0)
-        }
+        angle.rem_euclid(TAU)
     };
     sides
         .iter()

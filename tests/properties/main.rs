@@ -14,6 +14,7 @@
 //! | `motions` | moving, turning, mirroring and enlarging carry the answer along |
 //! | `rims` | the level in a well does not depend on where in its rim one looks |
 //! | `contours` | contours never cross and lie on their level |
+//! | `solvers` | closed forms and the general solver agree within its bound |
 //! | `texts` | a plan as text, in either unit, says the same |
 //!
 //! Tolerances: drawdowns are a few metres, Σ abs(Q/T)/(2π) at most 5 m. The
@@ -40,6 +41,7 @@ mod mounds;
 mod reciprocity;
 mod rims;
 mod rivers;
+mod solvers;
 mod superposition;
 mod texts;
 

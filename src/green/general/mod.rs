@@ -33,8 +33,6 @@ pub struct Before {
     pub flow: Complex64,
     /// Recharge over transmissivity, 1/m.
     pub source_per_m: f64,
-    /// In an open outline, the unit number across the half-lines that drain it.
-    pub source_axis: Option<Complex64>,
 }
 
 /// The Green's function of an outline without closed form, and its head before
@@ -45,6 +43,8 @@ pub struct General {
     poles: Vec<Complex64>,
     sides: Sides,
     flow: Complex64,
+    /// Whether neither a uniform flow nor recharge moves the water.
+    is_undisturbed: bool,
     /// The head before pumping, the last of the problems.
     before: Layer,
     target_m: f64,
@@ -72,7 +72,6 @@ impl General {
             heads_m: sides.heads_m.clone(),
             flow: before.flow,
             source_per_m: before.source_per_m,
-            source_axis: before.source_axis,
             weight: 1.0,
             ..Problem::default()
         });
@@ -84,6 +83,7 @@ impl General {
             boundary: boundary.clone(),
             poles: wells.iter().map(|well| well.at).collect(),
             flow: before.flow,
+            is_undisturbed: before.flow == Complex64::ZERO && before.source_per_m == 0.0,
             solution,
             sides,
             target_m,
@@ -149,11 +149,20 @@ impl General {
     }
 
     /// ∫ ∂h/∂n dl before pumping through a part of a side, metres, n pointing
-    /// out of the aquifer; none where a jump of the stage or an endless part
-    /// makes it infinite.
+    /// out of the aquifer; none where a jump of the stage or a flow that never
+    /// fades makes it infinite.
     pub fn outflow_before_m(&self, side: usize, along: &Range<f64>) -> Option<f64> {
+        let is_endless = along.start.is_infinite() || along.end.is_infinite();
+        if is_endless && self.sides.channel_of(side).is_some() && !self.is_still() {
+            return None;
+        }
         self.outflow(self.poles.len(), side, along)
             .filter(|outflow_m| outflow_m.is_finite())
+    }
+
+    /// Whether nothing flows across far channels before pumping.
+    fn is_still(&self) -> bool {
+        self.is_undisturbed && self.sides.have_channels_one_stage(&self.boundary)
     }
 
     fn outflow(&self, problem: usize, side: usize, along: &Range<f64>) -> Option<f64> {

@@ -1,12 +1,15 @@
 //! A boundary as the sides of a region that the solver takes.
 //!
-//! Whole circles and wide arcs are cut into quarters. Where two half-lines run
-//! to infinity side by side, both start abreast. Between two barriers nothing
-//! reaches far: what varies across fades as e^(−πx/L), so the channel of width L
-//! is closed [`WIDTHS`] widths beyond everything drawn, where that is 1e-27, and
-//! places beyond have the head of its end.
+//! Whole circles and wide arcs are cut into quarters. Two half-lines that run to
+//! infinity side by side make a channel, in which nothing reaches far: what
+//! disturbs the head there fades as e^(−x/ℓ), so the channel is closed by a wall
+//! [`FADED`] ℓ beyond everything drawn, and places beyond have the head abreast of
+//! them at the wall, but for a uniform flow along the channel. For a width L,
+//! ℓ = 2L/π between any clean edges; behind a skin b on both or opposite a barrier
+//! the slowest fading k obeys kL tan kL ≥ L/b or the like, and 1/k is at most
+//! 2L/π + √(bL).
 
-use std::f64::consts::FRAC_PI_2;
+use std::f64::consts::{FRAC_PI_2, PI};
 use std::ops::Range;
 
 use num_complex::Complex64;
@@ -14,8 +17,8 @@ use num_complex::Complex64;
 use crate::outline::{Boundary, BoundarySide, Condition, Curve, Opening};
 use crate::potential::{self, Region, Side};
 
-/// Widths of a channel from the last drawn place to its closed end.
-const WIDTHS: f64 = 20.0;
+/// e^(−38) is below rounding.
+const FADED: f64 = 38.0;
 
 /// Share of its distance by which a place may lie beside a channel and still
 /// count as in it.
@@ -28,24 +31,44 @@ pub(super) struct Sides {
     pub heads_m: Vec<[f64; 2]>,
     /// For each side of the boundary, the sides of the region that make it.
     pub parts: Vec<Range<usize>>,
-    /// For each side of the boundary, how long a drawn part its half-line has.
-    leads_m: Vec<f64>,
-    /// For each side of the boundary, whether it is a wall of a channel.
-    is_channel: Vec<bool>,
     /// Channels that are closed far away.
     pub channels: Vec<Channel>,
 }
 
-/// A channel between two barriers that goes on for ever.
+/// A channel between two half-lines side by side.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Channel {
+    /// The side of the boundary that goes out.
+    out: usize,
+    /// The side of the boundary that comes in, to its left.
+    back: usize,
     start: Complex64,
+    end: Complex64,
     direction: Complex64,
     width_m: f64,
+    /// Distance of its wall from `start`.
     length_m: f64,
 }
 
 impl Channel {
+    /// Distance of a place along it from `start`.
+    fn along_m(&self, place: Complex64) -> f64 {
+        ((place - self.start) * self.direction.conj()).re
+    }
+
+    /// Length of the side that comes in.
+    fn back_length_m(&self) -> f64 {
+        self.length_m - self.along_m(self.end)
+    }
+
+    /// Where its wall begins and ends.
+    fn wall(&self) -> (Complex64, Complex64) {
+        (
+            self.start + self.direction * self.length_m,
+            self.end + self.direction * self.back_length_m(),
+        )
+    }
+
     /// The place of its closed end abreast of a place beyond; none elsewhere.
     pub fn end_abreast(&self, x: Complex64) -> Option<Complex64> {
         let seen = (x - self.start) * self.direction.conj();
@@ -56,52 +79,35 @@ impl Channel {
     }
 }
 
-/// Two half-lines side by side, of one that goes out and the next that comes in.
-#[derive(Clone, Copy, Debug)]
-struct Abreast {
-    out: usize,
-    back: usize,
-    start: Complex64,
-    end: Complex64,
-    direction: Complex64,
-    width_m: f64,
-    /// Whether both are barriers.
-    is_channel: bool,
-}
-
 impl Sides {
     /// The sides of a boundary; `places` are all places drawn.
     pub fn of(boundary: &Boundary, places: &[Complex64]) -> Self {
-        let pairs = pairs(boundary);
         let mut sides = Self {
             region: Region::new(&[]),
             heads_m: Vec::new(),
             parts: vec![0..0; boundary.sides.len()],
-            leads_m: vec![0.0; boundary.sides.len()],
-            is_channel: vec![false; boundary.sides.len()],
-            channels: Vec::new(),
+            channels: channels(boundary, places),
         };
-        for pair in &pairs {
-            sides.set_leads(pair, places);
-        }
         let scale_m = places.iter().map(|place| place.norm()).fold(0.0, f64::max);
         let scale_m = if scale_m > 0.0 { scale_m } else { 1.0 };
         let mut chains: Vec<Vec<Side>> = Vec::new();
-        let mut count = 0;
         let mut is_done = vec![false; boundary.chains.len()];
-        for first in starts(boundary, &pairs) {
+        for first in sides.starts(boundary) {
             let mut chain = Vec::new();
             let mut number = first;
             while !is_done.get(number).copied().unwrap_or(true) {
                 if let Some(done) = is_done.get_mut(number) {
                     *done = true;
                 }
-                let last = sides.add_chain(boundary, number, scale_m, &mut count, &mut chain);
-                let mut channels = pairs.iter().filter(|pair| pair.is_channel);
-                let Some(channel) = channels.find(|pair| Some(pair.out) == last) else {
+                let last = sides.add_chain(boundary, number, scale_m, &mut chain);
+                let mut channels = sides.channels.iter();
+                let Some(channel) = channels.find(|channel| Some(channel.out) == last).copied()
+                else {
                     break;
                 };
-                chain.push(sides.wall(channel, &mut count));
+                let (from, to) = channel.wall();
+                chain.push(Side::closing(from, to));
+                sides.heads_m.push([0.0; 2]);
                 number = chain_of(boundary, channel.back);
             }
             if !chain.is_empty() {
@@ -112,68 +118,58 @@ impl Sides {
         sides
     }
 
+    /// The channel that a side of the boundary runs along.
+    pub fn channel_of(&self, side: usize) -> Option<&Channel> {
+        let mut channels = self.channels.iter();
+        channels.find(|channel| channel.out == side || channel.back == side)
+    }
+
+    /// Whether both sides of every channel have one stage, or one is a barrier.
+    pub fn have_channels_one_stage(&self, boundary: &Boundary) -> bool {
+        let stage_m = |side: usize| {
+            let side = boundary.sides.get(side);
+            side.filter(|side| side.condition != Condition::NoFlow)
+                .map(|side| side.stage_m[0])
+        };
+        self.channels.iter().all(|channel| {
+            let stages_m = stage_m(channel.out).zip(stage_m(channel.back));
+            stages_m.is_none_or(|(one, other)| one == other)
+        })
+    }
+
+    /// The chains in an order in which those that a channel leads into come
+    /// last: they stand after the one that they continue.
+    fn starts(&self, boundary: &Boundary) -> Vec<usize> {
+        let is_led_into = |number: &usize| {
+            let mut channels = self.channels.iter();
+            channels.any(|channel| chain_of(boundary, channel.back) == *number)
+        };
+        let (last, mut first): (Vec<_>, Vec<_>) = (0..boundary.chains.len()).partition(is_led_into);
+        first.extend(last);
+        first
+    }
+
     /// Appends the sides of a chain; the number of its last side.
     fn add_chain(
         &mut self,
         boundary: &Boundary,
         number: usize,
         scale_m: f64,
-        count: &mut usize,
         chain: &mut Vec<Side>,
     ) -> Option<usize> {
         let range = boundary.chains.get(number)?.sides.clone();
         for index in range.clone() {
             let side = boundary.sides.get(index)?;
-            let lead_m = self.leads_m.get(index).copied().unwrap_or_default();
-            let is_channel = self.is_channel.get(index).copied().unwrap_or_default();
-            let pieces = pieces(side, lead_m, is_channel, scale_m);
+            let channel = self.channel_of(index).copied();
+            let pieces = pieces(side, channel, scale_m);
+            let count = self.heads_m.len();
             self.heads_m.extend(pieces.iter().map(|_| side.stage_m));
             if let Some(part) = self.parts.get_mut(index) {
-                *part = *count..*count + pieces.len();
+                *part = count..self.heads_m.len();
             }
-            *count += pieces.len();
             chain.extend(pieces);
         }
         range.last()
-    }
-
-    /// How far two half-lines side by side are drawn before they count as such.
-    fn set_leads(&mut self, pair: &Abreast, places: &[Complex64]) {
-        let along = |place: Complex64| ((place - pair.start) * pair.direction.conj()).re;
-        let back_m = along(pair.end);
-        let abreast_m = if pair.is_channel {
-            let farthest_m = places.iter().map(|place| along(*place)).fold(0.0, f64::max);
-            farthest_m.max(back_m) + WIDTHS * pair.width_m
-        } else {
-            back_m.max(0.0)
-        };
-        for (side, lead_m) in [(pair.out, abreast_m), (pair.back, abreast_m - back_m)] {
-            let slots = self
-                .leads_m
-                .get_mut(side)
-                .zip(self.is_channel.get_mut(side));
-            if let Some((lead, is_channel)) = slots {
-                (*lead, *is_channel) = (lead_m, pair.is_channel);
-            }
-        }
-        if pair.is_channel {
-            self.channels.push(Channel {
-                start: pair.start,
-                direction: pair.direction,
-                width_m: pair.width_m,
-                length_m: abreast_m,
-            });
-        }
-    }
-
-    /// The closed end of a channel.
-    fn wall(&mut self, pair: &Abreast, count: &mut usize) -> Side {
-        let lead_m = |side: usize| self.leads_m.get(side).copied().unwrap_or_default();
-        let from = pair.start + pair.direction * lead_m(pair.out);
-        let to = pair.end + pair.direction * lead_m(pair.back);
-        self.heads_m.push([0.0; 2]);
-        *count += 1;
-        Side::closing(from, to)
     }
 
     /// What a range along a side of the boundary covers of one of its pieces;
@@ -185,52 +181,56 @@ impl Sides {
         piece: usize,
         along: &Range<f64>,
     ) -> Range<f64> {
-        let lead_m = self.leads_m.get(side).copied().unwrap_or_default();
-        let is_channel = self.is_channel.get(side).copied().unwrap_or_default();
-        let whole = match *curve {
-            Curve::Arc { sweep_rad, .. } => {
+        let whole = match (*curve, self.channel_of(side)) {
+            (Curve::Arc { sweep_rad, .. }, _) => {
                 let sweep_rad = sweep_rad.abs() / arcs(sweep_rad) as f64;
                 piece as f64 * sweep_rad..(piece + 1) as f64 * sweep_rad
             }
-            Curve::RayOut { .. } if lead_m > 0.0 && piece == 0 => 0.0..lead_m,
-            Curve::RayOut { .. } => lead_m..f64::INFINITY,
-            Curve::RayIn { .. } if piece == 0 && !is_channel => f64::NEG_INFINITY..-lead_m,
-            Curve::RayIn { .. } => -lead_m..0.0,
-            Curve::Segment { .. } => curve.along(),
+            (Curve::RayOut { .. }, Some(channel)) => 0.0..channel.length_m,
+            (Curve::RayIn { .. }, Some(channel)) => -channel.back_length_m()..0.0,
+            _ => curve.along(),
         };
         along.start.max(whole.start)..along.end.min(whole.end)
     }
 }
 
-/// The half-lines that run to infinity side by side.
-fn pairs(boundary: &Boundary) -> Vec<Abreast> {
-    let pair = |opening: &Opening| {
+/// The channels of a boundary, their walls beyond all places drawn.
+fn channels(boundary: &Boundary, places: &[Complex64]) -> Vec<Channel> {
+    let channel = |opening: &Opening| {
         let (out, back) = (opening.out, opening.back);
         let (one, other) = (boundary.sides.get(out)?, boundary.sides.get(back)?);
-        let is_barrier = |side: &&BoundarySide| side.condition == Condition::NoFlow;
-        Some(Abreast {
+        let width_m = opening.width_m?;
+        let mut channel = Channel {
             out,
             back,
             start: one.curve.from()?,
             end: other.curve.to()?,
             direction: one.curve.heading(0.0),
-            width_m: opening.width_m?,
-            is_channel: [one, other].iter().all(is_barrier),
-        })
+            width_m,
+            length_m: 0.0,
+        };
+        let drawn = places.iter().map(|place| channel.along_m(*place));
+        let fading_m = 2.0 * width_m / PI + (skin_m(one, other) * width_m).sqrt();
+        channel.length_m = drawn.fold(0.0, f64::max) + FADED * fading_m;
+        Some(channel)
     };
-    boundary.openings().iter().filter_map(pair).collect()
+    boundary.openings().iter().filter_map(channel).collect()
 }
 
-/// The chains in an order in which those that a channel leads into come last:
-/// they stand after the one that they continue.
-fn starts(boundary: &Boundary, pairs: &[Abreast]) -> Vec<usize> {
-    let is_led_into = |number: &usize| {
-        let mut channels = pairs.iter().filter(|pair| pair.is_channel);
-        channels.any(|pair| chain_of(boundary, pair.back) == *number)
+/// The skin that slows the fading between two sides: the thinner of two, or
+/// the one opposite a barrier.
+fn skin_m(one: &BoundarySide, other: &BoundarySide) -> f64 {
+    let skin_m = |side: &BoundarySide| match side.condition {
+        Condition::Head => 0.0,
+        Condition::NoFlow => f64::INFINITY,
+        Condition::Clogged { skin_m } => skin_m,
     };
-    let (last, mut first): (Vec<_>, Vec<_>) = (0..boundary.chains.len()).partition(is_led_into);
-    first.extend(last);
-    first
+    let thinner_m = skin_m(one).min(skin_m(other));
+    if thinner_m.is_finite() {
+        thinner_m
+    } else {
+        0.0
+    }
 }
 
 fn chain_of(boundary: &Boundary, side: usize) -> usize {
@@ -240,7 +240,7 @@ fn chain_of(boundary: &Boundary, side: usize) -> usize {
 }
 
 /// The sides of a region that make one side of a boundary.
-fn pieces(side: &BoundarySide, lead_m: f64, is_channel: bool, scale_m: f64) -> Vec<Side> {
+fn pieces(side: &BoundarySide, channel: Option<Channel>, scale_m: f64) -> Vec<Side> {
     let condition = match side.condition {
         Condition::Head => potential::Condition::Head,
         Condition::NoFlow => potential::Condition::Flux,
@@ -248,19 +248,14 @@ fn pieces(side: &BoundarySide, lead_m: f64, is_channel: bool, scale_m: f64) -> V
     };
     match side.curve {
         Curve::Segment { from, to } => vec![Side::segment(from, to, condition)],
-        Curve::RayIn { to, from_direction } => {
-            let start = to + from_direction * lead_m;
-            let lead = (lead_m > 0.0).then(|| Side::segment(start, to, condition));
-            let ray =
-                (!is_channel).then(|| Side::ray_in(start, from_direction, scale_m, condition));
-            ray.into_iter().chain(lead).collect()
-        }
-        Curve::RayOut { from, direction } => {
-            let start = from + direction * lead_m;
-            let lead = (lead_m > 0.0).then(|| Side::segment(from, start, condition));
-            let ray = (!is_channel).then(|| Side::ray_out(start, direction, scale_m, condition));
-            lead.into_iter().chain(ray).collect()
-        }
+        Curve::RayIn { to, from_direction } => vec![match channel {
+            Some(channel) => Side::segment(channel.wall().1, to, condition),
+            None => Side::ray_in(to, from_direction, scale_m, condition),
+        }],
+        Curve::RayOut { from, direction } => vec![match channel {
+            Some(channel) => Side::segment(from, channel.wall().0, condition),
+            None => Side::ray_out(from, direction, scale_m, condition),
+        }],
         Curve::Arc {
             centre,
             radius,
