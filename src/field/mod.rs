@@ -151,6 +151,15 @@ impl WellField {
         self.outline.frame.gradient_to_site(before - pumped)
     }
 
+    /// Flow of water through the aquifer's whole thickness, m³/d for each
+    /// metre of width across it: −T·∇h, T the tensor of an anisotropic
+    /// aquifer. NaN outside the aquifer, zero within a well's rim.
+    pub fn flow_m2_d(&self, point: Point) -> Vector {
+        let gradient = self.head_gradient(point);
+        let stretch = &self.outline.frame.stretch;
+        stretch.conductivity_over_mean(gradient) * -self.transmissivity_m2_d
+    }
+
     /// Drawdown, metres, that the well `Site::wells[well]` of this aquifer
     /// causes at a point; that of its rim within its rim. Well loss is left
     /// out. NaN where the aquifer holds no such well or not the point.
