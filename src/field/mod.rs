@@ -127,6 +127,15 @@ impl WellField {
             .head_m(z, self.green.as_ref(), &self.outline.shape)
     }
 
+    /// Heads before any pumping, metres, in point order; NaN outside. Parallel.
+    pub fn ambient_heads_m(&self, points: &[Point]) -> Vec<f64> {
+        points
+            .par_iter()
+            .with_min_len(POINTS_A_TASK)
+            .map(|&point| self.ambient_head_m(point))
+            .collect()
+    }
+
     /// Gradient of the head, metres a metre; NaN outside the aquifer, zero
     /// within a well's rim.
     pub fn head_gradient(&self, point: Point) -> Vector {

@@ -29,6 +29,15 @@ impl ScalarField for Drawdowns<'_> {
     }
 }
 
+/// The heads in one aquifer before any pumping, as something to sample.
+struct AmbientHeads<'a>(&'a WellField);
+
+impl ScalarField for AmbientHeads<'_> {
+    fn values(&self, points: &[Point]) -> Vec<f64> {
+        on_edge_too(self.0, points, WellField::ambient_heads_m)
+    }
+}
+
 /// Values in an aquifer and on its edge. A vertex of the edge that rounding
 /// has put outside takes the value a micrometre away, on the side where there
 /// is one: heads differ by less than 1e-7 m there. A chord of a lake's shore
@@ -105,8 +114,13 @@ impl<'a> Survey<'a> {
                 spacing_m: window.spacing_m,
             };
             let mesh = contours::mesh(&region, &bumps(solution, field))?;
-            let heads_m = contours::sample(&mesh, &Heads(field))?;
+            // Superposing the wells is what takes long: once is enough.
             let drawdowns_m = contours::sample(&mesh, &Drawdowns(field))?;
+            let ambient_m = contours::sample(&mesh, &AmbientHeads(field))?;
+            let both_m = ambient_m.iter().zip(&drawdowns_m);
+            let heads_m = both_m
+                .map(|(ambient_m, drawdown_m)| ambient_m - drawdown_m)
+                .collect();
             aquifers.push(SurveyedAquifer {
                 field,
                 mesh,

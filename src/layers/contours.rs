@@ -59,13 +59,6 @@ fn refusal(error: &LevelError) -> Refusal {
     }
 }
 
-/// Contours and bands, drawn when first asked for: several outputs show them.
-#[derive(Debug, Default)]
-pub struct Drawn {
-    heads: OnceLock<Vec<ContourLine>>,
-    drawdowns: OnceLock<(Vec<ContourLine>, Vec<Band>)>,
-}
-
 /// The head contours.
 pub fn head_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
     Ok(lines("head", all_head_lines(planned)?, planned.units()))

@@ -26,7 +26,7 @@ pub mod words;
 mod write;
 
 pub use caution::CAUTION;
-pub use contours::{Drawn, Levels};
+pub use contours::Levels;
 pub use interference_csv::safe_cell;
 pub use map_svg::map_svg;
 pub use output::{OUTPUTS, Output, UnknownOutput, make, outputs_named};
@@ -34,7 +34,9 @@ pub use property::{Property, Quantity};
 pub use units::{Properties, Units, number};
 pub use write::{OutputFile, WriteError, write_all};
 
-use crate::contours::ContourError;
+use std::sync::OnceLock;
+
+use crate::contours::{Band, ContourError, ContourLine};
 use crate::findings::{Findings, FlagCode, Solution, Survey, Who};
 use crate::plan::Plan;
 
@@ -68,6 +70,14 @@ impl Planned<'_> {
         }
         notes
     }
+}
+
+/// What several outputs show, made when first asked for.
+#[derive(Debug, Default)]
+pub struct Drawn {
+    heads: OnceLock<Vec<ContourLine>>,
+    drawdowns: OnceLock<(Vec<ContourLine>, Vec<Band>)>,
+    cells: OnceLock<raster::Cells>,
 }
 
 /// What the reader of a plan's results should know: assumptions made where
