@@ -1,9 +1,9 @@
 //! `mirrorwell layers`: what a run writes.
 
-use comfy_table::{Table, presets};
+use comfy_table::{ColumnConstraint, ContentArrangement, Table, presets};
 use serde_json::{Value, json};
 
-use super::console::{Console, wrapped};
+use super::console::{COLUMNS, Console, wrapped};
 use super::failure::Failure;
 use crate::layers::{OUTPUTS, Output, Property, Units};
 use crate::plan::UnitSystem;
@@ -45,19 +45,27 @@ fn entry(output: &Output) -> String {
         return text;
     }
     let mut table = Table::new();
-    table.load_preset(presets::NOTHING);
+    table
+        .load_preset(presets::NOTHING)
+        .set_content_arrangement(ContentArrangement::Dynamic)
+        .set_width(COLUMNS as u16)
+        .set_header(["  property", "in a us plan", "unit", "meaning"]);
     for property in output.properties {
-        let names = SYSTEMS.map(|system| property.name(Units(system)));
-        let units = SYSTEMS.map(|system| property.unit(Units(system)));
-        let kind = match units.iter().all(String::is_empty) {
-            true => property.type_name().to_owned(),
-            false => either(units),
+        let [name, us_name] = SYSTEMS.map(|system| property.name(Units(system)));
+        let us_name = if us_name == name {
+            String::new()
+        } else {
+            us_name
         };
-        table.add_row([format!("   {}", either(names)), kind]);
-        table.add_row([format!("     {}", property.about), String::new()]);
+        let unit = either(SYSTEMS.map(|system| property.unit(Units(system))));
+        let about = property.about.to_owned();
+        table.add_row([format!("  {name}"), us_name, unit, about]);
+    }
+    for column in table.column_iter_mut().take(3) {
+        column.set_constraint(ColumnConstraint::ContentWidth);
     }
     let lines = table.to_string();
-    let lines = lines.lines().map(|line| line.trim_end().to_owned() + "\n");
+    let lines = lines.lines().map(|line| format!(" {}\n", line.trim_end()));
     text + &lines.collect::<String>()
 }
 
@@ -66,7 +74,7 @@ fn either([metric, us]: [String; 2]) -> String {
     if metric == us {
         metric
     } else {
-        format!("{metric} (us: {us})")
+        format!("{metric} or {us}")
     }
 }
 

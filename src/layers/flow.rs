@@ -12,14 +12,21 @@ use super::layer::Layer;
 use super::property::Quantity;
 use super::units::Properties;
 use crate::field::WellField;
+use crate::plan::Plan;
 use crate::site::{Point, Vector};
 
 /// Arrows on the map's longer side.
 const ARROWS: f64 = 20.0;
 
 /// Said where a plan gives no thickness.
-pub const NO_THICKNESS: &str = "flow.geojson gives the direction of flow but no flux: a flux needs \
+const NO_THICKNESS: &str = "flow.geojson gives the direction of flow but no flux: a flux needs \
 the aquifer's `thickness`, and the plan gives its transmissivity alone";
+
+/// What the reader of the layer must know.
+pub fn note(plan: &Plan) -> Option<&'static str> {
+    let thickness = plan.site.aquifer.thickness;
+    thickness.is_none().then_some(NO_THICKNESS)
+}
 
 /// The layer.
 pub fn layer(planned: &Planned<'_>) -> Layer {
@@ -30,7 +37,10 @@ pub fn layer(planned: &Planned<'_>) -> Layer {
         .aquifer
         .thickness
         .map(|length| length.si());
-    let mut layer = Layer::default();
+    let mut layer = Layer {
+        note: note(planned.plan),
+        ..Layer::default()
+    };
     for at in places(planned) {
         let Some(flow_m2_d) = planned
             .solution

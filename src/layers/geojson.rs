@@ -59,7 +59,10 @@ pub fn document(plan: &Plan, layer: &Layer) -> Result<FeatureCollection, LayerEr
     Ok(FeatureCollection {
         bbox: writer.bounds.map(|bounds| bounds.to_vec()),
         features,
-        foreign_members: Some(Map::from_iter([("caution".into(), CAUTION.into())])),
+        foreign_members: Some(Map::from_iter(
+            std::iter::once(("caution".into(), CAUTION.into()))
+                .chain(layer.note.map(|note| ("note".into(), note.into()))),
+        )),
     })
 }
 

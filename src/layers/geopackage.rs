@@ -102,7 +102,7 @@ impl Table<'_> {
                 Some((geometry, feature))
             })
             .collect();
-        self.describe(database, &features)?;
+        self.describe(database, &features, layer.note)?;
         let columns: Vec<String> = self
             .output
             .properties
@@ -135,6 +135,7 @@ impl Table<'_> {
         &self,
         database: &Connection,
         features: &[(Encoded, &Feature)],
+        note: Option<&str>,
     ) -> rusqlite::Result<()> {
         let name = self.output.name;
         let bounds = features.iter().map(|(geometry, _)| geometry.bounds);
@@ -142,7 +143,8 @@ impl Table<'_> {
             [w.min(west), s.min(south), e.max(east), n.max(north)]
         });
         let [west, south, east, north] = all.map_or([None; 4], |all| all.map(Some));
-        let description = format!("{}. {CAUTION}", self.output.about);
+        let note = note.map_or_else(String::new, |note| format!(" Note: {note}."));
+        let description = format!("{}.{note} {CAUTION}", self.output.about);
         database.execute(
             "INSERT INTO gpkg_contents VALUES (?1, 'features', ?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)",
             params![

@@ -31,6 +31,8 @@ pub struct Feature {
 pub struct Layer {
     /// In the order in which they are written.
     pub features: Vec<Feature>,
+    /// What their reader must know besides the caution.
+    pub note: Option<&'static str>,
 }
 
 impl Layer {

@@ -65,9 +65,7 @@ impl Planned<'_> {
     /// What the reader should know: assumptions made where the plan was silent.
     pub fn notes(&self) -> Vec<String> {
         let mut notes = notes(self.plan, self.solution);
-        if self.plan.site.aquifer.thickness.is_none() {
-            notes.push(flow::NO_THICKNESS.into());
-        }
+        notes.extend(flow::note(self.plan).map(str::to_owned));
         notes
     }
 }

@@ -243,7 +243,7 @@ pub const OUTPUTS: &[Output] = &[
 
 /// A name that no output has.
 #[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
-#[error("no output is called {name:?}{}; the outputs are {all}", hint.map_or_else(String::new, |near| format!(", did you mean {near}?")))]
+#[error("no output is called `{name}`{}; the outputs are {all}", write_instead(*hint))]
 pub struct UnknownOutput {
     /// What was asked for.
     pub name: String,
@@ -251,6 +251,11 @@ pub struct UnknownOutput {
     pub hint: Option<&'static str>,
     /// All outputs, with commas between.
     pub all: String,
+}
+
+/// The remedy where a name resembles one.
+fn write_instead(hint: Option<&str>) -> String {
+    hint.map_or_else(String::new, |near| format!("; write `{near}`"))
 }
 
 /// The outputs of these names, in the order of the list, once each.

@@ -123,6 +123,7 @@ fn a_plan_without_a_thickness_gets_directions_without_flux_and_a_note() {
     let layer: Value = serde_json::from_slice(&layer).unwrap();
     let features = layer["features"].as_array().unwrap();
     assert!(features.len() > 50);
+    assert!(layer["note"].as_str().unwrap().contains("no flux"));
     for feature in features {
         assert!(feature["properties"]["azimuth"].is_number());
         assert!(feature["properties"]["flux_m_per_d"].is_null());

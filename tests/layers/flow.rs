@@ -105,7 +105,7 @@ extent = [-100.0, -100.0, 300.0, 300.0]
     // 20 × 20 places, a quarter of the map beyond the river.
     assert_eq!(features.len(), 300);
     let (west, east): (Vec<_>, Vec<_>) = features.iter().partition(|feature| {
-        feature["geometry"]["coordinates"][0].as_f64().unwrap() < 15.0 + 50.0 / 74_600.0
+        feature["geometry"]["coordinates"][0].as_f64().unwrap() < 15.0 + 40.0 / 74_600.0
     });
     assert_eq!(west.len(), 40);
     assert_eq!(east.len(), 260);

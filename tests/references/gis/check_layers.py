@@ -13,6 +13,7 @@ and the styles are judged by the modules beside this one.
 """
 
 import argparse
+import csv
 import json
 import os
 import pathlib
@@ -190,6 +191,21 @@ def check_boundaries(plan, document, grid, metres, faults):
                 faults.expect(off <= NEAR_M, f"boundaries: {edge['name']} is {off:.3f} m off its line")
 
 
+def check_names(plan, folder, documents, faults):
+    """Names come back from tables and layers as they were."""
+    for key in ("well", "neighbour"):
+        names = [entry["name"] for entry in plan.get(key, [])]
+        layer = [feature["properties"]["name"] for feature in documents[f"{key}s"]["features"]]
+        faults.expect(set(names) <= set(layer), f"{key}s: names are lost: {set(names) - set(layer)}")
+    with open(folder / "interference.csv", encoding="utf-8", newline="") as table:
+        heading, *rows = csv.reader(table)
+    cells = heading[1:] + [row[0] for row in rows]
+    for cell in cells:
+        faults.expect(not cell.startswith(("=", "+", "-", "@", "\t", "\r")), f"interference: {cell} may be run")
+    wanted = [feature["properties"]["name"] for name in ("wells", "wells", "neighbours") for feature in documents[name]["features"]]
+    faults.expect([cell.removeprefix("'") for cell in cells] == wanted, f"interference: names {cells}")
+
+
 def check_flow(document, faults):
     for feature in document["features"]:
         azimuth = feature["properties"].get("azimuth", -1.0)
@@ -231,6 +247,7 @@ def main():
         placed = {well["name"]: well["at"] for well in plan.get("well", []) if "at" in well}
         check_wells(plan, documents["wells"], grid, metres, faults)
         check_boundaries(plan, documents["boundaries"], grid, metres, faults)
+        check_names(plan, folder, documents, faults)
         check_flow(documents["flow"], faults)
         packages.check(folder / "results.gpkg", documents, wanted, crs, placed, NEAR_M / metres, faults)
         rasters.check(folder, arguments.plan, plan, arguments.program, crs, units["m"], faults)
