@@ -75,7 +75,6 @@ impl Planned<'_> {
 pub struct Drawn {
     heads: OnceLock<Vec<ContourLine>>,
     drawdowns: OnceLock<(Vec<ContourLine>, Vec<Band>)>,
-    cells: OnceLock<raster::Cells>,
 }
 
 /// What the reader of a plan's results should know: assumptions made where

@@ -6,74 +6,38 @@
 
 use super::geotiff::{self, Picture};
 use super::{LayerError, Planned};
-use crate::site::{Point, Vector};
-
-/// Rows that are computed at a time.
-const ROWS_AT_A_TIME: usize = 64;
-
-/// Heads and drawdowns of all cells in the plan's unit of length, row by row
-/// from the north-west, NaN outside. Seven digits are what the files hold.
-#[derive(Debug, Default)]
-pub(super) struct Cells {
-    heads: Vec<f32>,
-    drawdowns: Vec<f32>,
-}
+use crate::site::Vector;
 
 /// The heads as a file.
 pub fn heads(planned: &Planned<'_>) -> Result<Vec<u8>, LayerError> {
-    file(planned, "head", &cells(planned).heads)
+    file(planned, "head", &planned.survey.at_nodes().heads_m)
 }
 
 /// The drawdowns as a file.
 pub fn drawdowns(planned: &Planned<'_>) -> Result<Vec<u8>, LayerError> {
-    file(planned, "drawdown", &cells(planned).drawdowns)
+    file(planned, "drawdown", &planned.survey.at_nodes().drawdowns_m)
 }
 
-/// The middle of a cell.
-fn node(planned: &Planned<'_>, column: usize, row: usize) -> Point {
-    let window = &planned.survey.window;
-    window.extent.min + Vector::new(column as f64, row as f64) * window.spacing_m
-}
-
-/// Both fields, computed once: superposing the wells is what takes long.
-fn cells<'p>(planned: &'p Planned<'_>) -> &'p Cells {
-    planned.drawn.cells.get_or_init(|| {
-        let units = planned.units();
-        let (columns, rows) = planned.survey.window.node_counts();
-        let mut cells = Cells::default();
-        // A picture's rows run from north to south.
-        let southward: Vec<usize> = (0..rows).rev().collect();
-        for some_rows in southward.chunks(ROWS_AT_A_TIME) {
-            let nodes: Vec<Point> = some_rows
-                .iter()
-                .flat_map(|&row| (0..columns).map(move |column| node(planned, column, row)))
-                .collect();
-            let drawdowns_m = planned.solution.drawdowns_m(&nodes);
-            let ambient_m = planned.solution.ambient_heads_m(&nodes);
-            for (ambient_m, drawdown_m) in ambient_m.into_iter().zip(drawdowns_m) {
-                cells
-                    .heads
-                    .push(units.length(ambient_m - drawdown_m) as f32);
-                cells.drawdowns.push(units.length(drawdown_m) as f32);
-            }
-        }
-        cells
-    })
-}
-
-/// One field as a file.
-fn file(planned: &Planned<'_>, name: &str, values: &[f32]) -> Result<Vec<u8>, LayerError> {
-    let window = &planned.survey.window;
+/// Values at the nodes, row by row from the south-west, as a file in the
+/// plan's unit of length.
+fn file(planned: &Planned<'_>, name: &str, values_m: &[f64]) -> Result<Vec<u8>, LayerError> {
+    let (window, units) = (&planned.survey.window, planned.units());
     let (columns, rows) = window.node_counts();
-    let half = Vector::new(-0.5, 0.5) * window.spacing_m;
-    let north_west = node(planned, 0, rows.saturating_sub(1)) + half;
+    // A picture's rows run from north to south; seven digits are what it holds.
+    let southward = values_m.chunks(columns.max(1)).rev().flatten();
+    let values: Vec<f32> = southward
+        .map(|&value_m| units.length(value_m) as f32)
+        .collect();
+    let north_west_node = Vector::new(0.0, rows.saturating_sub(1) as f64);
+    let half_a_cell = Vector::new(-0.5, 0.5);
+    let north_west = window.extent.min + (north_west_node + half_a_cell) * window.spacing_m;
     geotiff::file(&Picture {
         crs: &planned.plan.crs,
         columns,
-        values,
+        values: &values,
         corner: planned.plan.to_plan_xy(north_west),
         cell: window.spacing_m / planned.plan.crs.metres_per_unit(),
         name,
-        unit: planned.units().length_ending(),
+        unit: units.length_ending(),
     })
 }
