@@ -57,7 +57,10 @@ fn entry(output: &Output) -> String {
         } else {
             us_name
         };
-        let unit = either(SYSTEMS.map(|system| property.unit(Units(system))));
+        let unit = match either(SYSTEMS.map(|system| property.unit(Units(system)))) {
+            none if none.is_empty() => property.type_name().to_owned(),
+            unit => unit,
+        };
         let about = property.about.to_owned();
         table.add_row([format!("  {name}"), us_name, unit, about]);
     }
