@@ -253,7 +253,8 @@ def main():
         rasters.check(folder, arguments.plan, plan, arguments.program, crs, units["m"], faults)
         for name in [*documents, "head", "drawdown"]:
             properties = {key.rstrip("?") for key in wanted.get(name, {})}
-            styles.check(folder / f"{name}.sld", properties, faults)
+            features = documents.get(name, {"features": []})["features"]
+            styles.check(folder / f"{name}.sld", properties, features, faults)
     if faults:
         sys.exit("\n".join(dict.fromkeys(faults)))
     count = sum(len(document["features"]) for document in documents.values())

@@ -4,6 +4,7 @@ properties that the layer has.
 The order is that of OGC 02-070, annex A, from memory.
 """
 
+import re
 import xml.etree.ElementTree as tree
 
 SLD, OGC = "{http://www.opengis.net/sld}", "{http://www.opengis.net/ogc}"
@@ -41,8 +42,8 @@ ORDER = {
 MARKS = {"square", "circle", "triangle", "star", "cross", "x"}
 
 
-def check(path, properties, faults):
-    """`properties` are the names that the layer has."""
+def check(path, properties, features, faults):
+    """`properties` are the names that the layer has, `features` what it holds."""
     expect = lambda holds, what: faults.expect(holds, f"{path.name}: {what}")
     try:
         root = tree.parse(path).getroot()
@@ -61,6 +62,36 @@ def check(path, properties, faults):
     for mark in root.iter(SLD + "WellKnownName"):
         expect(mark.text in MARKS, f"no mark is called {mark.text}")
     check_classes(root, expect)
+    for feature in features:
+        drawn = sum(fits(rule, feature["properties"]) for rule in root.iter(SLD + "Rule"))
+        expect(drawn > 0, f"no rule draws {feature['properties']}")
+        if path.stem == "drawdown_bands":
+            # Its own band's rule, and the one that draws every limit.
+            expect(drawn == 2, f"{drawn} rules draw {feature['properties']}")
+
+
+def fits(rule, properties):
+    """Whether a rule draws a feature, as OGC 02-059 (Filter 1.0.0) has it."""
+    condition = rule.find(OGC + "Filter")
+    return condition is None or holds(condition[0], properties)
+
+
+def holds(condition, properties):
+    name = condition.tag.removeprefix(OGC)
+    if name == "And":
+        return all(holds(part, properties) for part in condition)
+    value, literal = properties[condition[0].text], condition[1].text
+    if name == "PropertyIsLike":
+        pattern = "".join({"*": ".*", "?": "."}.get(letter, re.escape(letter)) for letter in literal)
+        return re.fullmatch(pattern, value, re.DOTALL) is not None
+    if name == "PropertyIsEqualTo":
+        return str(value) == literal
+    compare = {
+        "PropertyIsLessThan": float.__lt__,
+        "PropertyIsGreaterThan": float.__gt__,
+        "PropertyIsGreaterThanOrEqualTo": float.__ge__,
+    }[name]
+    return compare(float(value), float(literal))
 
 
 def check_order(element, expect):
