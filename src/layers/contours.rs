@@ -66,7 +66,7 @@ pub fn head_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
 
 /// The drawdown contours.
 pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
-    Ok(lines("drawdown", &drawdowns(planned)?.0, planned.units()))
+    Ok(lines("drawdown", all_drawdown_lines(planned)?, planned.units()))
 }
 
 /// Contours as a layer, each with its level.
@@ -106,6 +106,11 @@ pub fn all_head_lines<'p>(planned: &'p Planned<'_>) -> Result<&'p [ContourLine],
         Ok(lines)
     })
     .map(Vec::as_slice)
+}
+
+/// The drawdown contours, aquifer by aquifer, level by level.
+pub fn all_drawdown_lines<'p>(planned: &'p Planned<'_>) -> Result<&'p [ContourLine], LayerError> {
+    drawdowns(planned).map(|(lines, _)| lines.as_slice())
 }
 
 /// The bands of drawdown, aquifer by aquifer, from the lowest up.
