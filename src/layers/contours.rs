@@ -66,7 +66,11 @@ pub fn head_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
 
 /// The drawdown contours.
 pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
-    Ok(lines("drawdown", all_drawdown_lines(planned)?, planned.units()))
+    Ok(lines(
+        "drawdown",
+        all_drawdown_lines(planned)?,
+        planned.units(),
+    ))
 }
 
 /// Contours as a layer, each with its level.
