@@ -7,15 +7,15 @@ use comfy_table::{CellAlignment, Table};
 
 use super::console::wrapped;
 use crate::layers::words::{Words, one_line, percent};
-use crate::layers::{CAUTION, OUTPUTS, Planned};
+use crate::layers::{CAUTION, Output, Planned};
 
 /// Rows of a table that are printed; the layers hold all.
 const MOST_ROWS: usize = 40;
 /// Flags that are printed; `findings.json` holds all.
 const MOST_FLAGS: usize = 25;
 
-/// The summary of a run whose files are in `out`.
-pub fn of(planned: &Planned<'_>, out: &Path) -> String {
+/// The summary of a run whose `outputs` are in the folder `out`.
+pub fn of(planned: &Planned<'_>, outputs: &[&Output], out: &Path) -> String {
     let mut text = format!("{}\n", one_line(&planned.plan.title));
     text.push_str(&recognised(planned));
     text.push_str(&totals(planned));
@@ -29,7 +29,7 @@ pub fn of(planned: &Planned<'_>, out: &Path) -> String {
     text.push('\n');
     text.push_str(&flags(planned));
     text.push('\n');
-    text.push_str(&files(out));
+    text.push_str(&files(outputs, out));
     text.push('\n');
     text.push_str(&wrapped(CAUTION, "", ""));
     text
@@ -276,8 +276,13 @@ fn flags(planned: &Planned<'_>) -> String {
 }
 
 /// Where the files are.
-fn files(out: &Path) -> String {
-    let names: Vec<&str> = OUTPUTS.iter().map(|(name, _)| *name).collect();
+fn files(outputs: &[&Output], out: &Path) -> String {
+    let styled = outputs.iter().any(|output| output.files.len() > 1);
+    let names: Vec<&str> = outputs
+        .iter()
+        .filter_map(|output| output.files.first().copied())
+        .chain(styled.then_some("and a style (.sld) for each layer"))
+        .collect();
     wrapped(
         &names.join(", "),
         &format!("Written to {}: ", one_line(&out.display().to_string())),

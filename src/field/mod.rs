@@ -149,6 +149,15 @@ impl WellField {
             .head_m(z, self.green.as_ref(), &self.outline.shape)
     }
 
+    /// Heads before any pumping, metres, in point order; NaN outside. Parallel.
+    pub fn ambient_heads_m(&self, points: &[Point]) -> Vec<f64> {
+        points
+            .par_iter()
+            .with_min_len(POINTS_A_TASK)
+            .map(|&point| self.ambient_head_m(point))
+            .collect()
+    }
+
     /// Gradient of the head, metres a metre; NaN outside the aquifer, zero
     /// within a well's rim.
     pub fn head_gradient(&self, point: Point) -> Vector {
@@ -171,6 +180,15 @@ impl WellField {
             .map(|well| self.strength_m(well) * self.green.gradient(z, well.pole))
             .sum();
         self.outline.frame.gradient_to_site(before - pumped)
+    }
+
+    /// Flow of water through the aquifer's whole thickness, m³/d for each
+    /// metre of width across it: −T·∇h, T the tensor of an anisotropic
+    /// aquifer. NaN outside the aquifer, zero within a well's rim.
+    pub fn flow_m2_d(&self, point: Point) -> Vector {
+        let gradient = self.head_gradient(point);
+        let stretch = &self.outline.frame.stretch;
+        stretch.conductivity_over_mean(gradient) * -self.transmissivity_m2_d
     }
 
     /// Drawdown, metres, that the well `Site::wells[well]` of this aquifer

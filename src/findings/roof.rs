@@ -78,11 +78,14 @@ fn lows(solution: &Solution, wells: &[WellFinding], survey: &Survey<'_>, roof_m:
     let may_be_low = survey
         .head_range_m()
         .is_none_or(|[low_m, _]| low_m < roof_m);
-    let nodes: Vec<Point> = window.nodes().filter(|_| may_be_low).collect();
-    let heads_m = solution.heads_m(&nodes);
-    let on_grid = nodes
-        .into_iter()
-        .zip(heads_m)
+    let heads_m: &[f64] = if may_be_low {
+        &survey.at_nodes().heads_m
+    } else {
+        &[]
+    };
+    let on_grid = window
+        .nodes()
+        .zip(heads_m.iter().copied())
         .filter(|&(_, head_m)| head_m < roof_m)
         .map(|(at, head_m)| {
             let ambient_m = solution.ambient_head_m(at);

@@ -4,16 +4,14 @@
 //! One feature a river or barrier, its parts joined; where its parts lie
 //! apart they are several features, each with the whole inflow.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::Planned;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned};
 use crate::site::{Edge, EdgeKind, EdgeShape, Extent, Point, Vector};
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for (finding, edge) in planned.findings.boundaries.iter().zip(&site.edges) {
         let kind = match edge.kind {
@@ -25,10 +23,10 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 .with("name", edge.name.as_str())
                 .with("kind", kind)
                 .rate("inflow", finding.inflow_m3_d());
-            layer.add_line(&line, properties)?;
+            layer.add_line(line, properties);
         }
     }
-    Ok(layer.finish())
+    layer
 }
 
 /// The course of an edge within the map: once where two aquifers share it,

@@ -13,6 +13,7 @@ mod symbols;
 use super::{LayerError, Planned};
 use crate::site::Extent;
 use canvas::Canvas;
+pub(super) use symbols::{band_colour, band_share, mixed};
 
 /// Width of the map itself, pixels.
 const WIDTH: f64 = 760.0;
@@ -26,12 +27,12 @@ pub fn map_svg(planned: &Planned<'_>) -> Result<String, LayerError> {
     let mut canvas = Canvas::new(extent, WIDTH);
     symbols::bands(&mut canvas, planned)?;
     let heads = super::contours::all_head_lines(planned)?;
-    symbols::contours(&mut canvas, &heads);
+    symbols::contours(&mut canvas, heads);
     symbols::neighbour_areas(&mut canvas, planned);
     symbols::edges(&mut canvas, planned);
     let mut taken = labels::Taken::default();
     labels::names(&mut canvas, planned, &mut taken);
-    labels::contours(&mut canvas, planned, &heads, &mut taken);
+    labels::contours(&mut canvas, planned, heads, &mut taken);
     symbols::neighbours(&mut canvas, planned);
     symbols::wells(&mut canvas, planned);
     furniture::frame(&mut canvas);
