@@ -124,19 +124,16 @@ impl WellField {
 
     /// Heads, metres, in point order; NaN outside the aquifer. Parallel.
     pub fn heads_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |places, drawdowns_m| {
-            let (green, shape) = (self.green.as_ref(), &self.outline.shape);
-            let before_m = self.ambient.heads_m(places, green, shape).into_iter();
-            let heads = before_m
-                .zip(drawdowns_m)
-                .map(|(before, drawdown)| before - drawdown);
-            heads.collect()
+        self.evaluate(points, |places| {
+            let before_m = self.heads_before_m(places).into_iter();
+            let heads = before_m.zip(self.drawdowns_at_m(places));
+            heads.map(|(before, drawdown)| before - drawdown).collect()
         })
     }
 
     /// Drawdowns, metres, positive where the head falls; NaN outside. Parallel.
     pub fn drawdowns_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |_, drawdowns_m| drawdowns_m)
+        self.evaluate(points, |places| self.drawdowns_at_m(places))
     }
 
     /// The head before any pumping, metres; NaN outside.
@@ -151,11 +148,7 @@ impl WellField {
 
     /// Heads before any pumping, metres, in point order; NaN outside. Parallel.
     pub fn ambient_heads_m(&self, points: &[Point]) -> Vec<f64> {
-        points
-            .par_iter()
-            .with_min_len(POINTS_A_TASK)
-            .map(|&point| self.ambient_head_m(point))
-            .collect()
+        self.evaluate(points, |places| self.heads_before_m(places))
     }
 
     /// Gradient of the head, metres a metre; NaN outside the aquifer, zero
@@ -357,13 +350,14 @@ impl WellField {
         })
     }
 
-    /// Σ Q/T G at the points of the aquifer, handed to `finish` with their
-    /// canonical places; NaN elsewhere.
-    fn evaluate(
-        &self,
-        points: &[Point],
-        finish: impl Fn(&[Complex64], Vec<f64>) -> Vec<f64> + Sync,
-    ) -> Vec<f64> {
+    /// Heads before any pumping at canonical places of the aquifer.
+    fn heads_before_m(&self, places: &[Complex64]) -> Vec<f64> {
+        let (green, shape) = (self.green.as_ref(), &self.outline.shape);
+        self.ambient.heads_m(places, green, shape)
+    }
+
+    /// Σ Q/T G at canonical places of the aquifer.
+    fn drawdowns_at_m(&self, places: &[Complex64]) -> Vec<f64> {
         let source = |well: &FieldWell| Source {
             pole: well.pole,
             strength_m: self.strength_m(well),
@@ -375,6 +369,18 @@ impl WellField {
             .iter()
             .map(|well| self.strength_m(well) * self.green_at_datum(well))
             .sum();
+        let mut drawdowns_m = vec![-at_datum; places.len()];
+        self.green.superpose(&sources, places, &mut drawdowns_m);
+        drawdowns_m
+    }
+
+    /// What `values` makes of the canonical places of those points that lie in
+    /// the aquifer, in point order; NaN elsewhere. Parallel.
+    fn evaluate(
+        &self,
+        points: &[Point],
+        values: impl Fn(&[Complex64]) -> Vec<f64> + Sync,
+    ) -> Vec<f64> {
         let places: Vec<Option<Complex64>> = points
             .par_iter()
             .with_min_len(POINTS_A_TASK)
@@ -388,21 +394,19 @@ impl WellField {
             Some(_) => points.len().max(1),
             None => POINTS_A_TASK,
         };
-        let mut values = vec![f64::NAN; points.len()];
+        let mut all = vec![f64::NAN; points.len()];
         places
             .par_chunks(points_a_task)
-            .zip(values.par_chunks_mut(points_a_task))
-            .for_each(|(places, values)| {
+            .zip(all.par_chunks_mut(points_a_task))
+            .for_each(|(places, all)| {
                 let held: Vec<_> = places.iter().copied().flatten().collect();
-                let mut drawdowns_m = vec![-at_datum; held.len()];
-                self.green.superpose(&sources, &held, &mut drawdowns_m);
-                let slots = values.iter_mut().zip(places);
+                let slots = all.iter_mut().zip(places);
                 let slots = slots.filter(|(_, place)| place.is_some());
-                for ((slot, _), value) in slots.zip(finish(&held, drawdowns_m)) {
+                for ((slot, _), value) in slots.zip(values(&held)) {
                     *slot = value;
                 }
             });
-        values
+        all
     }
 }
 

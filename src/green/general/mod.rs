@@ -41,6 +41,8 @@ pub struct General {
     boundary: Boundary,
     solution: Solution,
     poles: Vec<Complex64>,
+    /// G of each pole.
+    layers: Vec<Layer>,
     sides: Sides,
     flow: Complex64,
     /// Whether neither a uniform flow nor recharge moves the water.
@@ -76,10 +78,13 @@ impl General {
             ..Problem::default()
         });
         let solution = Solution::new(sides.region.clone(), problems, target_m);
-        let mut weights = vec![0.0; wells.len()];
-        weights.push(1.0);
+        let only = |problem: usize| {
+            let weights = (0..=wells.len()).map(|other| f64::from(other == problem));
+            solution.sum(&weights.collect::<Vec<_>>())
+        };
         Self {
-            before: solution.sum(&weights),
+            before: only(wells.len()),
+            layers: (0..wells.len()).map(only).collect(),
             boundary: boundary.clone(),
             poles: wells.iter().map(|well| well.at).collect(),
             flow: before.flow,
@@ -184,31 +189,17 @@ impl General {
         self.poles.iter().position(|known| *known == pole)
     }
 
-    /// G of one known pole.
-    fn layer_of(&self, problem: usize) -> Layer {
-        let mut weights = vec![0.0; self.poles.len() + 1];
-        if let Some(weight) = weights.get_mut(problem) {
-            *weight = 1.0;
-        }
-        self.solution.sum(&weights)
-    }
-
     /// Does something with G of a pole; one that is no well is solved for.
-    fn with<R>(&self, pole: Complex64, act: impl Fn(&Self, usize) -> R) -> R {
-        match self.problem_of(pole) {
-            Some(problem) => act(self, problem),
-            None => {
-                let well = WeightedPole {
-                    at: pole,
-                    strength_m: 1.0,
-                };
-                let before = Before::default();
-                act(
-                    &Self::new(&self.boundary, &[well], before, self.target_m),
-                    0,
-                )
-            }
+    fn with<R>(&self, pole: Complex64, act: impl Fn(&Self, usize, &Layer) -> R) -> Option<R> {
+        if let Some(problem) = self.problem_of(pole) {
+            return Some(act(self, problem, self.layers.get(problem)?));
         }
+        let well = WeightedPole {
+            at: pole,
+            strength_m: 1.0,
+        };
+        let one = Self::new(&self.boundary, &[well], Before::default(), self.target_m);
+        Some(act(&one, 0, one.layers.first()?))
     }
 }
 
@@ -216,27 +207,27 @@ impl Green for General {
     fn value_outside_rim(&self, at: Complex64, pole: Complex64, rim_m: f64) -> f64 {
         let at = self.near(at);
         let distance_m = (at - pole).norm().max(rim_m);
-        let regular = self.with(pole, |general, problem| {
-            let layer = general.layer_of(problem);
-            general.solution.value_without_poles(&layer, at)
+        let regular = self.with(pole, |general, _, layer| {
+            general.solution.value_without_poles(layer, at)
         });
-        regular - distance_m.ln() / std::f64::consts::TAU
+        regular.unwrap_or(f64::NAN) - distance_m.ln() / std::f64::consts::TAU
     }
 
     fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64 {
         if self.near(at) != at {
             return Complex64::ZERO;
         }
-        self.with(pole, |general, problem| {
-            general.solution.gradient(&general.layer_of(problem), at)
+        self.with(pole, |general, _, layer| {
+            general.solution.gradient(layer, at)
         })
+        .unwrap_or_default()
     }
 
     fn regular_part(&self, pole: Complex64) -> f64 {
-        self.with(pole, |general, problem| {
-            let layer = general.layer_of(problem);
-            general.solution.value_without_poles(&layer, pole)
+        self.with(pole, |general, _, layer| {
+            general.solution.value_without_poles(layer, pole)
         })
+        .unwrap_or(f64::NAN)
     }
 
     fn share(&self, side: usize, along: Range<f64>, pole: Complex64) -> f64 {
@@ -244,9 +235,10 @@ impl Green for General {
         if condition.is_none_or(|condition| condition == Condition::NoFlow) {
             return 0.0;
         }
-        self.with(pole, |general, problem| {
+        let share = self.with(pole, |general, problem, _| {
             -general.outflow(problem, side, &along).unwrap_or(0.0)
-        })
+        });
+        share.unwrap_or(0.0)
     }
 
     fn superpose(&self, sources: &[Source], points: &[Complex64], sums: &mut [f64]) {
