@@ -73,7 +73,7 @@ pub fn head_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError
 /// The drawdown contours.
 pub fn drawdown_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
     let mut layer = Layer::new(planned.plan);
-    for line in drawdown_cuts(planned)?.iter().flat_map(Cuts::lines) {
+    for line in all_drawdown_lines(planned)? {
         let name = format!("drawdown_{}", planned.units().length_ending());
         let properties =
             Properties::new(planned.units()).with(&name, level(planned.units(), line.level));
@@ -108,6 +108,14 @@ pub fn all_head_lines(planned: &Planned<'_>) -> Result<Vec<ContourLine>, LayerEr
         lines.extend(cuts.lines());
     }
     Ok(lines)
+}
+
+/// The drawdown contours, aquifer by aquifer, level by level.
+pub fn all_drawdown_lines(planned: &Planned<'_>) -> Result<Vec<ContourLine>, LayerError> {
+    Ok(drawdown_cuts(planned)?
+        .iter()
+        .flat_map(Cuts::lines)
+        .collect())
 }
 
 /// The bands of drawdown, aquifer by aquifer, from the lowest up.

@@ -21,6 +21,7 @@ pub use caution::CAUTION;
 pub use contours::Levels;
 pub use interference_csv::safe_cell;
 pub use map_svg::map_svg;
+pub(crate) use map_svg::{INK, MapPicture, PAPER, ROCK, Theme, WATER, escaped, map_picture};
 pub use units::{Properties, Units, number};
 pub use write::{OutputFile, WriteError, write_all};
 
