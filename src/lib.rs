@@ -11,4 +11,5 @@ pub mod green;
 pub mod layers;
 pub mod outline;
 pub mod plan;
+pub mod report;
 pub mod site;

@@ -1,7 +1,7 @@
 //! Writes what was found as GIS layers, tables and one JSON document: one
 //! file an output, all listed in [`OUTPUTS`].
 
-mod boundaries;
+pub(crate) mod boundaries;
 mod caution;
 mod contours;
 mod findings_json;
@@ -21,7 +21,9 @@ pub use caution::CAUTION;
 pub use contours::Levels;
 pub use interference_csv::safe_cell;
 pub use map_svg::map_svg;
-pub(crate) use map_svg::{INK, MapPicture, PAPER, ROCK, Theme, WATER, escaped, map_picture};
+pub(crate) use map_svg::{
+    INK, MapPicture, PAPER, Theme, WATER, escaped, map_picture, multiples, round_step,
+};
 pub use units::{Properties, Units, number};
 pub use write::{OutputFile, WriteError, write_all};
 
@@ -30,6 +32,7 @@ use serde_json::Value;
 use crate::contours::ContourError;
 use crate::findings::{Findings, FlagCode, Solution, Survey, Who};
 use crate::plan::Plan;
+use crate::report;
 
 /// A plan with everything that was found of it.
 pub struct Planned<'a> {
@@ -91,6 +94,9 @@ pub enum LayerError {
     /// A table cannot be written.
     #[error("the table cannot be written: {0}")]
     Table(String),
+    /// The report cannot be set.
+    #[error("the report cannot be set: {0}")]
+    Page(String),
     /// A document cannot be written as JSON.
     #[error("the document cannot be written: {0}")]
     Json(#[from] serde_json::Error),
@@ -117,7 +123,7 @@ fn flag_codes(planned: &Planned<'_>, who: Who) -> Vec<&'static str> {
 type Maker = fn(&Planned<'_>) -> Result<Vec<u8>, LayerError>;
 
 /// Every output: its name and its maker.
-pub const OUTPUTS: [(&str, Maker); 10] = [
+pub const OUTPUTS: [(&str, Maker); 11] = [
     ("head_contours.geojson", |p| json(&contours::head_lines(p)?)),
     ("drawdown_contours.geojson", |p| {
         json(&contours::drawdown_lines(p)?)
@@ -134,6 +140,7 @@ pub const OUTPUTS: [(&str, Maker); 10] = [
     ("findings.json", |p| {
         pretty_json(&findings_json::document(p))
     }),
+    ("report.html", report::page),
 ];
 
 /// Makes every output.

@@ -17,7 +17,8 @@ use crate::contours::ContourLine;
 use crate::site::{Extent, Point};
 pub use canvas::{INK, PAPER, escaped};
 use canvas::{Canvas, Label};
-pub use symbols::{ROCK, WATER};
+pub use symbols::WATER;
+pub use ticks::{multiples, round_step};
 
 /// Width of the map itself, pixels.
 const WIDTH: f64 = 760.0;

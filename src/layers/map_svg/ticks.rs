@@ -52,7 +52,7 @@ pub fn frame_of(canvas: &Canvas, plan: &Plan, extent: Extent) -> [f64; 3] {
 }
 
 /// The least of 1, 2, 5 × 10^k that is no smaller.
-fn round_step(least: f64) -> f64 {
+pub fn round_step(least: f64) -> f64 {
     let power = 10_f64.powf(least.log10().floor());
     [1.0, 2.0, 5.0]
         .into_iter()
@@ -62,7 +62,7 @@ fn round_step(least: f64) -> f64 {
 }
 
 /// The multiples of a step between two values.
-fn multiples(from: f64, to: f64, step: f64) -> impl Iterator<Item = f64> {
+pub fn multiples(from: f64, to: f64, step: f64) -> impl Iterator<Item = f64> {
     // Truncation is meant: a map has some ten ticks.
     let (first, last) = ((from / step).ceil() as i64, (to / step).floor() as i64);
     (first..=last).map(move |count| count as f64 * step)
