@@ -38,7 +38,7 @@ pub fn answer(planned: &Planned<'_>) -> Answer {
     ];
     Answer {
         headline: headline(planned),
-        text: sentences.concat().join(" "),
+        text: unbroken(&sentences.concat().join(" "), planned),
         facts: facts(planned, &words),
     }
 }
@@ -246,7 +246,12 @@ fn others(planned: &Planned<'_>, words: &Words<'_>) -> Vec<String> {
 
 /// How far to trust it.
 fn exactness(planned: &Planned<'_>, words: &Words<'_>) -> String {
-    let proven = words.proven(planned.solution.error_bound_m());
+    let bound_m = planned.solution.error_bound_m();
+    let proven = if bound_m < 1e-3 {
+        "heads are computed to better than a millimetre".into()
+    } else {
+        words.proven(bound_m)
+    };
     format!(
         "For the plan as it is drawn, {proven}; how well the plan describes the ground is another matter, and for a licensed hydrogeologist to judge."
     )
@@ -287,6 +292,18 @@ fn facts(planned: &Planned<'_>, words: &Words<'_>) -> Vec<Fact> {
         value: broken.to_string(),
     });
     facts
+}
+
+/// A text whose numbers keep their units on their line.
+fn unbroken(text: &str, planned: &Planned<'_>) -> String {
+    let units = planned.units();
+    [units.length_ending(), units.rate_words()]
+        .into_iter()
+        .fold(text.to_owned(), |text, unit| {
+            [" ", ",", ";", "."].into_iter().fold(text, |text, end| {
+                text.replace(&format!(" {unit}{end}"), &format!("\u{a0}{unit}{end}"))
+            })
+        })
 }
 
 /// "a, b and c", or "a, b, c and 4 more".

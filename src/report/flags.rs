@@ -10,6 +10,7 @@ use crate::layers::words::Words;
 #[derive(Serialize)]
 pub struct FlagGroup {
     code: &'static str,
+    title: &'static str,
     rule: String,
     /// Whether a limit is broken.
     breaks_a_limit: bool,
@@ -33,6 +34,7 @@ pub fn groups(planned: &Planned<'_>) -> Vec<FlagGroup> {
             let code: FlagCode = group.first()?.code;
             Some(FlagGroup {
                 code: code.name(),
+                title: Words::flag_title(code),
                 rule: words.rule(code),
                 breaks_a_limit: code.breaks_a_limit(),
                 flags: group

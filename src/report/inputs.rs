@@ -41,7 +41,7 @@ pub fn inputs(plan: &Plan) -> Inputs {
 
 fn row(input: &Input) -> InputRow {
     InputRow {
-        of: one_line(&input.of),
+        of: one_line(&input.of).replace('`', ""),
         key: input.key,
         written: short(&input.written, 40),
         si: input.in_si(),

@@ -108,8 +108,8 @@ pub fn legend(canvas: &Canvas, planned: &Planned<'_>, theme: Theme) -> Legend {
         legend.entry(&symbol, &format!("{text}, {ending}"));
     };
     match theme {
-        Theme::Drawdown => line("drawdown", &mut legend),
-        Theme::Head | Theme::Both => line("head", &mut legend),
+        Theme::Drawdown => line("contour of drawdown", &mut legend),
+        Theme::Head | Theme::Both => line("contour of head", &mut legend),
     }
     if theme != Theme::Both {
         legend.entry(

@@ -96,7 +96,7 @@ pub fn map_picture(
     let (sheet_width, sheet_height) = (width + LEFT + RIM, height + RIM + BELOW);
     let title = escaped(title);
     let map = format!(
-        "<svg class=\"map\" viewBox=\"0 0 {sheet_width:.0} {sheet_height:.0}\" role=\"img\" aria-label=\"{title}\" font-size=\"13\" fill=\"{INK}\">\n\
+        "<svg class=\"map\" viewBox=\"0 0 {sheet_width:.0} {sheet_height:.0}\" width=\"{sheet_width:.0}\" height=\"{sheet_height:.0}\" role=\"img\" aria-label=\"{title}\" font-size=\"13\" fill=\"{INK}\">\n\
          {definitions}\n<g class=\"ticks\" font-size=\"12\" transform=\"translate({LEFT} {RIM})\">{ticks}</g>\n\
          <g transform=\"translate({LEFT} {RIM})\" clip-path=\"url(#{clip})\"><rect width=\"{width:.1}\" height=\"{height:.1}\" fill=\"{PAPER}\"/>\n{}</g></svg>",
         canvas.into_body()
@@ -182,7 +182,7 @@ fn section_line(canvas: &mut Canvas, section: &[Point], taken: &mut labels::Take
     let [width, height] = canvas.size();
     for (end, text) in [(first, "A"), (last, "A′")] {
         let [x, y] = canvas.place(end);
-        let at = [x.clamp(14.0, width - 14.0), y.clamp(20.0, height - 12.0)];
+        let at = [x.clamp(14.0, width - 14.0), (y - 9.0).clamp(20.0, height - 12.0)];
         taken.reserve([at[0] - 10.0, at[1] - 14.0, at[0] + 12.0, at[1] + 6.0]);
         canvas.text(&Label {
             at,
