@@ -9,6 +9,8 @@ use crate::site::{Extent, Point};
 
 /// Distance of two ticks, pixels, at least.
 const CLOSEST: f64 = 110.0;
+/// Half the width of a coordinate, pixels, roughly.
+const ROOM: f64 = 32.0;
 /// Length of a tick, pixels.
 const LENGTH: f64 = 6.0;
 
@@ -24,23 +26,38 @@ pub fn ticks(canvas: &Canvas, plan: &Plan, extent: Extent) -> String {
         let [at, _] = canvas.place(plan.to_site(x, south));
         let _ = write!(
             svg,
-            "<path d=\"M{at:.1} {height:.1}v{LENGTH}M{at:.1} 0v-{LENGTH}\" stroke=\"{INK}\"/>\
-             <text x=\"{at:.1}\" y=\"{:.1}\" text-anchor=\"middle\">{}</text>",
-            height + LENGTH + 13.0,
-            coordinate(x)
+            "<path d=\"M{at:.1} {height:.1}v{LENGTH}M{at:.1} 0v-{LENGTH}\" stroke=\"{INK}\"/>",
         );
+        if has_room(at, width) {
+            let _ = write!(
+                svg,
+                "<text x=\"{at:.1}\" y=\"{:.1}\" text-anchor=\"middle\">{}</text>",
+                height + LENGTH + 13.0,
+                coordinate(x)
+            );
+        }
     }
     for y in multiples(south, north, step) {
         let [_, at]: [f64; 2] = canvas.place(plan.to_site(west, y));
         let _ = write!(
             svg,
-            "<path d=\"M0 {at:.1}h-{LENGTH}M{width:.1} {at:.1}h{LENGTH}\" stroke=\"{INK}\"/>\
-             <text transform=\"translate({:.1} {at:.1}) rotate(-90)\" text-anchor=\"middle\">{}</text>",
-            -LENGTH - 5.0,
-            coordinate(y)
+            "<path d=\"M0 {at:.1}h-{LENGTH}M{width:.1} {at:.1}h{LENGTH}\" stroke=\"{INK}\"/>",
         );
+        if has_room(at, height) {
+            let _ = write!(
+                svg,
+                "<text transform=\"translate({:.1} {at:.1}) rotate(-90)\" text-anchor=\"middle\">{}</text>",
+                -LENGTH - 5.0,
+                coordinate(y)
+            );
+        }
     }
     svg
+}
+
+/// Whether a coordinate has room at a tick: at a corner it would be cut.
+fn has_room(at: f64, length: f64) -> bool {
+    (ROOM..=length - ROOM).contains(&at)
 }
 
 /// A place of the site on the map, for scripts: the plan's coordinates of the
