@@ -54,9 +54,7 @@ fn with_code<'p>(planned: &'p Planned<'_>, code: FlagCode) -> Vec<&'p Flag> {
 }
 
 /// The neighbours that can be judged, with drawdown and limit, metres.
-fn judged<'p>(
-    planned: &'p Planned<'_>,
-) -> impl Iterator<Item = (&'p NeighbourFinding, f64, f64)> {
+fn judged<'p>(planned: &'p Planned<'_>) -> impl Iterator<Item = (&'p NeighbourFinding, f64, f64)> {
     let findings = planned.findings.neighbours.iter();
     findings.filter_map(|n| Some((n, n.worst.as_ref()?.drawdown_m, n.allowed_m?)))
 }
@@ -181,13 +179,7 @@ fn water(planned: &Planned<'_>, words: &Words<'_>) -> Vec<String> {
         )
     });
     let source = match rivers.len() {
-        0 if planned
-            .solution
-            .site()
-            .aquifer
-            .influence_radius
-            .is_some() =>
-        {
+        0 if planned.solution.site().aquifer.influence_radius.is_some() => {
             "; no river bounds the aquifer, and the plan assumes how far the cones reach".into()
         }
         0 => "; no river gives any of it".into(),
@@ -230,14 +222,11 @@ fn others(planned: &Planned<'_>, words: &Words<'_>) -> Vec<String> {
         .into_iter()
         .filter_map(|(code, sentence)| {
             let flags = with_code(planned, code);
-            let names = flags
-                .iter()
-                .take(MOST_NAMES)
-                .map(|flag| match flag.who {
-                    crate::findings::Who::Map => "the map".into(),
-                    crate::findings::Who::AquiferOf(_) => format!("the {}", words.who(flag.who)),
-                    who => words.who(who),
-                });
+            let names = flags.iter().take(MOST_NAMES).map(|flag| match flag.who {
+                crate::findings::Who::Map => "the map".into(),
+                crate::findings::Who::AquiferOf(_) => format!("the {}", words.who(flag.who)),
+                who => words.who(who),
+            });
             (!flags.is_empty())
                 .then(|| format!("{sentence} {}.", listed(names.collect(), flags.len())))
         })
@@ -248,7 +237,11 @@ fn others(planned: &Planned<'_>, words: &Words<'_>) -> Vec<String> {
 fn exactness(planned: &Planned<'_>, words: &Words<'_>) -> String {
     let bound_m = planned.solution.error_bound_m();
     let proven = if bound_m < 1e-3 {
-        "heads are computed to better than a millimetre".into()
+        let fine = match planned.units().length_ending() {
+            "m" => "a millimetre",
+            _ => "a hundredth of a foot",
+        };
+        format!("heads are computed to better than {fine}")
     } else {
         words.proven(bound_m)
     };

@@ -61,11 +61,9 @@ fn homogeneous(planned: &Planned<'_>) -> Assumption {
     let aquifer = &planned.solution.site().aquifer;
     let mut doubts = Vec::new();
     let from_material = planned.plan.material.is_some()
-        && !planned
-            .plan
-            .inputs
-            .iter()
-            .any(|input| input.of == "[aquifer]" && matches!(input.key, "conductivity" | "transmissivity"));
+        && !planned.plan.inputs.iter().any(|input| {
+            input.of == "[aquifer]" && matches!(input.key, "conductivity" | "transmissivity")
+        });
     if from_material {
         doubts.push(
             "The conductivity is a material’s typical value, not a measurement: the true one may be several times larger or smaller, and drawdowns with it.".into(),
@@ -76,7 +74,10 @@ fn homogeneous(planned: &Planned<'_>) -> Assumption {
             "One transmissivity everywhere, {} times as large along azimuth {}° as across it; layers and lenses are not seen.",
             anisotropy.ratio, anisotropy.azimuth_deg
         ),
-        None => "One transmissivity everywhere and in all directions; layers and lenses are not seen.".into(),
+        None => {
+            "One transmissivity everywhere and in all directions; layers and lenses are not seen."
+                .into()
+        }
     };
     Assumption {
         title: "Homogeneous aquifer",
@@ -88,11 +89,13 @@ fn homogeneous(planned: &Planned<'_>) -> Assumption {
 fn steady(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
     let site = planned.solution.site();
     let mut doubts = Vec::new();
-    let has_river = planned
-        .solution
-        .fields()
-        .iter()
-        .all(|field| field.outline().shape.side_kinds().contains(&crate::outline::Kind::FixedHead));
+    let has_river = planned.solution.fields().iter().all(|field| {
+        field
+            .outline()
+            .shape
+            .side_kinds()
+            .contains(&crate::outline::Kind::FixedHead)
+    });
     match (has_river, site.aquifer.influence_radius) {
         (false, Some(radius)) => doubts.push(format!(
             "No river holds the head: the reach of the cones, {}, is assumed by the plan. Drawdowns, above all far from the wells, are no better than it.",
@@ -153,7 +156,9 @@ fn edges(planned: &Planned<'_>, words: &Words<'_>) -> Option<Assumption> {
                     let pieces = field.outline().sides.iter().flatten();
                     pieces
                         .filter(|piece| piece.edge == boundary.edge)
-                        .any(|piece| piece.along.start.is_infinite() || piece.along.end.is_infinite())
+                        .any(|piece| {
+                            piece.along.start.is_infinite() || piece.along.end.is_infinite()
+                        })
                 })
         })
         .take(MOST_NAMES)
@@ -189,7 +194,11 @@ fn map(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
     if !near.is_empty() {
         let more = near.len().saturating_sub(MOST_NAMES);
         let named: Vec<String> = near.into_iter().take(MOST_NAMES).collect();
-        let more = if more > 0 { format!(" and {more} more") } else { String::new() };
+        let more = if more > 0 {
+            format!(" and {more} more")
+        } else {
+            String::new()
+        };
         doubts.push(format!(
             "At or beyond the map’s rim: {}{more}. The map cuts their cones off; ask for a larger extent.",
             named.join(", ")
@@ -197,7 +206,8 @@ fn map(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
     }
     Assumption {
         title: "What the map shows",
-        text: "Flags about the roof look at the map alone; distances are those of the plan’s grid.".into(),
+        text: "Flags about the roof look at the map alone; distances are those of the plan’s grid."
+            .into(),
         doubts,
     }
 }

@@ -39,11 +39,7 @@ impl Nodes {
         let points = (0..rows)
             .flat_map(|row| (0..columns).map(move |column| (column, row)))
             .map(|(column, row)| {
-                corner
-                    + Vector::new(
-                        size.x * share(column, columns),
-                        -size.y * share(row, rows),
-                    )
+                corner + Vector::new(size.x * share(column, columns), -size.y * share(row, rows))
             })
             .collect();
         Self {
@@ -82,7 +78,10 @@ impl Grid {
                 0
             }
         };
-        let bytes: Vec<u8> = values.iter().flat_map(|v| packed(v).to_le_bytes()).collect();
+        let bytes: Vec<u8> = values
+            .iter()
+            .flat_map(|v| packed(v).to_le_bytes())
+            .collect();
         Self {
             columns: nodes.columns,
             rows: nodes.rows,

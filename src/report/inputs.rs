@@ -50,7 +50,5 @@ fn row(input: &Input) -> InputRow {
 
 /// A text of several lines that cannot turn the page around it.
 fn readable(text: &str) -> String {
-    text.lines()
-        .map(|line| one_line(line) + "\n")
-        .collect()
+    text.lines().map(|line| one_line(line) + "\n").collect()
 }

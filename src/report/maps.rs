@@ -49,13 +49,7 @@ pub fn maps(planned: &Planned<'_>, section: &[Point]) -> Result<Vec<MapView>, La
         let values: Vec<f64> = values_m.iter().map(|&m| units.length(m)).collect();
         Grid::packed(&nodes, &values)
     };
-    let drawdown = map_picture(
-        planned,
-        Theme::Drawdown,
-        "d-",
-        "Map of drawdown",
-        section,
-    )?;
+    let drawdown = map_picture(planned, Theme::Drawdown, "d-", "Map of drawdown", section)?;
     let head = map_picture(planned, Theme::Head, "h-", "Map of head", section)?;
     let spacing = spacing_note(planned, &nodes);
     Ok(vec![
@@ -91,7 +85,9 @@ pub fn maps(planned: &Planned<'_>, section: &[Point]) -> Result<Vec<MapView>, La
 }
 
 fn view(planned: &Planned<'_>, picture: MapPicture, grid: Grid, has_bands: bool) -> MapView {
-    let layers = LAYERS.iter().filter(|(layer, _)| has_bands || *layer != "bands");
+    let layers = LAYERS
+        .iter()
+        .filter(|(layer, _)| has_bands || *layer != "bands");
     MapView {
         id: "",
         title: "",

@@ -6,11 +6,14 @@ use serde::Serialize;
 use super::flags::capitalised;
 use crate::field::WellField;
 use crate::layers::Planned;
-use crate::layers::words::{Words, one_line, steady_state};
+use crate::layers::words::{Words, short, steady_state};
 use crate::plan::Dimension;
 
 /// Wells of an aquifer that are named, at most.
 const MOST_NAMES: usize = 8;
+
+/// Letters of a sentence that holds names as they are given, at most.
+const LONGEST_TEXT: usize = 1000;
 
 /// How it was computed.
 #[derive(Serialize)]
@@ -50,7 +53,7 @@ pub fn method(planned: &Planned<'_>) -> Method {
         notes: planned
             .notes()
             .iter()
-            .map(|note| sentence(note))
+            .map(|note| sentence(&short(note, LONGEST_TEXT)))
             .collect(),
     }
 }
@@ -58,7 +61,7 @@ pub fn method(planned: &Planned<'_>) -> Method {
 fn aquifer(planned: &Planned<'_>, field: &WellField) -> Aquifer {
     let words = Words::of(planned);
     let site = planned.solution.site();
-    let told = |text: &str| sentence(&planned.plan.units.beside(&one_line(text)));
+    let told = |text: &str| sentence(&planned.plan.units.beside(&short(text, LONGEST_TEXT)));
     let wells = &field.outline().wells;
     let named: Vec<String> = wells
         .iter()

@@ -100,10 +100,7 @@ pub fn drawn(profile: &Profile) -> Drawn {
              <g transform=\"translate({LEFT} {above:.0})\">\n{body}{}</g></svg>",
             key(profile)
         ),
-        exaggeration: grouped(&fixed(
-            exaggeration,
-            usize::from(exaggeration < 10.0),
-        )),
+        exaggeration: grouped(&fixed(exaggeration, usize::from(exaggeration < 10.0))),
     }
 }
 
@@ -289,7 +286,9 @@ fn key(profile: &Profile) -> String {
     let entries = [
         (
             true,
-            format!("<path d=\"M0 0h30\" stroke=\"{INK}\" stroke-width=\"1.4\" stroke-dasharray=\"6 4\"/>"),
+            format!(
+                "<path d=\"M0 0h30\" stroke=\"{INK}\" stroke-width=\"1.4\" stroke-dasharray=\"6 4\"/>"
+            ),
             "head before",
         ),
         (
@@ -299,12 +298,16 @@ fn key(profile: &Profile) -> String {
         ),
         (
             profile.roof.is_some(),
-            format!("<path d=\"M0 -2h30m-30 0l5 6m7 -6l5 6m7 -6l5 6\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.4\"/>"),
+            format!(
+                "<path d=\"M0 -2h30m-30 0l5 6m7 -6l5 6m7 -6l5 6\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.4\"/>"
+            ),
             "aquifer’s roof",
         ),
         (
             true,
-            format!("<path d=\"M15 5l-6 -10h12Z\" fill=\"{PAPER}\" stroke=\"{INK}\" stroke-width=\"1.6\"/>"),
+            format!(
+                "<path d=\"M15 5l-6 -10h12Z\" fill=\"{PAPER}\" stroke=\"{INK}\" stroke-width=\"1.6\"/>"
+            ),
             "level in a well",
         ),
         (
@@ -314,7 +317,9 @@ fn key(profile: &Profile) -> String {
         ),
         (
             ground,
-            format!("<path d=\"M1 -2h28m-24 0l-4 6m12 -6l-4 6m12 -6l-4 6m12 -6l-4 6\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.6\"/>"),
+            format!(
+                "<path d=\"M1 -2h28m-24 0l-4 6m12 -6l-4 6m12 -6l-4 6m12 -6l-4 6\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.6\"/>"
+            ),
             "ground",
         ),
     ];

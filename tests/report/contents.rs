@@ -95,7 +95,9 @@ fn the_values_under_the_pointer_are_the_field_s() {
         for figure in all(&html, ".map-figure") {
             let number = |name: &str| -> f64 { figure.attr(name).unwrap().parse().unwrap() };
             let (columns, rows) = (number("data-columns"), number("data-rows"));
-            let bytes = STANDARD.decode(figure.attr("data-values").unwrap()).unwrap();
+            let bytes = STANDARD
+                .decode(figure.attr("data-values").unwrap())
+                .unwrap();
             assert_eq!(bytes.len() as f64, 2.0 * columns * rows);
             let points: Vec<Point> = (0..bytes.len() / 2)
                 .map(|node| {

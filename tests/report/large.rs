@@ -50,7 +50,10 @@ fn the_page_of_200_wells_and_500_neighbours_is_small_and_says_what_it_leaves_out
     let html = Html::parse_document(&page);
     assert!(html.errors.is_empty());
     let left_out = texts(&html, "section[aria-labelledby=interference] p").join("");
-    assert!(left_out.contains("the 12 wells that cause most have a column each, the other 188 share one"));
+    assert!(
+        left_out
+            .contains("the 12 wells that cause most have a column each, the other 188 share one")
+    );
     assert!(left_out.contains("of 500 neighbours the 30 most drawn down have a row"));
     assert_eq!(texts(&html, ".matrix thead th").len(), 14);
 }

@@ -40,8 +40,11 @@ pub fn all<'h>(html: &'h Html, selector: &str) -> Vec<ElementRef<'h>> {
 
 /// The text of an element, its white space made single.
 pub fn text(element: ElementRef<'_>) -> String {
-    let text: String = element.text().collect();
-    text.split_whitespace().collect::<Vec<_>>().join(" ")
+    let text: Vec<&str> = element.text().collect();
+    text.join(" ")
+        .split_whitespace()
+        .collect::<Vec<_>>()
+        .join(" ")
 }
 
 /// The texts of all elements that a selector finds.

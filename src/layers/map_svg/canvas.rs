@@ -218,8 +218,7 @@ impl Canvas {
 }
 
 /// Halos.
-const STYLE: &str =
-    "<style>.halo{stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>";
+const STYLE: &str = "<style>.halo{stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>";
 
 /// A number of tenths: "12", "-0.3".
 fn tenths(count: i64) -> String {

@@ -139,8 +139,7 @@ fn symbols_key(legend: &mut Legend, planned: &Planned<'_>) {
     well(false, false, "pumping well, area by rate");
     well(true, false, "injecting well, area by rate");
     well(false, true, "well with a flag");
-    let mut neighbour =
-        |state, text| legend.entry(&in_key(&neighbour_symbol(state)), text);
+    let mut neighbour = |state, text| legend.entry(&in_key(&neighbour_symbol(state)), text);
     neighbour(State::Within, "neighbour within its limit");
     neighbour(State::Over, "neighbour over its limit");
     neighbour(State::Unjudged, "neighbour not judged");
@@ -189,7 +188,11 @@ fn band_key(legend: &mut Legend, planned: &Planned<'_>, height: f64, rise: Strin
     for &from_m in falls.iter().step_by(stride) {
         let level = planned.units().length(from_m);
         let fill = band_colour(band_share(planned, from_m));
-        box_of(&fill, None, &format!("from {}", (level * 1e6).round() / 1e6));
+        box_of(
+            &fill,
+            None,
+            &format!("from {}", (level * 1e6).round() / 1e6),
+        );
     }
     if levels_m.iter().any(|&level_m| level_m < 0.0) {
         box_of(&band_colour(0.0), Some(rise), "rise");

@@ -179,8 +179,7 @@ pub fn contours(
             );
             let inside = canvas.shows([x - w, y - h]) && canvas.shows([x + w, y + h]);
             if inside && taken.take([x - w, y - h, x + w, y + h]) {
-                let attributes =
-                    format!("text-anchor=\"middle\" font-size=\"12\" fill=\"{INK}\"");
+                let attributes = format!("text-anchor=\"middle\" font-size=\"12\" fill=\"{INK}\"");
                 canvas.text(&Label {
                     at: [x, y],
                     offset: [0.0, 4.0],

@@ -15,8 +15,8 @@ mod ticks;
 use super::{LayerError, Planned, contours};
 use crate::contours::ContourLine;
 use crate::site::{Extent, Point};
-pub use canvas::{INK, PAPER, escaped};
 use canvas::{Canvas, Label};
+pub use canvas::{INK, PAPER, escaped};
 pub use symbols::WATER;
 pub use ticks::{multiples, round_step};
 
@@ -182,7 +182,10 @@ fn section_line(canvas: &mut Canvas, section: &[Point], taken: &mut labels::Take
     let [width, height] = canvas.size();
     for (end, text) in [(first, "A"), (last, "A′")] {
         let [x, y] = canvas.place(end);
-        let at = [x.clamp(14.0, width - 14.0), (y - 9.0).clamp(20.0, height - 12.0)];
+        let at = [
+            x.clamp(14.0, width - 14.0),
+            (y - 9.0).clamp(20.0, height - 12.0),
+        ];
         taken.reserve([at[0] - 10.0, at[1] - 14.0, at[0] + 12.0, at[1] + 6.0]);
         canvas.text(&Label {
             at,

@@ -30,8 +30,8 @@ impl Words<'_> {
 
     /// What would make a proven bound suffice.
     pub(super) fn exactness_remedy(&self, bound_m: f64, hardest_edge: Option<usize>) -> String {
-        let simpler = hardest_edge
-            .map(|edge| format!("a simpler outline near {}", self.edge(edge)));
+        let simpler =
+            hardest_edge.map(|edge| format!("a simpler outline near {}", self.edge(edge)));
         let larger = bound_m
             .is_finite()
             .then(|| rounded_up(self.units.length(bound_m)));

@@ -1,6 +1,6 @@
 //! Why a steady state exists, in words.
 
-use super::one_line;
+use super::{LONGEST_NAME, short};
 use crate::field::WellField;
 use crate::findings::Solution;
 use crate::outline::Kind;
@@ -14,7 +14,7 @@ pub fn steady_state(solution: &Solution, field: &WellField) -> String {
     for (kind, pieces) in kinds.iter().zip(&outline.sides) {
         for piece in pieces.iter().filter(|_| *kind == Kind::FixedHead) {
             if let Some(edge) = site.edges.get(piece.edge) {
-                let name = one_line(&edge.name);
+                let name = short(&edge.name, LONGEST_NAME);
                 if !rivers.contains(&name) {
                     rivers.push(name);
                 }
