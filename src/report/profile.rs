@@ -165,10 +165,10 @@ fn axes(profile: &Profile, scales: &Scales) -> String {
     // Truncation is meant: a step has some digits at most.
     let decimals = (-step.log10().floor()).clamp(0.0, 6.0) as usize;
     for level in multiples(scales.low, scales.high, step) {
-        let _ = write!(
+        let _ = writeln!(
             svg,
             "<path d=\"M0 {y:.1}H{WIDTH}\" stroke=\"{INK}\" stroke-opacity=\"0.18\"/>\
-             <text x=\"-8\" y=\"{:.1}\" text-anchor=\"end\">{}</text>\n",
+             <text x=\"-8\" y=\"{:.1}\" text-anchor=\"end\">{}</text>",
             scales.y(level) + 4.5,
             grouped(&fixed(level, decimals)),
             y = scales.y(level)
@@ -177,20 +177,20 @@ fn axes(profile: &Profile, scales: &Scales) -> String {
     let step = round_step(profile.length * CLOSEST[0] / WIDTH);
     for station in multiples(0.0, profile.length, step) {
         let x = scales.x(station);
-        let _ = write!(
+        let _ = writeln!(
             svg,
             "<path d=\"M{x:.1} {HEIGHT}v6\" stroke=\"{INK}\"/>\
-             <text x=\"{x:.1}\" y=\"{:.1}\" text-anchor=\"middle\">{}</text>\n",
+             <text x=\"{x:.1}\" y=\"{:.1}\" text-anchor=\"middle\">{}</text>",
             HEIGHT + 20.0,
             grouped(&format!("{}", (station * 1e6).round() / 1e6))
         );
     }
-    let _ = write!(
+    let _ = writeln!(
         svg,
         "<text transform=\"translate(-50 {:.1}) rotate(-90)\" text-anchor=\"middle\">elevation, {}</text>\n\
          <text x=\"{:.1}\" y=\"{:.1}\" text-anchor=\"middle\">distance along the line, {}</text>\n\
          <text x=\"2\" y=\"{:.1}\" font-weight=\"bold\" font-size=\"15\">A</text>\
-         <text x=\"{WIDTH}\" y=\"{:.1}\" text-anchor=\"end\" font-weight=\"bold\" font-size=\"15\">A′</text>\n",
+         <text x=\"{WIDTH}\" y=\"{:.1}\" text-anchor=\"end\" font-weight=\"bold\" font-size=\"15\">A′</text>",
         0.5 * HEIGHT,
         profile.unit,
         0.5 * WIDTH,
@@ -213,16 +213,16 @@ fn curves(profile: &Profile, scales: &Scales) -> String {
             let _ = write!(teeth, "M{x:.0} {y:.1}l5 6");
             x += 12.0;
         }
-        let _ = write!(
+        let _ = writeln!(
             svg,
             "<path d=\"M0 {y:.1}H{WIDTH}\" stroke=\"{INK}\" stroke-width=\"1.6\"/>\
-             <path d=\"{teeth}\" stroke=\"{INK}\" stroke-width=\"0.8\"/>\n"
+             <path d=\"{teeth}\" stroke=\"{INK}\" stroke-width=\"0.8\"/>"
         );
     }
-    let _ = write!(
+    let _ = writeln!(
         svg,
         "<path d=\"{}\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.4\" stroke-dasharray=\"6 4\"/>\n\
-         <path d=\"{}\" fill=\"none\" stroke=\"{WATER}\" stroke-width=\"2.6\" stroke-linejoin=\"round\"/>\n",
+         <path d=\"{}\" fill=\"none\" stroke=\"{WATER}\" stroke-width=\"2.6\" stroke-linejoin=\"round\"/>",
         path(&profile.before, scales),
         path(&profile.after, scales)
     );
@@ -236,7 +236,7 @@ fn path(curve: &Curve, scales: &Scales) -> String {
     for &[station, level] in curve {
         if level.is_finite() {
             let letter = if is_open { "L" } else { "M" };
-            let _ = write!(
+            let _ = writeln!(
                 path,
                 "{letter}{:.1} {:.1}",
                 scales.x(station),
@@ -255,7 +255,7 @@ fn well_mark(well: &WellMark, row: usize, scales: &Scales) -> String {
     let mut svg = format!(
         "<path d=\"M{x:.1} {:.1}V{HEIGHT}\" stroke=\"{INK}\" stroke-width=\"1\" stroke-dasharray=\"1 3\"/>\
          <path d=\"M{x:.1} {y:.1}l-6 -10h12Z\" fill=\"{PAPER}\" stroke=\"{INK}\" stroke-width=\"1.6\"/>\
-         <text x=\"{:.1}\" y=\"{name_base:.1}\" text-anchor=\"middle\" font-weight=\"bold\">{}</text>\n",
+         <text x=\"{:.1}\" y=\"{name_base:.1}\" text-anchor=\"middle\" font-weight=\"bold\">{}</text>",
         name_base + 3.0,
         name_place(well, scales),
         escaped(&shown(&well.name))
@@ -326,9 +326,9 @@ fn key(profile: &Profile) -> String {
     let mut svg = String::new();
     let mut x = 0.0;
     for (_, symbol, text) in entries.iter().filter(|(given, ..)| *given) {
-        let _ = write!(
+        let _ = writeln!(
             svg,
-            "<g transform=\"translate({x:.0} {:.0})\">{symbol}<text x=\"36\" y=\"4\">{text}</text></g>\n",
+            "<g transform=\"translate({x:.0} {:.0})\">{symbol}<text x=\"36\" y=\"4\">{text}</text></g>",
             HEIGHT + 66.0
         );
         x += 58.0 + LETTER * text.chars().count() as f64;

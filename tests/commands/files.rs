@@ -40,6 +40,7 @@ fn the_files_of_the_contract_are_written_and_no_others() {
             "image_wells.geojson",
             "interference.csv",
             "neighbours.geojson",
+            "report.html",
             "river_reaches.geojson",
             "wells.geojson",
         ]
