@@ -29,6 +29,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         survey: &survey,
         levels,
         findings: &findings,
+        drawn: Default::default(),
     };
     std::fs::write(&map_path, map_svg(&planned)?)?;
     println!("drew {map_path}");

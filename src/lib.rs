@@ -11,5 +11,6 @@ pub mod green;
 pub mod layers;
 pub mod outline;
 pub mod plan;
+pub mod potential;
 pub mod report;
 pub mod site;

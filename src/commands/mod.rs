@@ -10,6 +10,7 @@ mod completions;
 mod console;
 mod failure;
 mod heads;
+mod layers;
 mod manual;
 mod materials;
 mod points;
@@ -60,6 +61,8 @@ enum Command {
     Check(check::Arguments),
     /// Heads and drawdowns at points, as CSV
     Heads(heads::Arguments),
+    /// What a run writes: outputs, their files, properties and units
+    Layers(layers::Arguments),
     /// The JSON Schema of the plan file, for editors
     Schema(schema::Arguments),
     /// The aquifer materials that a plan can name, and their sources
@@ -101,6 +104,7 @@ fn dispatch(cli: &Cli, console: &Console) -> Result<(), Failure> {
         Command::Run(arguments) => run::run(arguments, console),
         Command::Check(arguments) => check::run(arguments, console),
         Command::Heads(arguments) => heads::run(arguments, console),
+        Command::Layers(arguments) => layers::run(arguments, console),
         Command::Schema(_) => schema::run(console),
         Command::Materials(arguments) => materials::run(arguments, console),
         Command::Completions(arguments) => completions::run(arguments, console),

@@ -8,7 +8,7 @@ use super::progress::Progress;
 use super::source::{PlanArgument, solve};
 use super::summary;
 use crate::findings::{Findings, FlagCode, MapWindow, Solution, Survey};
-use crate::layers::{self, Levels, Planned, Units};
+use crate::layers::{self, Drawn, Levels, OUTPUTS, Output, Planned, Units};
 use crate::plan::Plan;
 
 /// What the command takes.
@@ -26,6 +26,11 @@ pub struct Arguments {
     #[arg(long, value_name = "DIR", default_value = "mirrorwell-out")]
     out: PathBuf,
 
+    /// Write these outputs alone, named as `mirrorwell layers` lists them;
+    /// other files of an earlier run stay as they are
+    #[arg(long, value_name = "NAME,…", value_delimiter = ',')]
+    only: Vec<String>,
+
     /// End with status 3 when a limit is broken or the accuracy is missed
     #[arg(long)]
     strict: bool,
@@ -33,6 +38,7 @@ pub struct Arguments {
 
 /// Solves the plan, writes every output and prints the summary.
 pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
+    let outputs = wanted(&arguments.only)?;
     let progress = Progress::start(console, 5);
     progress.stage("reading the plan");
     let plan = arguments.plan.read()?;
@@ -45,15 +51,23 @@ pub fn run(arguments: &Arguments, console: &Console) -> Result<(), Failure> {
     let findings = Findings::of(&solution, &survey)?;
     progress.stage("drawing contours");
     let planned = planned(&plan, &solution, &survey, &findings)?;
-    let files = layers::make_all(&planned)?;
+    let files = layers::make(&planned, outputs.iter().copied())?;
     progress.stage("writing files");
     layers::write_all(&arguments.out, &files)?;
     drop(progress);
-    say(&planned, &arguments.out, console)?;
+    say(&planned, &outputs, &arguments.out, console)?;
     if arguments.strict {
         return strictly(&findings);
     }
     Ok(())
+}
+
+/// The outputs of these names; all where none is named.
+fn wanted(names: &[String]) -> Result<Vec<&'static Output>, Failure> {
+    if names.is_empty() {
+        return Ok(OUTPUTS.iter().collect());
+    }
+    layers::outputs_named(names).map_err(|unknown| Failure::Refused(format!("--only: {unknown}")))
 }
 
 /// Refuses to end well where a limit is broken or the accuracy is missed.
@@ -85,16 +99,22 @@ fn planned<'a>(
         survey,
         levels,
         findings,
+        drawn: Drawn::default(),
     })
 }
 
 /// Prints the summary and, to standard error, the notes.
-fn say(planned: &Planned<'_>, out: &Path, console: &Console) -> Result<(), Failure> {
+fn say(
+    planned: &Planned<'_>,
+    outputs: &[&Output],
+    out: &Path,
+    console: &Console,
+) -> Result<(), Failure> {
     for note in planned.notes() {
         console.note(&super::console::wrapped(&note, "note: ", "      "));
     }
     if !console.is_quiet() {
-        console.result(&summary::of(planned, out))?;
+        console.result(&summary::of(planned, outputs, out))?;
     }
     Ok(())
 }

@@ -6,16 +6,16 @@ use std::path::Path;
 use comfy_table::{CellAlignment, Table};
 
 use super::console::wrapped;
-use crate::layers::words::{Words, one_line, percent};
-use crate::layers::{CAUTION, OUTPUTS, Planned};
+use crate::layers::words::{Words, listed, one_line, percent};
+use crate::layers::{CAUTION, Output, Planned};
 
 /// Rows of a table that are printed; the layers hold all.
 const MOST_ROWS: usize = 40;
 /// Flags that are printed; `findings.json` holds all.
 const MOST_FLAGS: usize = 25;
 
-/// The summary of a run whose files are in `out`.
-pub fn of(planned: &Planned<'_>, out: &Path) -> String {
+/// The summary of a run whose `outputs` are in the folder `out`.
+pub fn of(planned: &Planned<'_>, outputs: &[&Output], out: &Path) -> String {
     let mut text = format!("{}\n", one_line(&planned.plan.title));
     text.push_str(&recognised(planned));
     text.push_str(&totals(planned));
@@ -29,7 +29,7 @@ pub fn of(planned: &Planned<'_>, out: &Path) -> String {
     text.push('\n');
     text.push_str(&flags(planned));
     text.push('\n');
-    text.push_str(&files(out));
+    text.push_str(&files(outputs, out));
     text.push('\n');
     text.push_str(&wrapped(CAUTION, "", ""));
     text
@@ -107,15 +107,18 @@ fn totals(planned: &Planned<'_>) -> String {
 }
 
 /// What passes between rivers and aquifer before pumping and after, where
-/// something does before.
+/// more than the error of the heads does before: a head wrong by δ moves T δ.
 fn exchange(planned: &Planned<'_>) -> String {
     let words = Words::of(planned);
     let verb = |m3_d: f64| if m3_d < 0.0 { "takes" } else { "gives" };
     let site = planned.solution.site();
+    let noise_m3_d = site.aquifer.transmissivity.si() * planned.solution.error_bound_m();
+    let counts = |m3_d: &f64| m3_d.abs() > noise_m3_d;
     let boundaries = planned.findings.boundaries.iter().zip(&site.edges);
     let told: Vec<String> = boundaries
+        .clone()
         .filter_map(|(finding, edge)| {
-            let before = finding.exchange_before_m3_d.filter(|&m3_d| m3_d != 0.0)?;
+            let before = finding.exchange_before_m3_d.filter(counts)?;
             let after = finding.exchange_after_m3_d()?;
             let again = match verb(after) {
                 same if same == verb(before) => String::new(),
@@ -133,7 +136,15 @@ fn exchange(planned: &Planned<'_>) -> String {
     if told.is_empty() {
         return String::new();
     }
-    wrapped(&told.join("; "), "", "  ")
+    let mut text = told.join("; ");
+    let open: Vec<String> = boundaries
+        .filter(|(finding, _)| finding.bounds_an_aquifer && finding.exchange_before_m3_d.is_none())
+        .map(|(_, edge)| one_line(&edge.name))
+        .collect();
+    if !open.is_empty() {
+        let _ = write!(text, "; not determined for {}", listed(&open));
+    }
+    wrapped(&text, "", "  ")
 }
 
 /// A table with a plain heading and numbers to the right.
@@ -256,8 +267,13 @@ fn flags(planned: &Planned<'_>) -> String {
 }
 
 /// Where the files are.
-fn files(out: &Path) -> String {
-    let names: Vec<&str> = OUTPUTS.iter().map(|(name, _)| *name).collect();
+fn files(outputs: &[&Output], out: &Path) -> String {
+    let styled = outputs.iter().any(|output| output.files.len() > 1);
+    let names: Vec<&str> = outputs
+        .iter()
+        .filter_map(|output| output.files.first().copied())
+        .chain(styled.then_some("and a style (.sld) for each layer"))
+        .collect();
     wrapped(
         &names.join(", "),
         &format!("Written to {}: ", one_line(&out.display().to_string())),

@@ -262,6 +262,21 @@ impl Mesh {
         self.in_use.iter().map(|&node| self.node(node))
     }
 
+    /// Of values at the nodes those on the regular grid, row by row from the
+    /// south-west corner, where the grid has these columns and this spacing.
+    pub fn on_grid<'v>(
+        &self,
+        values: &'v [f64],
+        columns: usize,
+        spacing_m: f64,
+    ) -> Option<&'v [f64]> {
+        let grid = &self.grid;
+        let same = grid.columns == columns
+            && grid.step_x_m == spacing_m
+            && (grid.step_y_m == spacing_m || grid.rows == 1);
+        same.then(|| values.get(..grid.node_count())).flatten()
+    }
+
     /// How many edges there are, used or not.
     pub(super) fn edge_count(&self) -> usize {
         3 * self.grid.node_count() + self.special_edges.len()

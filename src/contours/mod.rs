@@ -13,7 +13,8 @@
 //!
 //! Limits: between two places a line is straight. A bump of the field that
 //! lies wholly within one triangle is not seen; a steady head has none, since
-//! its extremes lie at wells and on edges. Where the field jumps, as at a
+//! its extremes lie at wells and on edges, but for the broad crest of a mound
+//! that recharge builds. Where the field jumps, as at a
 //! corner of two rivers of different stage, levels meet within 0.1 µm.
 //! Source: marching triangles is common practice; the root search is
 //! Chandrupatla (1997), see `roots.rs`.

@@ -9,9 +9,12 @@
 //! | wedge between two rivers | linear in the angle |
 //! | half-plane, stage falling along the river | linear along the river |
 //! | other rivers of different stage | Σ stage · harmonic measure of the river |
+//! | no closed form | all of it by the general solver |
 //! | half-plane, river across an open end | plus slope · distance from the river |
+//! | half-plane, river behind a clogged bank | plus slope · (distance from the river + skin) |
 //! | plane around a lake | plus g · x (1 − R²/r²), uniform far away |
 //!
+//! Recharge adds its own mound (`recharge`).
 //! The harmonic measure of a river seen from x is the share that it would give
 //! to a well at x, so `green` knows it; on the river itself it jumps with the
 //! last digit of x, so x is taken a hair inside. What the plan states is compared with
@@ -22,6 +25,9 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::ambient_error::AmbientError;
+use super::free_flow;
+use super::recharge::Recharge;
+use super::solved::Solved;
 use crate::green::Green;
 use crate::outline::{Axis, Kind, Outline, Piece, Shape};
 use crate::site::{Ambient, Point, Site, Vector, direction_of_azimuth};
@@ -37,7 +43,7 @@ const GRADIENT_TOLERANCE: f64 = 0.0175;
 const NO_GRADIENT: f64 = 1e-6;
 
 /// The head before any pumping, in an outline's canonical frame.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub(super) struct AmbientHead {
     /// Head at the canonical origin, without the other parts.
     pub(super) level_m: f64,
@@ -49,11 +55,40 @@ pub(super) struct AmbientHead {
     pub(super) per_radian_m: f64,
     /// Parts of sides whose stage differs from `level_m`, and by how much.
     pub(super) measured: Vec<(usize, Range<f64>, f64)>,
+    /// All of it, where the outline has no closed form.
+    pub(super) solved: Option<Solved>,
+    /// The mound built by recharge, where there is some.
+    pub(super) recharge: Option<Recharge>,
+}
+
+/// What a head before pumping is built from beside stages and uniform flow.
+pub(super) enum Built {
+    /// The mound of recharge, where there is some.
+    InClosedForm(Option<Recharge>),
+    /// All of it, the mound and the uniform flow included.
+    BySolver(Solved),
 }
 
 impl AmbientHead {
+    /// Heads before pumping at canonical places, metres. Parallel where the
+    /// outline has no closed form.
+    pub fn heads_m(&self, places: &[Complex64], green: &dyn Green, shape: &Shape) -> Vec<f64> {
+        let closed_form = places.iter().map(|z| self.closed_form_m(*z, green, shape));
+        let mut heads_m = closed_form.collect::<Vec<_>>();
+        if let Some(solved) = &self.solved {
+            solved.general.add_heads_before_m(places, &mut heads_m);
+        }
+        heads_m
+    }
+
     /// Head before pumping at a canonical place, metres.
     pub fn head_m(&self, z: Complex64, green: &dyn Green, shape: &Shape) -> f64 {
+        let solved = self.solved.as_ref();
+        solved.map_or(0.0, |solved| solved.general.head_before_m(z))
+            + self.closed_form_m(z, green, shape)
+    }
+
+    fn closed_form_m(&self, z: Complex64, green: &dyn Green, shape: &Shape) -> f64 {
         let linear = (self.slope.conj() * z).re;
         let bend = self
             .lake_radius_m
@@ -65,7 +100,8 @@ impl AmbientHead {
             .iter()
             .map(|(side, along, rise_m)| rise_m * green.share(*side, along.clone(), inside))
             .sum();
-        self.level_m + linear * bend + turned + measured
+        let mound = self.recharge.map_or(0.0, |recharge| recharge.rise_m(z));
+        self.level_m + linear * bend + turned + measured + mound
     }
 
     /// ∂h/∂x + i ∂h/∂y at a canonical place. The part of harmonic measures is
@@ -81,10 +117,9 @@ impl AmbientHead {
                 self.slope - radius * radius * inner
             }
         };
-        let turned = if self.per_radian_m == 0.0 {
-            Complex64::new(0.0, 0.0)
-        } else {
-            self.per_radian_m * i * z / z.norm_sqr()
+        let turned = match self.per_radian_m {
+            0.0 => Complex64::ZERO,
+            rise_m => rise_m * i * z / z.norm_sqr(),
         };
         let measured: Complex64 = self
             .measured
@@ -96,41 +131,20 @@ impl AmbientHead {
                 rise_m * Complex64::new(along_x, along_y) / (2.0 * step_m)
             })
             .sum();
-        linear + turned + measured
+        let mound = self.recharge.map(|recharge| recharge.gradient(z));
+        let solved = self.solved.as_ref();
+        let solved = solved.map(|solved| solved.general.gradient_before(z));
+        linear + turned + measured + mound.unwrap_or_default() + solved.unwrap_or_default()
     }
-}
 
-/// Which uniform flow the edges leave free, in the canonical frame.
-#[derive(Clone, Copy, Debug, PartialEq)]
-enum FreeFlow {
-    /// None.
-    No,
-    /// Along one axis only: a unit number.
-    Along(Complex64),
-    /// In any direction.
-    Any,
-}
-
-fn free_flow(shape: &Shape) -> FreeFlow {
-    use Axis::{OneEdge, Open, TwoEdges};
-    use Kind::{FixedHead, NoFlow};
-    let (x_axis, y_axis) = (Complex64::new(1.0, 0.0), Complex64::i());
-    match *shape {
-        Shape::DiskExterior { .. } => FreeFlow::Any,
-        Shape::Wedge { .. } | Shape::Disk { .. } => FreeFlow::No,
-        Shape::Axes { x, y } => match (x, y) {
-            (Open, Open) => FreeFlow::Any,
-            (OneEdge(FixedHead), Open | OneEdge(NoFlow)) => FreeFlow::Along(x_axis),
-            (OneEdge(NoFlow), Open | OneEdge(FixedHead)) => FreeFlow::Along(y_axis),
-            (
-                TwoEdges {
-                    kinds: [NoFlow, NoFlow],
-                    ..
-                },
-                Open | OneEdge(FixedHead),
-            ) => FreeFlow::Along(y_axis),
-            _ => FreeFlow::No,
-        },
+    /// The uniform flow that a plan states as the one far away, where the
+    /// edges leave one free and bend it.
+    fn far_flow(&self) -> Option<Complex64> {
+        match (&self.solved, self.lake_radius_m) {
+            (Some(solved), _) => solved.far_flow,
+            (None, Some(_)) => Some(self.slope),
+            (None, None) => None,
+        }
     }
 }
 
@@ -141,21 +155,23 @@ pub(super) fn solve(
     site: &Site,
     outline: &Outline,
     green: &dyn Green,
+    built: Built,
     notes: &mut Vec<String>,
 ) -> Result<AmbientHead, Vec<AmbientError>> {
     let stated = stated_gradient(site)?;
-    let mut head = fixed_by_rivers(outline);
-    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
-    let canonical = outline.frame.gradient_to_canonical(stated);
-    let free = match free_flow(&outline.shape) {
-        FreeFlow::No => Complex64::new(0.0, 0.0),
-        FreeFlow::Any => canonical,
-        FreeFlow::Along(axis) => axis * (canonical * axis.conj()).re,
+    let mut head = match built {
+        Built::BySolver(solved) => AmbientHead {
+            solved: Some(solved),
+            ..AmbientHead::default()
+        },
+        Built::InClosedForm(recharge) => {
+            notes.extend(recharge.map(|recharge| recharge.note()));
+            let mut head = fixed_by_rivers(outline);
+            add_free_flow(&mut head, outline, stated);
+            AmbientHead { recharge, ..head }
+        }
     };
-    head.slope += free;
-    if let Shape::DiskExterior { radius_m } = outline.shape {
-        head.lake_radius_m = Some(radius_m);
-    }
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
     let Some(ambient) = &site.ambient else {
         return if has_river {
             Ok(head)
@@ -177,8 +193,20 @@ pub(super) fn solve(
     Ok(head)
 }
 
+/// Adds what the edges leave free of a stated uniform flow.
+fn add_free_flow(head: &mut AmbientHead, outline: &Outline, stated: Vector) {
+    let free = free_flow::part_of(&outline.shape, outline.frame.gradient_to_canonical(stated));
+    head.slope += free;
+    match outline.shape {
+        // ∂h/∂x = (h − stage)/b: the flow through the bank takes a step of head.
+        Shape::CloggedHalfPlane { skin_m } => head.level_m += free.re * skin_m,
+        Shape::DiskExterior { radius_m } => head.lake_radius_m = Some(radius_m),
+        _ => {}
+    }
+}
+
 /// ∇h of the plan's `[ambient]`, in the site's frame.
-fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
+pub(super) fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
     match &site.ambient {
         Some(ambient) if ambient.gradient > 0.0 => match ambient.toward_deg {
             Some(azimuth) => Ok(-ambient.gradient * direction_of_azimuth(azimuth)),
@@ -192,7 +220,7 @@ fn stated_gradient(site: &Site) -> Result<Vector, Vec<AmbientError>> {
 
 /// The head that the rivers fix, without any uniform flow.
 fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let rivers: Vec<(usize, &Piece)> = kinds
         .iter()
         .zip(&outline.sides)
@@ -202,16 +230,12 @@ fn fixed_by_rivers(outline: &Outline) -> AmbientHead {
         .collect();
     let mut head = AmbientHead {
         level_m: rivers.first().map_or(0.0, |(_, piece)| piece.stage_m),
-        slope: Complex64::new(0.0, 0.0),
-        lake_radius_m: None,
-        per_radian_m: 0.0,
-        measured: Vec::new(),
+        ..AmbientHead::default()
     };
-    if let [(0, piece)] = rivers.as_slice() {
-        // A half-plane's river may fall along its side, x = 0.
-        head.slope = Complex64::new(0.0, piece.stage_slope);
-        return head;
-    }
+    // A half-plane's rivers may fall along its side, x = 0, all alike; their
+    // levels at y = 0 may differ.
+    let fall = rivers.first().map_or(0.0, |(_, piece)| piece.stage_slope);
+    head.slope = Complex64::new(0.0, fall);
     // Several rivers that make one side at one stage count as one.
     let mut sides: Vec<(usize, f64)> = rivers
         .iter()
@@ -332,14 +356,17 @@ impl Comparison<'_> {
                 faults.push(AmbientError::HeadDiffers {
                     stated_m: level.si(),
                     fixed_m,
+                    cause: match self.head.recharge {
+                        Some(_) => "the rivers and the recharge",
+                        None => "the rivers",
+                    },
                 });
             }
         }
         if stated.norm() > NO_GRADIENT {
             let step_m = 1e-3 * self.outline.distance_to_edge_m(place);
-            // Around a lake the flow that a plan states is the one far away.
-            let gradient = match self.head.lake_radius_m {
-                Some(_) => self.head.slope,
+            let gradient = match self.head.far_flow() {
+                Some(flow) => flow,
                 None => self.head.gradient(z, self.green, step_m),
             };
             let fixed = self.outline.frame.gradient_to_site(gradient);
@@ -372,7 +399,11 @@ impl Comparison<'_> {
 
     fn is_level(&self) -> bool {
         let head = self.head;
-        head.slope.norm() == 0.0 && head.per_radian_m == 0.0 && head.measured.is_empty()
+        head.slope.norm() == 0.0
+            && head.per_radian_m == 0.0
+            && head.measured.is_empty()
+            && head.solved.is_none()
+            && head.recharge.is_none()
     }
 
     fn middle_of_wells(&self) -> Point {

@@ -21,10 +21,15 @@ pub(super) enum AmbientError {
     #[error("the ambient gradient contradicts the edges: {}", both(*stated, *fixed))]
     GradientDiffers { stated: Vector, fixed: Vector },
     #[error(
-        "the ambient head is {stated_m:.3} m, but the rivers make it {fixed_m:.3} m there \
+        "the ambient head is {stated_m:.3} m, but {cause} make it {fixed_m:.3} m there \
          ({:+.3} m)", fixed_m - stated_m
     )]
-    HeadDiffers { stated_m: f64, fixed_m: f64 },
+    HeadDiffers {
+        stated_m: f64,
+        fixed_m: f64,
+        /// What fixes it.
+        cause: &'static str,
+    },
     #[error("[ambient] is given at ({:.1}, {:.1}) m from the site's origin, outside the aquifer", at.x, at.y)]
     Outside { at: Point },
 }

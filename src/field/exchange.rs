@@ -10,12 +10,16 @@
 //! | bent around a lake | 0: what enters on one side leaves on the other |
 //! | linear in a wedge's angle | none: infinite at the apex, where two stages meet |
 //! | by harmonic measures | none, see below |
+//! | in a general outline | by the solver; none where two stages meet |
 //!
 //! Rivers of several stages that are not just two opposite ones always touch
 //! somewhere, if only at infinity, and where two stages touch the flow from one
 //! to the other is infinite. A river among them that touches none of another
 //! stage exchanges a finite amount, for which there is no closed form here: it
 //! is left open too.
+//!
+//! Recharge leaves through the rivers whatever their stages: `recharge` knows
+//! how much through each.
 //!
 //! The inflow of a linear head is exact but for four roundings.
 
@@ -33,7 +37,7 @@ impl WellField {
     /// barrier, none where it is infinite or not determined.
     pub fn ambient_inflow_m3_d(&self, edge: usize) -> Option<f64> {
         let shape = &self.outline.shape;
-        let kinds = shape.side_kinds();
+        let kinds = self.outline.side_kinds();
         let sides = kinds.iter().zip(&self.outline.sides).enumerate();
         let inflow_m: Option<f64> = sides
             .filter(|(_, (kind, _))| **kind == Kind::FixedHead)
@@ -41,7 +45,7 @@ impl WellField {
             .filter(|(_, piece)| piece.edge == edge)
             .map(|(side, piece)| inflow_m(&self.ambient, shape, side, &piece.along))
             .sum();
-        inflow_m.map(|inflow_m| self.transmissivity_m2_d * inflow_m)
+        Some(self.transmissivity_m2_d * inflow_m? - self.recharge_to_m3_d(edge)?)
     }
 }
 
@@ -54,7 +58,13 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
         lake_radius_m: _,
         per_radian_m,
         measured,
+        solved,
+        // Added by the caller, as what leaves.
+        recharge: _,
     } = head;
+    if let Some(solved) = solved {
+        return solved.general.outflow_before_m(side, along);
+    }
     if *per_radian_m != 0.0 || !measured.is_empty() {
         return None;
     }
@@ -71,7 +81,8 @@ fn inflow_m(head: &AmbientHead, shape: &Shape, side: usize, along: &Range<f64>) 
 fn inward(shape: &Shape, side: usize) -> Complex64 {
     let (x, y) = match *shape {
         Shape::Axes { x, y } => (x, y),
-        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+        Shape::CloggedHalfPlane { .. } => return Complex64::ONE,
+        Shape::Wedge { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } | Shape::General => {
             return Complex64::ZERO;
         }
     };

@@ -7,10 +7,14 @@ mod accuracy;
 mod ambient;
 mod ambient_error;
 mod exchange;
+mod free_flow;
+mod recharge;
+mod solved;
 mod steady;
 
 use std::f64::consts::FRAC_1_PI;
 use std::ops::Range;
+use std::sync::Arc;
 
 use num_complex::Complex64;
 use rayon::prelude::*;
@@ -19,6 +23,7 @@ use crate::green::{Green, Source};
 use crate::outline::{Kind, Outline, Shape};
 use crate::site::{Length, Point, Refusal, Site, Vector};
 use ambient::AmbientHead;
+use ambient_error::AmbientError;
 
 /// Points that one task evaluates: enough to hide the cost of a task.
 const POINTS_A_TASK: usize = 2048;
@@ -26,7 +31,7 @@ const POINTS_A_TASK: usize = 2048;
 /// The heads of one aquifer with its wells.
 pub struct WellField {
     outline: Outline,
-    green: Box<dyn Green>,
+    green: Arc<dyn Green>,
     transmissivity_m2_d: f64,
     wells: Vec<FieldWell>,
     ambient: AmbientHead,
@@ -53,27 +58,39 @@ impl WellField {
     /// Solves one aquifer.
     ///
     /// # Errors
-    /// Where no steady state exists, or the ambient head contradicts the
-    /// edges; the refusals say which numbers disagree and what would help.
+    /// Where no steady state exists, the ambient head contradicts the edges, or
+    /// the solver finds no heads; the refusals say what would help.
     pub fn solve(site: &Site, outline: Outline) -> Result<Self, Vec<Refusal>> {
         let mut notes = Vec::new();
-        let green = steady::green_of(site, &outline, &mut notes).map_err(|fault| vec![fault])?;
-        let ambient = ambient::solve(site, &outline, green.as_ref(), &mut notes)
-            .map_err(|faults| faults.into_iter().map(Refusal::from).collect::<Vec<_>>())?;
-        let datum = steady::datum(site, &outline, &mut notes);
-        let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
-        let rim_factor = outline.frame.stretch.rim_factor();
-        let of_well = |&index: &usize| {
-            let well = site.wells.get(index)?;
-            Some(FieldWell {
-                index,
-                pole: outline.frame.to_canonical(well.at),
-                pumping_m3_d: well.pumping.si(),
-                rim_m: well.radius.si() * rim_factor,
-            })
+        let refusals = |faults: Vec<AmbientError>| -> Vec<Refusal> {
+            faults.into_iter().map(Refusal::from).collect()
         };
-        let mut wells: Vec<FieldWell> = outline.wells.iter().filter_map(of_well).collect();
-        wells.sort_by_key(|well| well.index);
+        outline
+            .check_drainage(site)
+            .map_err(|fault| vec![fault.into()])?;
+        let wells = wells_of(site, &outline);
+        let stated = ambient::stated_gradient(site).map_err(refusals)?;
+        let canonical = outline.frame.gradient_to_canonical(stated);
+        let solved =
+            solved::solve(site, &outline, &wells, canonical).map_err(|fault| vec![fault])?;
+        let green: Arc<dyn Green> = match &solved {
+            Some(solved) => solved.general.clone(),
+            None => steady::green_of(site, &outline)
+                .map_err(|fault| vec![fault])?
+                .into(),
+        };
+        steady::note_radius(site, &outline, &mut notes);
+        let hardest_edge = solved
+            .as_ref()
+            .and_then(|solved| solved.hardest_edge(&outline));
+        let parts = match solved {
+            Some(solved) => ambient::Built::BySolver(solved),
+            None => ambient::Built::InClosedForm(recharge::of(site, &outline)),
+        };
+        let ambient =
+            ambient::solve(site, &outline, green.as_ref(), parts, &mut notes).map_err(refusals)?;
+        let datum = steady::datum(site, &outline, &mut notes);
+        let has_river = outline.side_kinds().contains(&Kind::FixedHead);
         let mut field = Self {
             wells,
             transmissivity_m2_d: site.aquifer.transmissivity.si(),
@@ -87,10 +104,11 @@ impl WellField {
             ambient,
             datum,
             error_bound_m: 0.0,
-            hardest_edge: None,
+            hardest_edge,
             notes,
         };
         field.error_bound_m = accuracy::bound_m(&field);
+        accuracy::check(&field).map_err(|fault| vec![fault])?;
         Ok(field)
     }
 
@@ -106,15 +124,19 @@ impl WellField {
 
     /// Heads, metres, in point order; NaN outside the aquifer. Parallel.
     pub fn heads_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |z, drawdown_m| {
+        self.evaluate(points, |places, drawdowns_m| {
             let (green, shape) = (self.green.as_ref(), &self.outline.shape);
-            self.ambient.head_m(z, green, shape) - drawdown_m
+            let before_m = self.ambient.heads_m(places, green, shape).into_iter();
+            let heads = before_m
+                .zip(drawdowns_m)
+                .map(|(before, drawdown)| before - drawdown);
+            heads.collect()
         })
     }
 
     /// Drawdowns, metres, positive where the head falls; NaN outside. Parallel.
     pub fn drawdowns_m(&self, points: &[Point]) -> Vec<f64> {
-        self.evaluate(points, |_, drawdown_m| drawdown_m)
+        self.evaluate(points, |_, drawdowns_m| drawdowns_m)
     }
 
     /// The head before any pumping, metres; NaN outside.
@@ -125,6 +147,15 @@ impl WellField {
         let z = self.outline.frame.to_canonical(point);
         self.ambient
             .head_m(z, self.green.as_ref(), &self.outline.shape)
+    }
+
+    /// Heads before any pumping, metres, in point order; NaN outside. Parallel.
+    pub fn ambient_heads_m(&self, points: &[Point]) -> Vec<f64> {
+        points
+            .par_iter()
+            .with_min_len(POINTS_A_TASK)
+            .map(|&point| self.ambient_head_m(point))
+            .collect()
     }
 
     /// Gradient of the head, metres a metre; NaN outside the aquifer, zero
@@ -149,6 +180,15 @@ impl WellField {
             .map(|well| self.strength_m(well) * self.green.gradient(z, well.pole))
             .sum();
         self.outline.frame.gradient_to_site(before - pumped)
+    }
+
+    /// Flow of water through the aquifer's whole thickness, m³/d for each
+    /// metre of width across it: −T·∇h, T the tensor of an anisotropic
+    /// aquifer. NaN outside the aquifer, zero within a well's rim.
+    pub fn flow_m2_d(&self, point: Point) -> Vector {
+        let gradient = self.head_gradient(point);
+        let stretch = &self.outline.frame.stretch;
+        stretch.conductivity_over_mean(gradient) * -self.transmissivity_m2_d
     }
 
     /// Drawdown, metres, that the well `Site::wells[well]` of this aquifer
@@ -207,6 +247,26 @@ impl WellField {
         self.wells.iter().map(given).sum()
     }
 
+    /// Recharge that leaves the aquifer through a part of a side, m³/d; none
+    /// where the part is endless. It does so with or without wells: what they
+    /// take from a river is `inflow_m3_d`.
+    pub fn recharge_through_m3_d(&self, side: usize, along: &Range<f64>) -> Option<f64> {
+        let through = |recharge: recharge::Recharge| recharge.through_m3_d(side, along);
+        self.ambient.recharge.map_or(Some(0.0), through)
+    }
+
+    /// Recharge that edge `Site::edges[edge]` takes up, m³/d, none where it
+    /// takes up recharge along an endless reach. Over all edges of a closed outline this is
+    /// N times its area.
+    pub fn recharge_to_m3_d(&self, edge: usize) -> Option<f64> {
+        let pieces = self.outline.sides.iter().enumerate();
+        pieces
+            .flat_map(|(side, pieces)| pieces.iter().map(move |piece| (side, piece)))
+            .filter(|(_, piece)| piece.edge == edge)
+            .map(|(side, piece)| self.recharge_through_m3_d(side, &piece.along))
+            .sum()
+    }
+
     /// A proven bound on the error of a head, metres; of a closed form, which
     /// has no other error, on its rounding.
     pub fn error_bound_m(&self) -> f64 {
@@ -224,6 +284,12 @@ impl WellField {
         self.hardest_edge
     }
 
+    /// Number of unknowns of the general solver; none in closed form.
+    pub fn unknowns(&self) -> Option<usize> {
+        let solved = self.ambient.solved.as_ref();
+        solved.map(|solved| solved.general.unknowns())
+    }
+
     /// How it was computed, in a few words.
     pub fn method(&self) -> String {
         if let Some(radius_m) = self.influence_radius_m {
@@ -232,6 +298,10 @@ impl WellField {
         match self.outline.shape {
             Shape::Wedge { .. } => "image wells in closed form, as a strip in the logarithm",
             Shape::Disk { .. } | Shape::DiskExterior { .. } => "one image by inversion",
+            Shape::CloggedHalfPlane { .. } => {
+                "one image well and a line of image sinks behind it, in closed form"
+            }
+            Shape::General => "general solver on the edges, its error proven",
             Shape::Axes { .. } if self.is_closed_basin() => {
                 "image wells in closed form, pumping and injection in balance"
             }
@@ -273,8 +343,7 @@ impl WellField {
     /// Whether barriers close the aquifer on all sides, so that pumping and
     /// injection must balance.
     pub fn is_closed_basin(&self) -> bool {
-        !self.outline.shape.side_kinds().contains(&Kind::FixedHead)
-            && self.influence_radius_m.is_none()
+        !self.outline.side_kinds().contains(&Kind::FixedHead) && self.influence_radius_m.is_none()
     }
 
     /// Q/T, metres.
@@ -288,47 +357,68 @@ impl WellField {
         })
     }
 
-    /// Σ Q/T G at each point of the aquifer, handed to `finish` with the
-    /// canonical place; NaN elsewhere.
+    /// Σ Q/T G at the points of the aquifer, handed to `finish` with their
+    /// canonical places; NaN elsewhere.
     fn evaluate(
         &self,
         points: &[Point],
-        finish: impl Fn(Complex64, f64) -> f64 + Sync,
+        finish: impl Fn(&[Complex64], Vec<f64>) -> Vec<f64> + Sync,
     ) -> Vec<f64> {
-        let sources: Vec<_> = self
-            .wells
-            .iter()
-            .map(|well| Source {
-                pole: well.pole,
-                strength_m: self.strength_m(well),
-                rim_m: well.rim_m,
-            })
-            .collect();
+        let source = |well: &FieldWell| Source {
+            pole: well.pole,
+            strength_m: self.strength_m(well),
+            rim_m: well.rim_m,
+        };
+        let sources: Vec<_> = self.wells.iter().map(source).collect();
         let at_datum: f64 = self
             .wells
             .iter()
             .map(|well| self.strength_m(well) * self.green_at_datum(well))
             .sum();
+        let places: Vec<Option<Complex64>> = points
+            .par_iter()
+            .with_min_len(POINTS_A_TASK)
+            .map(|point| {
+                self.holds(*point)
+                    .then(|| self.outline.frame.to_canonical(*point))
+            })
+            .collect();
+        // The general solver shares its work out itself, by where places are.
+        let points_a_task = match self.outline.boundary {
+            Some(_) => points.len().max(1),
+            None => POINTS_A_TASK,
+        };
         let mut values = vec![f64::NAN; points.len()];
-        points
-            .par_chunks(POINTS_A_TASK)
-            .zip(values.par_chunks_mut(POINTS_A_TASK))
-            .for_each(|(points, values)| {
-                let inside: Vec<_> = points.iter().map(|point| self.holds(*point)).collect();
-                let held = points.iter().zip(&inside).filter(|(_, inside)| **inside);
-                let places: Vec<_> = held
-                    .map(|(point, _)| self.outline.frame.to_canonical(*point))
-                    .collect();
-                let mut drawdowns_m = vec![-at_datum; places.len()];
-                self.green.superpose(&sources, &places, &mut drawdowns_m);
-                let slots = values
-                    .iter_mut()
-                    .zip(&inside)
-                    .filter(|(_, inside)| **inside);
-                for ((value, _), (z, drawdown_m)) in slots.zip(places.iter().zip(drawdowns_m)) {
-                    *value = finish(*z, drawdown_m);
+        places
+            .par_chunks(points_a_task)
+            .zip(values.par_chunks_mut(points_a_task))
+            .for_each(|(places, values)| {
+                let held: Vec<_> = places.iter().copied().flatten().collect();
+                let mut drawdowns_m = vec![-at_datum; held.len()];
+                self.green.superpose(&sources, &held, &mut drawdowns_m);
+                let slots = values.iter_mut().zip(places);
+                let slots = slots.filter(|(_, place)| place.is_some());
+                for ((slot, _), value) in slots.zip(finish(&held, drawdowns_m)) {
+                    *slot = value;
                 }
             });
         values
     }
+}
+
+/// The wells of an outline in its canonical frame, in order of their index.
+fn wells_of(site: &Site, outline: &Outline) -> Vec<FieldWell> {
+    let rim_factor = outline.frame.stretch.rim_factor();
+    let of_well = |&index: &usize| {
+        let well = site.wells.get(index)?;
+        Some(FieldWell {
+            index,
+            pole: outline.frame.to_canonical(well.at),
+            pumping_m3_d: well.pumping.si(),
+            rim_m: well.radius.si() * rim_factor,
+        })
+    };
+    let mut wells: Vec<FieldWell> = outline.wells.iter().filter_map(of_well).collect();
+    wells.sort_by_key(|well| well.index);
+    wells
 }

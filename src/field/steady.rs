@@ -9,21 +9,25 @@ use crate::site::{Refusal, Site, Subject};
 /// Pumping and injection balance when they differ by less than this share.
 const BALANCE: f64 = 1e-6;
 
-/// The Green's function of an outline in which a steady state exists.
-pub(super) fn green_of(
-    site: &Site,
-    outline: &Outline,
-    notes: &mut Vec<String>,
-) -> Result<Box<dyn Green>, Refusal> {
+/// The Green's function of an outline in closed form in which a steady state
+/// exists.
+pub(super) fn green_of(site: &Site, outline: &Outline) -> Result<Box<dyn Green>, Refusal> {
     let radius_m = site.aquifer.influence_radius.map(|radius| radius.si());
     let green = green::of(&outline.shape, radius_m).map_err(|error| refusal(error, outline))?;
-    let has_river = outline.shape.side_kinds().contains(&Kind::FixedHead);
-    let closed = is_closed(outline);
-    match radius_m {
+    if is_closed(outline) {
+        check_balance(site, outline)?;
+    }
+    Ok(green)
+}
+
+/// Notes what an influence radius of the plan is used for.
+pub(super) fn note_radius(site: &Site, outline: &Outline, notes: &mut Vec<String>) {
+    let has_river = outline.side_kinds().contains(&Kind::FixedHead);
+    match site.aquifer.influence_radius.map(|radius| radius.si()) {
         Some(_) if has_river => notes.push(
             "influence_radius is not used: a river fixes the head of this aquifer.".to_owned(),
         ),
-        Some(_) if closed => notes.push(
+        Some(_) if is_closed(outline) => notes.push(
             "influence_radius is not used: barriers close this aquifer on all sides.".to_owned(),
         ),
         Some(radius_m) => notes.push(format!(
@@ -32,10 +36,6 @@ pub(super) fn green_of(
         )),
         None => {}
     }
-    if closed {
-        check_balance(site, outline)?;
-    }
-    Ok(green)
 }
 
 /// In a closed basin, the place whose head `[ambient]` fixes; without one the
@@ -58,8 +58,7 @@ pub(super) fn datum(site: &Site, outline: &Outline, notes: &mut Vec<String>) -> 
 }
 
 fn is_closed(outline: &Outline) -> bool {
-    let sides = outline.shape.side_kinds();
-    sides.len() == 4 && !sides.contains(&Kind::FixedHead)
+    outline.is_closed() && !outline.side_kinds().contains(&Kind::FixedHead)
 }
 
 fn check_balance(site: &Site, outline: &Outline) -> Result<(), Refusal> {
@@ -106,6 +105,12 @@ fn refusal(error: GreenError, outline: &Outline) -> Refusal {
             .replace("an wedge", "a wedge"),
             "add influence_radius to [aquifer] (Thiem's formula then ends each cone there), or a \
              river",
+        ),
+        GreenError::General => (
+            Subject::Plan,
+            "such an outline is solved on its boundary, not by image wells".to_owned(),
+            "draw it with a river, or simplify it to a straight line, a strip, a wedge, a \
+             half-strip, a box or a single circle",
         ),
         GreenError::TooManyImages { .. } => (
             Subject::Aquifer(Some("influence_radius")),

@@ -112,7 +112,6 @@ fn bounds(field: &WellField, edge: usize) -> bool {
 fn has_river(field: &WellField) -> bool {
     field
         .outline()
-        .shape
         .side_kinds()
         .contains(&crate::outline::Kind::FixedHead)
 }

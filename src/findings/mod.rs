@@ -27,7 +27,7 @@ pub use reach::ReachFinding;
 pub use remedy::{CommonFactor, NewRate, Rates, Remedy};
 pub use roof::RoofFinding;
 pub use solution::Solution;
-pub use survey::{Drawdowns, Heads, Survey, SurveyError, SurveyedAquifer};
+pub use survey::{AtNodes, Drawdowns, Heads, Survey, SurveyError, SurveyedAquifer};
 pub use well::{WellFinding, interference_share};
 pub use window::{MOST_NODES, MapWindow};
 

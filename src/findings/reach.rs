@@ -39,7 +39,7 @@ pub fn all(solution: &Solution) -> Vec<ReachFinding> {
 
 fn of_aquifer(site: &Site, index: usize, field: &WellField) -> Vec<ReachFinding> {
     let outline = field.outline();
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let mut reaches = Vec::new();
     for (side, (kind, pieces)) in kinds.iter().zip(&outline.sides).enumerate() {
         if *kind != Kind::FixedHead {
@@ -47,13 +47,11 @@ fn of_aquifer(site: &Site, index: usize, field: &WellField) -> Vec<ReachFinding>
         }
         for piece in pieces {
             for along in outline.reaches(site, side, piece) {
-                let [from, to] = outline.reach_line(side, &along, 0.0);
-                let is_endless = along.start.is_infinite() || along.end.is_infinite();
                 reaches.push(ReachFinding {
                     edge: piece.edge,
                     field: index,
                     side,
-                    length_m: (!is_endless).then(|| (to - from).norm()),
+                    length_m: outline.reach_length_m(side, &along),
                     inflow_m3_d: field.inflow_through_m3_d(side, &along),
                     along,
                 });

@@ -3,8 +3,9 @@
 //!
 //! The area is measured between the contour of the roof's elevation and the
 //! outline. The lowest head is looked for at the grid's nodes and at the rims
-//! of the wells: the head has no minimum elsewhere inside an aquifer without
-//! recharge (maximum principle), only on its edges.
+//! of the wells: the head has no minimum elsewhere inside an aquifer that loses
+//! no water over its area (minimum principle), only on its edges. Where `recharge` is
+//! negative the nodes must be fine enough.
 
 use super::flag::Cause;
 use super::neighbour::largest;
@@ -77,11 +78,14 @@ fn lows(solution: &Solution, wells: &[WellFinding], survey: &Survey<'_>, roof_m:
     let may_be_low = survey
         .head_range_m()
         .is_none_or(|[low_m, _]| low_m < roof_m);
-    let nodes: Vec<Point> = window.nodes().filter(|_| may_be_low).collect();
-    let heads_m = solution.heads_m(&nodes);
-    let on_grid = nodes
-        .into_iter()
-        .zip(heads_m)
+    let heads_m: &[f64] = if may_be_low {
+        &survey.at_nodes().heads_m
+    } else {
+        &[]
+    };
+    let on_grid = window
+        .nodes()
+        .zip(heads_m.iter().copied())
         .filter(|&(_, head_m)| head_m < roof_m)
         .map(|(at, head_m)| {
             let ambient_m = solution.ambient_head_m(at);

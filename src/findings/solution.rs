@@ -79,6 +79,11 @@ impl Solution {
         self.gather(points, WellField::drawdowns_m)
     }
 
+    /// Heads before any pumping, metres, in point order; NaN outside.
+    pub fn ambient_heads_m(&self, points: &[Point]) -> Vec<f64> {
+        self.gather(points, WellField::ambient_heads_m)
+    }
+
     /// Drawdown, metres, that one well causes at a place; nothing in another
     /// aquifer than its own, since edges penetrate fully.
     pub fn drawdown_by_m(&self, well: usize, point: Point) -> f64 {

@@ -1,6 +1,8 @@
 //! The map's aquifers cut into triangles, with heads and drawdowns at their
 //! nodes: what contours, bands and areas are read from.
 
+use std::sync::OnceLock;
+
 use crate::contours::{self, Bump, ContourError, Mesh, MeshError, Region, ScalarField};
 use crate::field::WellField;
 use crate::site::{Point, direction_of_azimuth};
@@ -26,6 +28,15 @@ pub struct Drawdowns<'a>(pub &'a WellField);
 impl ScalarField for Drawdowns<'_> {
     fn values(&self, points: &[Point]) -> Vec<f64> {
         on_edge_too(self.0, points, WellField::drawdowns_m)
+    }
+}
+
+/// The heads in one aquifer before any pumping, as something to sample.
+struct AmbientHeads<'a>(&'a WellField);
+
+impl ScalarField for AmbientHeads<'_> {
+    fn values(&self, points: &[Point]) -> Vec<f64> {
+        on_edge_too(self.0, points, WellField::ambient_heads_m)
     }
 }
 
@@ -85,6 +96,18 @@ pub struct Survey<'a> {
     pub window: MapWindow,
     /// The aquifers that reach into it.
     pub aquifers: Vec<SurveyedAquifer<'a>>,
+    solution: &'a Solution,
+    at_nodes: OnceLock<AtNodes>,
+}
+
+/// Values at the nodes of the map's grid, in the order of
+/// [`MapWindow::nodes`]; NaN outside every aquifer.
+#[derive(Clone, Debug, Default)]
+pub struct AtNodes {
+    /// Heads, metres.
+    pub heads_m: Vec<f64>,
+    /// Drawdowns, metres.
+    pub drawdowns_m: Vec<f64>,
 }
 
 impl<'a> Survey<'a> {
@@ -105,8 +128,13 @@ impl<'a> Survey<'a> {
                 spacing_m: window.spacing_m,
             };
             let mesh = contours::mesh(&region, &bumps(solution, field))?;
-            let heads_m = contours::sample(&mesh, &Heads(field))?;
+            // Superposing the wells is what takes long: once is enough.
             let drawdowns_m = contours::sample(&mesh, &Drawdowns(field))?;
+            let ambient_m = contours::sample(&mesh, &AmbientHeads(field))?;
+            let both_m = ambient_m.iter().zip(&drawdowns_m);
+            let heads_m = both_m
+                .map(|(ambient_m, drawdown_m)| ambient_m - drawdown_m)
+                .collect();
             aquifers.push(SurveyedAquifer {
                 field,
                 mesh,
@@ -114,7 +142,66 @@ impl<'a> Survey<'a> {
                 drawdowns_m,
             });
         }
-        Ok(Self { window, aquifers })
+        Ok(Self {
+            window,
+            aquifers,
+            solution,
+            at_nodes: OnceLock::new(),
+        })
+    }
+
+    /// Heads and drawdowns at the map's nodes, computed when first asked for.
+    /// Superposing the wells is what takes long; where the triangles stand on
+    /// the same nodes, what is known there is not computed again.
+    pub fn at_nodes(&self) -> &AtNodes {
+        self.at_nodes.get_or_init(|| {
+            let (columns, rows) = self.window.node_counts();
+            let count = columns * rows;
+            let mut found = AtNodes {
+                heads_m: vec![f64::NAN; count],
+                drawdowns_m: vec![f64::NAN; count],
+            };
+            for aquifer in &self.aquifers {
+                let spacing_m = self.window.spacing_m;
+                let known = |values| aquifer.mesh.on_grid(values, columns, spacing_m);
+                let known_m = (known(&aquifer.heads_m), known(&aquifer.drawdowns_m));
+                if let (Some(heads_m), Some(drawdowns_m)) = known_m {
+                    fill(&mut found.heads_m, heads_m);
+                    fill(&mut found.drawdowns_m, drawdowns_m);
+                }
+            }
+            self.compute_missing(&mut found);
+            found
+        })
+    }
+
+    /// Computes what no triangle's corner told, some rows at a time.
+    fn compute_missing(&self, found: &mut AtNodes) {
+        const NODES_AT_A_TIME: usize = 1 << 16;
+        let missing = self.window.nodes().enumerate();
+        let mut missing: Vec<(usize, Point)> = missing
+            .filter(|(node, _)| {
+                found
+                    .heads_m
+                    .get(*node)
+                    .is_some_and(|head_m| head_m.is_nan())
+            })
+            .collect();
+        while !missing.is_empty() {
+            let rest = missing.split_off(missing.len().saturating_sub(NODES_AT_A_TIME));
+            let (nodes, points): (Vec<usize>, Vec<Point>) = rest.into_iter().unzip();
+            let drawdowns_m = self.solution.drawdowns_m(&points);
+            let ambient_m = self.solution.ambient_heads_m(&points);
+            for (node, (ambient_m, drawdown_m)) in nodes
+                .into_iter()
+                .zip(ambient_m.into_iter().zip(drawdowns_m))
+            {
+                let slots = (found.heads_m.get_mut(node), found.drawdowns_m.get_mut(node));
+                if let (Some(head), Some(drawdown)) = slots {
+                    (*head, *drawdown) = (ambient_m - drawdown_m, drawdown_m);
+                }
+            }
+        }
     }
 
     /// Smallest and largest head at a node, metres; none without nodes.
@@ -145,6 +232,15 @@ impl<'a> Survey<'a> {
             )
         });
         areas.sum()
+    }
+}
+
+/// Puts values where there are none yet.
+fn fill(into: &mut [f64], values: &[f64]) {
+    for (slot, value) in into.iter_mut().zip(values) {
+        if slot.is_nan() {
+            *slot = *value;
+        }
     }
 }
 

@@ -52,7 +52,10 @@ impl Influence {
         let images = match shape {
             Shape::Axes { x, y } => across(x) * across(y),
             Shape::Wedge { angle_rad, .. } => 2.0 * PI / angle_rad,
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => 1.0,
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => 1.0,
         };
         if images > MOST_IMAGES {
             return Err(GreenError::TooManyImages {
@@ -75,7 +78,10 @@ impl Influence {
                 &mirrors::images_within(y, pole.im, self.radius),
             ),
             Shape::Wedge { angle_rad, kinds } => images_in_wedge(angle_rad, kinds, pole),
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => Vec::new(),
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => Vec::new(),
         }
     }
 
@@ -223,12 +229,13 @@ impl Green for Influence {
 /// Whether an outline has no fixed head and therefore needs an influence
 /// radius; a closed basin does not, it has to be in balance.
 pub(super) fn needs_radius(shape: &Shape) -> bool {
+    // A general outline has a river or is closed.
     let closed = matches!(
         shape,
         Shape::Axes {
             x: Axis::TwoEdges { .. },
             y: Axis::TwoEdges { .. }
-        }
+        } | Shape::General
     );
     !closed && !shape.side_kinds().contains(&Kind::FixedHead)
 }

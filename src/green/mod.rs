@@ -1,12 +1,15 @@
 //! One Green's function for each kind of outline, behind one small trait.
 //!
 //! G solves −∇²G = δ(z − z₀) in the canonical frame of an outline, with G = 0
-//! on fixed-head sides and ∂G/∂n = 0 on no-flow sides. A well that pumps Q at
+//! on fixed-head sides and ∂G/∂n = 0 on no-flow sides; behind a clogged bank
+//! G obeys the bank's own condition (`clogged`). A well that pumps Q at
 //! z₀ lowers the head at z by Q/T · G(z, z₀).
 
 mod batch;
+mod clogged;
 mod corner;
 mod disk;
+mod general;
 mod influence;
 mod lanes;
 mod logarithm;
@@ -14,6 +17,7 @@ mod mirrors;
 mod rows;
 mod wedge;
 
+pub use general::{Before, General, WeightedPole};
 pub use logarithm::ln_lanes;
 
 use std::f64::consts::FRAC_1_PI;
@@ -23,6 +27,7 @@ use num_complex::Complex64;
 use thiserror::Error;
 
 use crate::outline::{Axis, Kind, Shape};
+use clogged::Clogged;
 use corner::Corner;
 use disk::Disk;
 use influence::Influence;
@@ -98,6 +103,10 @@ pub enum GreenError {
     /// No edge fixes the head and no influence radius is given.
     #[error("no river fixes the head, so a steady cone of depression has no edge")]
     NoSteadyState,
+    /// A general outline: its shape does not tell where its edges run;
+    /// [`General::new`] solves its boundary.
+    #[error("the outline is a general one, and its shape alone does not tell where its edges run")]
+    General,
     /// The influence radius reaches over too many images.
     #[error("the influence radius reaches some {images:.0} image wells, more than {most:.0}")]
     TooManyImages {
@@ -115,7 +124,8 @@ pub enum GreenError {
 /// of zero mean, right only for wells whose pumping and injection balance.
 ///
 /// # Errors
-/// `NoSteadyState` where a radius is needed and missing; `TooManyImages`.
+/// `NoSteadyState` where a radius is needed and missing; `TooManyImages`;
+/// `General` for a general outline, which [`General::new`] solves.
 pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Green>, GreenError> {
     use Axis::{OneEdge, Open, TwoEdges};
     use Kind::{FixedHead, NoFlow};
@@ -140,9 +150,11 @@ pub fn of(shape: &Shape, influence_radius_m: Option<f64>) -> Result<Box<dyn Gree
             (Open, _) => return Err(GreenError::NoSteadyState),
         },
         Shape::Wedge { angle_rad, kinds } => Box::new(Wedge::new(angle_rad, kinds)),
+        Shape::CloggedHalfPlane { skin_m } => Box::new(Clogged::new(skin_m)),
         Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
             Box::new(Disk::new(radius_m))
         }
+        Shape::General => return Err(GreenError::General),
     })
 }
 

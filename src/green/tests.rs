@@ -64,6 +64,8 @@ fn cases() -> Vec<(Shape, Option<f64>)> {
     let mut shapes = vec![
         Shape::Disk { radius_m: 4.0 },
         Shape::DiskExterior { radius_m: 0.5 },
+        Shape::CloggedHalfPlane { skin_m: 0.02 },
+        Shape::CloggedHalfPlane { skin_m: 1.3 },
     ];
     let kinds = [D, N];
     let mut axes = vec![Axis::Open];
@@ -189,6 +191,7 @@ fn sides(shape: &Shape) -> Vec<Range<f64>> {
             sides
         }
         Shape::Wedge { .. } => vec![0.0..f64::INFINITY; 2],
+        Shape::CloggedHalfPlane { .. } => sides(&shape.unclogged()),
         _ => vec![0.0..std::f64::consts::TAU],
     }
 }
@@ -248,7 +251,7 @@ fn shares_are_the_integrals_of_the_gradient() {
 fn place_of_side(shape: &Shape, side: usize) -> (Complex64, Complex64, Complex64) {
     let i = Complex64::i();
     let one = Complex64::new(1.0, 0.0);
-    match shape {
+    match &shape.unclogged() {
         Shape::Wedge { angle_rad, .. } => {
             let along = Complex64::from_polar(1.0, if side == 0 { 0.0 } else { *angle_rad });
             (

@@ -4,16 +4,14 @@
 //! One feature a river or barrier, its parts joined; where its parts lie
 //! apart they are several features, each with the whole inflow.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::Planned;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned};
 use crate::site::{Edge, EdgeKind, EdgeShape, Extent, Point, Vector};
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for (finding, edge) in planned.findings.boundaries.iter().zip(&site.edges) {
         let kind = match edge.kind {
@@ -25,10 +23,10 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 .with("name", edge.name.as_str())
                 .with("kind", kind)
                 .rate("inflow", finding.inflow_m3_d());
-            layer.add_line(&line, properties)?;
+            layer.add_line(line, properties);
         }
     }
-    Ok(layer.finish())
+    layer
 }
 
 /// The course of an edge within the map: once where two aquifers share it,
@@ -135,15 +133,34 @@ fn successor(line: &[Point], lines: &[Vec<Point>]) -> Option<(usize, bool)> {
     })
 }
 
-/// Whether two lines run between the same ends, to a millimetre.
+/// Whether two lines run between the same ends and over the same middle, to a
+/// millimetre.
 fn same_course(a: &[Point], b: &[Point]) -> bool {
     let ends = |line: &[Point]| Some((*line.first()?, *line.last()?));
+    if !near(middle(a), middle(b)) {
+        return false;
+    }
     match (ends(a), ends(b)) {
         (Some((a0, a1)), Some((b0, b1))) => {
             (near(a0, b0) && near(a1, b1)) || (near(a0, b1) && near(a1, b0))
         }
         _ => false,
     }
+}
+
+/// The place halfway along a line.
+fn middle(line: &[Point]) -> Point {
+    let legs = || line.iter().zip(line.iter().skip(1));
+    let whole: f64 = legs().map(|(a, b)| (b - a).norm()).sum();
+    let mut left = 0.5 * whole;
+    for (a, b) in legs() {
+        let length = (b - a).norm();
+        if length >= left && length > 0.0 {
+            return a + (b - a) * (left / length);
+        }
+        left -= length;
+    }
+    line.first().copied().unwrap_or(Point::origin())
 }
 
 /// Whether two points are the same to a millimetre.

@@ -1,13 +1,14 @@
 //! `head_contours.geojson`, `drawdown_contours.geojson` and
 //! `drawdown_bands.geojson`.
 
-use geo::{LineString, MultiPolygon};
-use geojson::FeatureCollection;
-use serde_json::Value;
+use std::sync::OnceLock;
 
-use super::geojson::Layer;
+use geo::{LineString, MultiPolygon};
+
+use super::layer::Layer;
+use super::property::Quantity;
 use super::units::Properties;
-use super::{LayerError, Planned, Units, number};
+use super::{LayerError, Planned, Units};
 use crate::contours::{Band, ContourLine, Cuts, LevelError, round_levels};
 use crate::findings::{Drawdowns, Heads, Survey};
 use crate::site::{Length, Point, Refusal, Subject};
@@ -59,92 +60,103 @@ fn refusal(error: &LevelError) -> Refusal {
 }
 
 /// The head contours.
-pub fn head_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
-    for line in all_head_lines(planned)? {
-        let name = format!("head_{}", planned.units().length_ending());
-        let properties =
-            Properties::new(planned.units()).with(&name, level(planned.units(), line.level));
-        layer.add_line(&line.points, properties)?;
-    }
-    Ok(layer.finish())
+pub fn head_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
+    Ok(lines("head", all_head_lines(planned)?, planned.units()))
 }
 
 /// The drawdown contours.
-pub fn drawdown_lines(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
-    for line in all_drawdown_lines(planned)? {
-        let name = format!("drawdown_{}", planned.units().length_ending());
-        let properties =
-            Properties::new(planned.units()).with(&name, level(planned.units(), line.level));
-        layer.add_line(&line.points, properties)?;
+pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
+    Ok(lines(
+        "drawdown",
+        all_drawdown_lines(planned)?,
+        planned.units(),
+    ))
+}
+
+/// Contours as a layer, each with its level.
+fn lines(stem: &str, lines: &[ContourLine], units: Units) -> Layer {
+    let mut layer = Layer::default();
+    for line in lines {
+        let value = Some(level(units, line.level));
+        let properties = Properties::new(units).number(stem, Quantity::Length, value);
+        layer.add_line(line.points.clone(), properties);
     }
-    Ok(layer.finish())
+    layer
 }
 
 /// The bands between the drawdown contours.
-pub fn drawdown_bands(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
-    let ending = planned.units().length_ending();
+pub fn drawdown_bands(planned: &Planned<'_>) -> Result<Layer, LayerError> {
+    let units = planned.units();
+    let mut layer = Layer::default();
     for band in all_drawdown_bands(planned)? {
-        let properties = Properties::new(planned.units())
-            .with(&format!("from_{ending}"), level(planned.units(), band.from))
-            .with(&format!("to_{ending}"), level(planned.units(), band.to));
-        layer.add_polygons(&rings(&band.polygons), properties)?;
+        let properties = Properties::new(units)
+            .number("from", Quantity::Length, Some(level(units, band.from)))
+            .number("to", Quantity::Length, Some(level(units, band.to)));
+        layer.add_polygons(rings(&band.polygons), properties);
     }
-    Ok(layer.finish())
+    Ok(layer)
 }
 
 /// The head contours, aquifer by aquifer, level by level.
-pub fn all_head_lines(planned: &Planned<'_>) -> Result<Vec<ContourLine>, LayerError> {
-    let mut lines = Vec::new();
-    for aquifer in &planned.survey.aquifers {
-        let cuts = Cuts::refine(
-            &aquifer.mesh,
-            &aquifer.heads_m,
-            &Heads(aquifer.field),
-            &planned.levels.heads_m,
-        )?;
-        lines.extend(cuts.lines());
-    }
-    Ok(lines)
+pub fn all_head_lines<'p>(planned: &'p Planned<'_>) -> Result<&'p [ContourLine], LayerError> {
+    once(&planned.drawn.heads, || {
+        let mut lines = Vec::new();
+        for aquifer in &planned.survey.aquifers {
+            let field = Heads(aquifer.field);
+            let levels_m = &planned.levels.heads_m;
+            let cuts = Cuts::refine(&aquifer.mesh, &aquifer.heads_m, &field, levels_m)?;
+            lines.extend(cuts.lines());
+        }
+        Ok(lines)
+    })
+    .map(Vec::as_slice)
 }
 
 /// The drawdown contours, aquifer by aquifer, level by level.
-pub fn all_drawdown_lines(planned: &Planned<'_>) -> Result<Vec<ContourLine>, LayerError> {
-    Ok(drawdown_cuts(planned)?
-        .iter()
-        .flat_map(Cuts::lines)
-        .collect())
+pub fn all_drawdown_lines<'p>(planned: &'p Planned<'_>) -> Result<&'p [ContourLine], LayerError> {
+    drawdowns(planned).map(|(lines, _)| lines.as_slice())
 }
 
 /// The bands of drawdown, aquifer by aquifer, from the lowest up.
-pub fn all_drawdown_bands(planned: &Planned<'_>) -> Result<Vec<Band>, LayerError> {
-    Ok(drawdown_cuts(planned)?
-        .iter()
-        .flat_map(Cuts::bands)
-        .collect())
+pub fn all_drawdown_bands<'p>(planned: &'p Planned<'_>) -> Result<&'p [Band], LayerError> {
+    drawdowns(planned).map(|(_, bands)| bands.as_slice())
 }
 
-/// Where the drawdown's levels cut the triangles of each aquifer.
-fn drawdown_cuts<'a>(planned: &'a Planned<'_>) -> Result<Vec<Cuts<'a>>, LayerError> {
-    let cuts = planned.survey.aquifers.iter().map(|aquifer| {
-        Cuts::refine(
-            &aquifer.mesh,
-            &aquifer.drawdowns_m,
-            &Drawdowns(aquifer.field),
-            &planned.levels.drawdowns_m,
-        )
-    });
-    Ok(cuts.collect::<Result<_, _>>()?)
+/// Contours and bands of drawdown, aquifer by aquifer.
+fn drawdowns<'p>(
+    planned: &'p Planned<'_>,
+) -> Result<&'p (Vec<ContourLine>, Vec<Band>), LayerError> {
+    once(&planned.drawn.drawdowns, || {
+        let (mut lines, mut bands) = (Vec::new(), Vec::new());
+        for aquifer in &planned.survey.aquifers {
+            let field = Drawdowns(aquifer.field);
+            let levels_m = &planned.levels.drawdowns_m;
+            let cuts = Cuts::refine(&aquifer.mesh, &aquifer.drawdowns_m, &field, levels_m)?;
+            lines.extend(cuts.lines());
+            bands.extend(cuts.bands());
+        }
+        Ok((lines, bands))
+    })
+}
+
+/// What a cell holds; made first where it is empty.
+fn once<T>(
+    cell: &OnceLock<T>,
+    make: impl FnOnce() -> Result<T, LayerError>,
+) -> Result<&T, LayerError> {
+    if let Some(made) = cell.get() {
+        return Ok(made);
+    }
+    let made = make()?;
+    Ok(cell.get_or_init(|| made))
 }
 
 /// A level in the plan's unit. Levels are round there, so what lies beyond a
 /// billionth is the rounding of the way through metres.
-fn level(units: Units, metres: f64) -> Value {
+pub(super) fn level(units: Units, metres: f64) -> f64 {
     let exact = units.length(metres);
     let round = (exact * 1e9).round() / 1e9;
-    number(if round.is_finite() { round } else { exact })
+    if round.is_finite() { round } else { exact }
 }
 
 /// Polygons as lists of rings, exterior first.

@@ -5,13 +5,20 @@ use serde_json::{Map, Value, json};
 use super::caution::CAUTION;
 use super::units::{Properties, number};
 use super::words::Words;
-use super::{Planned, flag_codes};
+use super::{LayerError, Planned, flag_codes};
 use crate::field::WellField;
 use crate::findings::{Flag, Measure, Rates, Who};
 use crate::site::{EdgeKind, Point, Site};
 
+/// The document as a file for people too.
+pub fn file(planned: &Planned<'_>) -> Result<Vec<u8>, LayerError> {
+    let mut bytes = serde_json::to_vec_pretty(&document(planned))?;
+    bytes.push(b'\n');
+    Ok(bytes)
+}
+
 /// The document.
-pub fn document(planned: &Planned<'_>) -> Value {
+fn document(planned: &Planned<'_>) -> Value {
     let mut document = Map::new();
     document.insert("title".into(), planned.plan.title.clone().into());
     document.insert("crs".into(), planned.plan.crs.name().into());

@@ -13,8 +13,8 @@ use serde_json::Map;
 
 use super::LayerError;
 use super::caution::CAUTION;
-use super::rings;
-use super::units::Properties;
+use super::layer::{Layer, Shape};
+use super::rings::{self, Position, signed_area};
 use crate::plan::Plan;
 use crate::site::Point;
 
@@ -27,89 +27,86 @@ const HALVINGS: u32 = 12;
 /// Metres a degree of a great circle.
 const METRES_A_DEGREE: f64 = 111_320.0;
 
-/// Longitude and latitude, degrees.
-pub type Position = [f64; 2];
+/// Positions a degree: 8 decimals.
+const STEPS: f64 = 1e8;
 
-/// A layer in the making.
-pub struct Layer<'a> {
+/// The layer as a file on one line.
+///
+/// # Errors
+/// As [`document`].
+pub fn file(plan: &Plan, layer: &Layer) -> Result<Vec<u8>, LayerError> {
+    let mut bytes = serde_json::to_vec(&document(plan, layer)?)?;
+    bytes.push(b'\n');
+    Ok(bytes)
+}
+
+/// The layer as a document.
+///
+/// # Errors
+/// A place that the plan's coordinate system has no longitude and latitude for.
+pub fn document(plan: &Plan, layer: &Layer) -> Result<FeatureCollection, LayerError> {
+    let mut writer = Writer { plan, bounds: None };
+    let mut features = Vec::with_capacity(layer.features.len());
+    for feature in &layer.features {
+        if let Some(geometry) = writer.geometry(&feature.shape)? {
+            features.push(Feature {
+                geometry: Some(geometry),
+                properties: Some(feature.properties.clone()),
+                ..Feature::default()
+            });
+        }
+    }
+    Ok(FeatureCollection {
+        bbox: writer.bounds.map(|bounds| bounds.to_vec()),
+        features,
+        foreign_members: Some(Map::from_iter(
+            std::iter::once(("caution".into(), CAUTION.into()))
+                .chain(layer.note.map(|note| ("note".into(), note.into()))),
+        )),
+    })
+}
+
+/// Takes places to longitude and latitude and keeps their bounds.
+struct Writer<'a> {
     plan: &'a Plan,
-    features: Vec<Feature>,
     bounds: Option<[f64; 4]>,
 }
 
-impl<'a> Layer<'a> {
-    /// An empty layer.
-    pub fn new(plan: &'a Plan) -> Self {
-        Self {
-            plan,
-            features: Vec::new(),
-            bounds: None,
-        }
+impl Writer<'_> {
+    /// A shape; none where rounding leaves nothing of it.
+    fn geometry(&mut self, shape: &Shape) -> Result<Option<Geometry>, LayerError> {
+        Ok(match shape {
+            Shape::Point(at) => Some(Geometry::new_point(self.position(*at)?)),
+            Shape::Line(line) => {
+                let positions = self.line(line)?;
+                (positions.len() > 1).then(|| Geometry::new_line_string(positions))
+            }
+            Shape::Polygons(polygons) => self.polygons(polygons)?,
+        })
     }
 
-    /// Adds a point.
-    pub fn add_point(&mut self, at: Point, properties: Properties) -> Result<(), LayerError> {
-        let position = self.position(at)?;
-        self.add(Geometry::new_point(position), properties);
-        Ok(())
-    }
-
-    /// Adds a line; nothing where it has less than two points.
-    pub fn add_line(&mut self, line: &[Point], properties: Properties) -> Result<(), LayerError> {
-        let positions = self.line(line)?;
-        if positions.len() > 1 {
-            self.add(Geometry::new_line_string(positions), properties);
-        }
-        Ok(())
-    }
-
-    /// Adds polygons, each a list of rings, exterior first, in any direction;
-    /// the last point of a ring may repeat the first.
-    pub fn add_polygons(
-        &mut self,
-        polygons: &[Vec<Vec<Point>>],
-        properties: Properties,
-    ) -> Result<(), LayerError> {
+    fn polygons(&mut self, polygons: &[Vec<Vec<Point>>]) -> Result<Option<Geometry>, LayerError> {
         let mut written = Vec::with_capacity(polygons.len());
         for rings in polygons {
             let mut polygon = Vec::with_capacity(rings.len());
             for (index, ring) in rings.iter().enumerate() {
                 polygon.push(self.ring(ring, index == 0)?);
             }
-            written.extend(rings::resolved(polygon));
+            written.extend(rings::resolved(polygon, STEPS));
         }
-        match written.as_slice() {
-            [] => {}
-            [only] => self.add(Geometry::new_polygon(only.iter().cloned()), properties),
-            several => self.add(
-                Geometry::new_multi_polygon(several.iter().map(|polygon| polygon.iter().cloned())),
-                properties,
-            ),
-        }
-        Ok(())
-    }
-
-    /// The finished layer.
-    pub fn finish(self) -> FeatureCollection {
-        FeatureCollection {
-            bbox: self.bounds.map(|bounds| bounds.to_vec()),
-            features: self.features,
-            foreign_members: Some(Map::from_iter([("caution".into(), CAUTION.into())])),
-        }
-    }
-
-    fn add(&mut self, geometry: Geometry, properties: Properties) {
-        self.features.push(Feature {
-            geometry: Some(geometry),
-            properties: Some(properties.into()),
-            ..Feature::default()
-        });
+        Ok(match written.as_slice() {
+            [] => None,
+            [only] => Some(Geometry::new_polygon(only.iter().cloned())),
+            several => Some(Geometry::new_multi_polygon(
+                several.iter().map(|polygon| polygon.iter().cloned()),
+            )),
+        })
     }
 
     /// A place, rounded, and counted in the layer's bounds.
     fn position(&mut self, at: Point) -> Result<Position, LayerError> {
         let exact = longitude_latitude(self.plan, at)?;
-        let position = exact.map(|degrees| (degrees * rings::STEPS).round() / rings::STEPS + 0.0);
+        let position = exact.map(|degrees| (degrees * STEPS).round() / STEPS + 0.0);
         let [longitude, latitude] = position;
         self.bounds = Some(match self.bounds {
             None => [longitude, latitude, longitude, latitude],
@@ -169,17 +166,6 @@ pub fn longitude_latitude(plan: &Plan, at: Point) -> Result<Position, LayerError
     }
 }
 
-/// Twice the area within a ring, positive when it runs counter-clockwise.
-fn signed_area(ring: &[Position]) -> f64 {
-    let Some([x0, y0]) = ring.first().copied() else {
-        return 0.0;
-    };
-    ring.iter()
-        .zip(ring.iter().skip(1))
-        .map(|([ax, ay], [bx, by])| (ax - x0) * (by - y0) - (bx - x0) * (ay - y0))
-        .sum()
-}
-
 /// A line with points added where it would stray.
 fn straightened(plan: &Plan, line: &[Point]) -> Result<Vec<Point>, LayerError> {
     let mut straight = Vec::with_capacity(line.len());
@@ -214,16 +200,4 @@ fn halve(
     halve(plan, from, middle, halvings - 1, into)?;
     into.push(middle);
     halve(plan, middle, to, halvings - 1, into)
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    /// RFC 7946, section 3.1.6: exterior rings are counter-clockwise.
-    #[test]
-    fn a_counter_clockwise_ring_has_positive_area() {
-        let ring = [[0.0, 0.0], [1.0, 0.0], [1.0, 1.0], [0.0, 1.0], [0.0, 0.0]];
-        assert!(signed_area(&ring) > 0.0);
-    }
 }

@@ -1,18 +1,16 @@
 //! `image_wells.geojson`: the nearest images of each well, for audit.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::Planned;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned};
 
 /// Images shown of each well.
 const IMAGES_A_WELL: usize = 8;
 
 /// The layer. An image so far away that the plan's coordinate system has no
 /// place for it is left out.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for (index, well) in site.wells.iter().enumerate() {
         let Some(field) = planned.solution.field_of_well(index) else {
@@ -26,8 +24,8 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 .with("of", well.name.as_str())
                 .with("sign", if sign < 0.0 { -1 } else { 1 })
                 .with("order", order);
-            layer.add_point(at, properties)?;
+            layer.add_point(at, properties);
         }
     }
-    Ok(layer.finish())
+    layer
 }

@@ -1,17 +1,25 @@
-//! Writes what was found as GIS layers, tables and one JSON document: one
-//! file an output, all listed in [`OUTPUTS`].
+//! Writes what was found as GIS layers, tables and one JSON document, all
+//! listed in [`OUTPUTS`].
 
 pub(crate) mod boundaries;
 mod caution;
 mod contours;
 mod findings_json;
+mod flow;
 pub mod geojson;
+mod geopackage;
+mod geotiff;
 mod image_wells;
 mod interference_csv;
+pub mod layer;
 mod map_svg;
 mod neighbours;
+mod output;
+mod property;
+mod raster;
 mod rings;
 mod river_reaches;
+mod styles;
 mod units;
 mod wells;
 pub mod words;
@@ -24,15 +32,16 @@ pub use map_svg::map_svg;
 pub(crate) use map_svg::{
     INK, MapPicture, PAPER, Theme, WATER, escaped, map_picture, multiples, round_step,
 };
+pub use output::{OUTPUTS, Output, UnknownOutput, make, outputs_named};
+pub use property::{Property, Quantity};
 pub use units::{Properties, Units, number};
 pub use write::{OutputFile, WriteError, write_all};
 
-use serde_json::Value;
+use std::sync::OnceLock;
 
-use crate::contours::ContourError;
+use crate::contours::{Band, ContourError, ContourLine};
 use crate::findings::{Findings, FlagCode, Solution, Survey, Who};
 use crate::plan::Plan;
-use crate::report;
 
 /// A plan with everything that was found of it.
 pub struct Planned<'a> {
@@ -46,6 +55,8 @@ pub struct Planned<'a> {
     pub levels: Levels,
     /// What was found.
     pub findings: &'a Findings,
+    /// What was drawn so far.
+    pub drawn: Drawn,
 }
 
 impl Planned<'_> {
@@ -56,8 +67,17 @@ impl Planned<'_> {
 
     /// What the reader should know: assumptions made where the plan was silent.
     pub fn notes(&self) -> Vec<String> {
-        notes(self.plan, self.solution)
+        let mut notes = notes(self.plan, self.solution);
+        notes.extend(flow::note(self.plan).map(str::to_owned));
+        notes
     }
+}
+
+/// What several outputs show, made when first asked for.
+#[derive(Debug, Default)]
+pub struct Drawn {
+    heads: OnceLock<Vec<ContourLine>>,
+    drawdowns: OnceLock<(Vec<ContourLine>, Vec<Band>)>,
 }
 
 /// What the reader of a plan's results should know: assumptions made where
@@ -91,6 +111,12 @@ pub enum LayerError {
     /// The contours cannot be drawn.
     #[error("the contours cannot be drawn: {0}")]
     Contours(#[from] ContourError),
+    /// A raster cannot be written.
+    #[error("the raster cannot be written: {0}")]
+    Raster(String),
+    /// A GeoPackage cannot be written.
+    #[error("the GeoPackage cannot be written: {0}")]
+    GeoPackage(#[from] rusqlite::Error),
     /// A table cannot be written.
     #[error("the table cannot be written: {0}")]
     Table(String),
@@ -117,58 +143,4 @@ fn flag_codes(planned: &Planned<'_>, who: Who) -> Vec<&'static str> {
         .collect();
     codes.dedup();
     codes.into_iter().map(FlagCode::name).collect()
-}
-
-/// Makes one output.
-type Maker = fn(&Planned<'_>) -> Result<Vec<u8>, LayerError>;
-
-/// Every output: its name and its maker.
-pub const OUTPUTS: [(&str, Maker); 11] = [
-    ("head_contours.geojson", |p| json(&contours::head_lines(p)?)),
-    ("drawdown_contours.geojson", |p| {
-        json(&contours::drawdown_lines(p)?)
-    }),
-    ("drawdown_bands.geojson", |p| {
-        json(&contours::drawdown_bands(p)?)
-    }),
-    ("wells.geojson", |p| json(&wells::layer(p)?)),
-    ("neighbours.geojson", |p| json(&neighbours::layer(p)?)),
-    ("boundaries.geojson", |p| json(&boundaries::layer(p)?)),
-    ("river_reaches.geojson", |p| json(&river_reaches::layer(p)?)),
-    ("image_wells.geojson", |p| json(&image_wells::layer(p)?)),
-    ("interference.csv", interference_csv::table),
-    ("findings.json", |p| {
-        pretty_json(&findings_json::document(p))
-    }),
-    ("report.html", report::page),
-];
-
-/// Makes every output.
-///
-/// # Errors
-/// The first output that cannot be made.
-pub fn make_all(planned: &Planned<'_>) -> Result<Vec<OutputFile>, LayerError> {
-    OUTPUTS
-        .iter()
-        .map(|&(name, make)| {
-            Ok(OutputFile {
-                name,
-                bytes: make(planned)?,
-            })
-        })
-        .collect()
-}
-
-/// JSON on one line, with a line end.
-fn json(value: &impl serde::Serialize) -> Result<Vec<u8>, LayerError> {
-    let mut bytes = serde_json::to_vec(value)?;
-    bytes.push(b'\n');
-    Ok(bytes)
-}
-
-/// JSON for people too.
-fn pretty_json(value: &Value) -> Result<Vec<u8>, LayerError> {
-    let mut bytes = serde_json::to_vec_pretty(value)?;
-    bytes.push(b'\n');
-    Ok(bytes)
 }

@@ -1,16 +1,14 @@
 //! `neighbours.geojson`: every neighbour with the drawdown at its worst point.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned, flag_codes};
+use super::{Planned, flag_codes};
 use crate::findings::Who;
 use crate::site::Place;
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for (finding, neighbour) in planned.findings.neighbours.iter().zip(&site.neighbours) {
         let worst = finding.worst.as_ref();
@@ -27,9 +25,9 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 flag_codes(planned, Who::Neighbour(finding.neighbour)).join(", "),
             );
         match &neighbour.place {
-            Place::At(at) => layer.add_point(*at, properties)?,
-            Place::Area(ring) => layer.add_polygons(&[vec![ring.clone()]], properties)?,
+            Place::At(at) => layer.add_point(*at, properties),
+            Place::Area(ring) => layer.add_polygons(vec![vec![ring.clone()]], properties),
         }
     }
-    Ok(layer.finish())
+    layer
 }

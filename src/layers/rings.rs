@@ -1,38 +1,37 @@
 //! Rings that stay sound when their positions are rounded.
 //!
-//! Rounding to 8 decimals may lay two sides of a thin part of a polygon on
-//! each other. Positions are whole numbers of 1e-8 degrees, so the polygon is
-//! resolved again in exact integer arithmetic, which leaves sound polygons
-//! alone and drops parts that have become lines.
+//! Rounding may lay two sides of a thin part of a polygon on each other.
+//! Rounded positions are whole numbers of a step, so the polygon is resolved
+//! again in exact integer arithmetic, which leaves sound polygons alone and
+//! drops parts that have become lines.
 
 use i_overlay::core::fill_rule::FillRule;
 use i_overlay::core::overlay::{ContourDirection, IntOverlayOptions};
 use i_overlay::core::simplify::Simplify;
 use i_overlay::i_float::int::point::IntPoint;
 
-use super::geojson::Position;
+/// Two coordinates: longitude and latitude, or x and y.
+pub type Position = [f64; 2];
 
-/// Positions a degree: 8 decimals.
-pub(super) const STEPS: f64 = 1e8;
-
-/// The integer arithmetic takes differences up to this many steps, 5.4 degrees.
+/// The integer arithmetic takes differences up to this many steps: 5.4 degrees
+/// of 1e-8, or 536 km of millimetres.
 const WIDEST: f64 = (1_i64 << 29) as f64;
 
-/// Polygons, each a list of closed rings of rounded positions with exteriors
-/// counter-clockwise, resolved into polygons that do not cross or touch
-/// themselves along a line. A polygon too wide for the arithmetic stays as
-/// it is.
-pub(super) fn resolved(polygon: Vec<Vec<Position>>) -> Vec<Vec<Vec<Position>>> {
+/// A polygon, a list of closed rings with the exterior counter-clockwise, its
+/// positions rounded to so many steps a unit, resolved into polygons that do
+/// not cross or touch themselves along a line. A polygon too wide for the
+/// arithmetic stays as it is.
+pub(super) fn resolved(polygon: Vec<Vec<Position>>, steps: f64) -> Vec<Vec<Vec<Position>>> {
     let Some(&[west, south]) = polygon.first().and_then(|ring| ring.first()) else {
         return Vec::new();
     };
-    let origin = [(west * STEPS).round(), (south * STEPS).round()];
+    let origin = [(west * steps).round(), (south * steps).round()];
     let whole = |ring: &Vec<Position>| -> Option<Vec<IntPoint>> {
         let open = ring.iter().take(ring.len().saturating_sub(1));
         open.map(|position| {
             let [x, y] = [0, 1].map(|axis: usize| {
                 let (value, zero) = (position.get(axis), origin.get(axis));
-                (value.unwrap_or(&0.0) * STEPS).round() - zero.unwrap_or(&0.0)
+                (value.unwrap_or(&0.0) * steps).round() - zero.unwrap_or(&0.0)
             });
             let fits = x.abs() < WIDEST && y.abs() < WIDEST;
             fits.then(|| IntPoint::new(x as i32, y as i32))
@@ -51,8 +50,8 @@ pub(super) fn resolved(polygon: Vec<Vec<Position>>) -> Vec<Vec<Vec<Position>>> {
     };
     let back = |point: &IntPoint| {
         [
-            (origin[0] + f64::from(point.x)) / STEPS,
-            (origin[1] + f64::from(point.y)) / STEPS,
+            (origin[0] + f64::from(point.x)) / steps,
+            (origin[1] + f64::from(point.y)) / steps,
         ]
     };
     let closed = |ring: &Vec<IntPoint>| -> Vec<Position> {
@@ -65,9 +64,22 @@ pub(super) fn resolved(polygon: Vec<Vec<Position>>) -> Vec<Vec<Vec<Position>>> {
         .collect()
 }
 
+/// Twice the area within a ring, positive when it runs counter-clockwise.
+pub(super) fn signed_area(ring: &[Position]) -> f64 {
+    let Some([x0, y0]) = ring.first().copied() else {
+        return 0.0;
+    };
+    ring.iter()
+        .zip(ring.iter().skip(1))
+        .map(|([ax, ay], [bx, by])| (ax - x0) * (by - y0) - (bx - x0) * (ay - y0))
+        .sum()
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    const STEPS: f64 = 1e8;
 
     #[test]
     fn a_ring_that_runs_out_and_straight_back_loses_that_part() {
@@ -84,7 +96,7 @@ mod tests {
         let ring = ring
             .map(|position| position.map(|step| f64::from(step) / STEPS))
             .to_vec();
-        let polygons = resolved(vec![ring]);
+        let polygons = resolved(vec![ring], STEPS);
         let [polygon] = polygons.as_slice() else {
             panic!("one polygon, not {}", polygons.len());
         };
@@ -97,7 +109,7 @@ mod tests {
         let ring = ring
             .map(|position| position.map(|step| f64::from(step) / STEPS))
             .to_vec();
-        let polygons = resolved(vec![ring.clone()]);
+        let polygons = resolved(vec![ring.clone()], STEPS);
         let mut got = polygons[0][0].clone();
         got.sort_by(|a, b| a.partial_cmp(b).unwrap());
         got.dedup();
@@ -105,5 +117,12 @@ mod tests {
         expected.sort_by(|a, b| a.partial_cmp(b).unwrap());
         expected.dedup();
         assert_eq!(got, expected);
+    }
+
+    /// RFC 7946, section 3.1.6: exterior rings are counter-clockwise.
+    #[test]
+    fn a_counter_clockwise_ring_has_positive_area() {
+        let ring = [[0.0, 0.0], [1.0, 0.0], [1.0, 1.0], [0.0, 1.0], [0.0, 0.0]];
+        assert!(signed_area(&ring) > 0.0);
     }
 }

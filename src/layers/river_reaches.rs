@@ -5,18 +5,15 @@
 //! carried on beyond its last vertex without end, that reach is drawn as far
 //! as the map is wide, and has no inflow a length.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::Planned;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned};
 use crate::findings::ReachFinding;
-use crate::outline::Shape;
 use crate::site::Point;
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for reach in &planned.findings.reaches {
         let Some(edge) = site.edges.get(reach.edge) else {
@@ -28,10 +25,10 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 .with("name", edge.name.as_str())
                 .rate("inflow", reach.inflow_m3_d)
                 .rate_a_length("inflow", a_length_m2_d);
-            layer.add_line(&line, properties)?;
+            layer.add_line(line, properties);
         }
     }
-    Ok(layer.finish())
+    layer
 }
 
 /// The course of a reach.
@@ -40,14 +37,7 @@ fn lines(planned: &Planned<'_>, reach: &ReachFinding) -> Vec<Vec<Point>> {
         return Vec::new();
     };
     let outline = field.outline();
-    if let Shape::Disk { .. } | Shape::DiskExterior { .. } = outline.shape {
-        return super::boundaries::lines(planned, reach.edge);
-    }
     let extent = planned.survey.window.extent;
     let beyond_m = (extent.max - extent.min).norm();
-    vec![
-        outline
-            .reach_line(reach.side, &reach.along, beyond_m)
-            .to_vec(),
-    ]
+    vec![outline.reach_course(reach.side, &reach.along, beyond_m)]
 }

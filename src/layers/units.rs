@@ -2,6 +2,7 @@
 
 use serde_json::{Map, Number, Value};
 
+use super::property::{Quantity, named};
 use crate::plan::{Dimension, UnitSystem};
 
 /// Writes quantities as an output's properties.
@@ -17,6 +18,11 @@ impl Units {
     /// A rate in the plan's unit.
     pub fn rate(self, m3_d: f64) -> f64 {
         self.0.of_si(Dimension::Rate, m3_d)
+    }
+
+    /// A rate for each unit of area, such as a Darcy flux.
+    pub fn flux(self, m_d: f64) -> f64 {
+        self.0.of_si(Dimension::Conductivity, m_d)
     }
 
     /// An area in the square of the plan's unit of length.
@@ -89,25 +95,33 @@ impl Properties {
 
     /// Adds a length under `stem_m` or `stem_ft`; null where there is none.
     pub fn length(self, stem: &str, metres: impl Into<Option<f64>>) -> Self {
-        let name = format!("{stem}_{}", self.units.length_ending());
         let value = metres.into().map(|metres| self.units.length(metres));
-        self.with(&name, number(value))
+        self.number(stem, Quantity::Length, value)
     }
 
     /// Adds a rate under `stem_m3_per_d` or `stem_gpm`.
     pub fn rate(self, stem: &str, m3_d: impl Into<Option<f64>>) -> Self {
-        let name = format!("{stem}_{}", self.units.rate_ending());
         let value = m3_d.into().map(|m3_d| self.units.rate(m3_d));
-        self.with(&name, number(value))
+        self.number(stem, Quantity::Rate, value)
     }
 
     /// Adds a rate a length, in m²/d, under `stem_m3_per_d_per_m` or
     /// `stem_gpm_per_ft`.
     pub fn rate_a_length(self, stem: &str, m2_d: impl Into<Option<f64>>) -> Self {
-        let (rate, length) = (self.units.rate_ending(), self.units.length_ending());
-        let name = format!("{stem}_{rate}_per_{length}");
         let a_length = |m2_d: f64| self.units.rate(m2_d) / self.units.length(1.0);
         let value = m2_d.into().map(a_length);
+        self.number(stem, Quantity::RateALength, value)
+    }
+
+    /// Adds a Darcy flux under `stem_m_per_d` or `stem_ft_per_d`.
+    pub fn flux(self, stem: &str, m_d: impl Into<Option<f64>>) -> Self {
+        let value = m_d.into().map(|m_d| self.units.flux(m_d));
+        self.number(stem, Quantity::Flux, value)
+    }
+
+    /// Adds a number that is in the plan's unit already.
+    pub fn number(self, stem: &str, quantity: Quantity, value: Option<f64>) -> Self {
+        let name = named(stem, quantity, self.units);
         self.with(&name, number(value))
     }
 

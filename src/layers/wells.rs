@@ -1,15 +1,13 @@
 //! `wells.geojson`: every well with its level and how its drawdown comes about.
 
-use geojson::FeatureCollection;
-
-use super::geojson::Layer;
+use super::layer::Layer;
 use super::units::Properties;
-use super::{LayerError, Planned, flag_codes};
+use super::{Planned, flag_codes};
 use crate::findings::Who;
 
 /// The layer.
-pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
-    let mut layer = Layer::new(planned.plan);
+pub fn layer(planned: &Planned<'_>) -> Layer {
+    let mut layer = Layer::default();
     let site = planned.solution.site();
     for (finding, well) in planned.findings.wells.iter().zip(&site.wells) {
         let properties = Properties::new(planned.units())
@@ -24,7 +22,7 @@ pub fn layer(planned: &Planned<'_>) -> Result<FeatureCollection, LayerError> {
                 "flags",
                 flag_codes(planned, Who::Well(finding.well)).join(", "),
             );
-        layer.add_point(well.at, properties)?;
+        layer.add_point(well.at, properties);
     }
-    Ok(layer.finish())
+    layer
 }

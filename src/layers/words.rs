@@ -9,7 +9,7 @@ mod oddity;
 mod rules;
 mod steady;
 
-pub use names::{one_line, short};
+pub use names::{listed, one_line, short};
 pub use steady::steady_state;
 
 use super::Planned;

@@ -12,16 +12,16 @@ use geo::{Coord, LineString, MultiPolygon, Polygon};
 use num_complex::Complex64;
 
 use super::shape::{Axis, Shape};
-use super::walk;
 use super::{Outline, Piece};
+use super::{walk, window};
 use crate::site::{Extent, Point};
 
 impl Outline {
     /// The aquifer within a rectangle, in site coordinates; empty where they
     /// do not overlap.
     pub fn clip(&self, extent: Extent) -> MultiPolygon<f64> {
-        match self.shape {
-            Shape::Axes { .. } => self.clip_convex(extent),
+        match self.shape.unclogged() {
+            Shape::Axes { .. } | Shape::CloggedHalfPlane { .. } => self.clip_convex(extent),
             Shape::Wedge { angle_rad, .. } if angle_rad <= PI => self.clip_convex(extent),
             Shape::Wedge { angle_rad, .. } if angle_rad < TAU => {
                 let paths = self.reflex_paths(extent);
@@ -31,6 +31,10 @@ impl Outline {
             Shape::Wedge { .. } => polygon(walk::corners(extent).to_vec()),
             Shape::Disk { radius_m } => self.clip_circle(extent, radius_m, true),
             Shape::DiskExterior { radius_m } => self.clip_circle(extent, radius_m, false),
+            Shape::General => match &self.boundary {
+                Some(boundary) => window::clip(&self.frame, boundary, extent),
+                None => MultiPolygon::new(Vec::new()),
+            },
         }
     }
 
@@ -57,6 +61,9 @@ impl Outline {
         let Some(piece) = self.sides.get(side).and_then(|pieces| pieces.get(piece)) else {
             return Vec::new();
         };
+        if let (Shape::General, Some(curve)) = (self.shape, self.round_side(side)) {
+            return window::arcs_within(&self.frame, &curve, extent);
+        }
         match self.shape {
             Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => {
                 let centre = self.frame.to_site(Complex64::ZERO);
@@ -100,7 +107,7 @@ impl Outline {
 
     /// For each straight side the canonical distance inward from its line.
     fn inward_distances(&self) -> Vec<Box<dyn Fn(Complex64) -> f64>> {
-        match self.shape {
+        match self.shape.unclogged() {
             Shape::Axes { x, y } => {
                 let mut sides = across(x, |z| z.re);
                 sides.extend(across(y, |z| z.im));
@@ -113,7 +120,10 @@ impl Outline {
                     Box::new(move |z: Complex64| -(z * back).im),
                 ]
             }
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => Vec::new(),
+            Shape::CloggedHalfPlane { .. }
+            | Shape::Disk { .. }
+            | Shape::DiskExterior { .. }
+            | Shape::General => Vec::new(),
         }
     }
 

@@ -41,19 +41,53 @@ pub enum OutlineError {
         /// The azimuth given.
         azimuth_deg: f64,
     },
-    /// A clogged river bank needs another method.
-    #[error("{river} has a bank resistance of {days} days, which no closed form covers")]
-    BankResistance {
+    /// A clogged bank beside an aquifer of unknown conductivity.
+    #[error(
+        "{river} has a bank resistance of {days} days, but the aquifer's thickness is not given"
+    )]
+    NoThickness {
         /// The river.
         river: Named,
         /// Its bank resistance.
         days: f64,
     },
-    /// Areal recharge needs another method.
-    #[error("the aquifer has a recharge of {metres_a_day} m/d, which no closed form here covers")]
-    Recharge {
+    /// Recharge that would have to flow without end.
+    #[error(
+        "no steady state: the {shape} around {well} has a recharge of {metres_a_day} m/d, and recharge over an unbounded area cannot drain"
+    )]
+    RechargeWithoutEnd {
         /// The recharge.
         metres_a_day: f64,
+        /// A well that stands in the aquifer.
+        well: Named,
+        /// The shape's name.
+        shape: &'static str,
+    },
+    /// Recharge within barriers.
+    #[error(
+        "{well} stands in an aquifer that barriers close on all sides, with a recharge of {metres_a_day} m/d that cannot drain"
+    )]
+    RechargeWithoutRiver {
+        /// The recharge.
+        metres_a_day: f64,
+        /// A well that stands in the aquifer.
+        well: Named,
+    },
+    /// Sides that cross where places were joined.
+    #[error("{edge} crosses or touches another side of its aquifer {place}")]
+    SidesCross {
+        /// The edge.
+        edge: Named,
+        /// Where, in words.
+        place: String,
+    },
+    /// An edge within the aquifer, which lies on both its banks.
+    #[error("{edge} has the aquifer of {well} on both its banks")]
+    BothBanks {
+        /// The edge.
+        edge: Named,
+        /// A well of the aquifer.
+        well: Named,
     },
     /// A line that is a point, or a circle without a radius.
     #[error("{edge} has no length: all of it lies within 1 mm")]
@@ -153,26 +187,6 @@ pub enum OutlineError {
         /// The other edges.
         others: Vec<Named>,
     },
-    /// A stage that is no linear function.
-    #[error("the stage of {river} departs by {departure} from a straight fall along its line")]
-    StageNotLinear {
-        /// The river.
-        river: Named,
-        /// By how much, in words.
-        departure: String,
-    },
-    /// A stage that varies beside an outline that allows none.
-    #[error("the stage of {river} varies by {spread}, and the aquifer is a {shape}")]
-    StageVaries {
-        /// The river.
-        river: Named,
-        /// Highest less lowest, in words.
-        spread: String,
-        /// The shape's name.
-        shape: &'static str,
-        /// The mean of the stages, metres.
-        mean_m: f64,
-    },
     /// Not one stage for each vertex.
     #[error("{river} has {stages} stages for {vertices} vertices")]
     StageCount {
@@ -191,17 +205,19 @@ impl OutlineError {
         match self {
             Self::NoWell => Subject::Plan,
             Self::WildAnisotropy { .. } => Subject::Aquifer(Some("anisotropy")),
-            Self::Recharge { .. } => Subject::Aquifer(Some("recharge")),
-            Self::BankResistance { river, .. } => with_key(&river.subject, "bank_resistance"),
-            Self::StageNotLinear { river, .. }
-            | Self::StageVaries { river, .. }
-            | Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
+            Self::RechargeWithoutEnd { .. } | Self::RechargeWithoutRiver { .. } => {
+                Subject::Aquifer(Some("recharge"))
+            }
+            Self::NoThickness { .. } => Subject::Aquifer(None),
+            Self::StageCount { river, .. } => with_key(&river.subject, "stage"),
             Self::WildCoordinate { part } | Self::OnEdge { part, .. } => part.subject.clone(),
             Self::RimCrossesEdge { well, .. } => well.subject.clone(),
             Self::NoLength { edge }
             | Self::TooManyPieces { edge, .. }
             | Self::CrossesItself { edge, .. }
             | Self::Overlap { edge, .. }
+            | Self::SidesCross { edge, .. }
+            | Self::BothBanks { edge, .. }
             | Self::NoClosedForm { edge, .. } => edge.subject.clone(),
             Self::OtherBank { neighbour, .. } | Self::AcrossAquifers { neighbour, .. } => {
                 neighbour.subject.clone()
@@ -213,14 +229,25 @@ impl OutlineError {
     fn why(&self) -> Option<String> {
         match self {
             Self::NoClosedForm { why, .. } => why.clone(),
-            Self::StageVaries { .. } => Some(
-                "a stage that falls along the river has a closed form beside a half-plane alone"
+            Self::NoWell => Some("the aquifer is found from the wells that stand in it".to_owned()),
+            Self::NoThickness { .. } => Some(
+                "how much a clogged bank holds back depends on the aquifer's conductivity, and \
+                 transmissivity alone does not tell it"
                     .to_owned(),
             ),
-            Self::NoWell => Some("the aquifer is found from the wells that stand in it".to_owned()),
-            Self::BankResistance { .. } => {
-                Some("its head is not the river's stage but depends on the inflow".to_owned())
-            }
+            Self::RechargeWithoutEnd { .. } => Some(
+                "parts of it have no river within reach, and there the head would rise or fall \
+                 without end"
+                    .to_owned(),
+            ),
+            Self::RechargeWithoutRiver { .. } => Some(
+                "with no river to take it up, the head would rise or fall without end".to_owned(),
+            ),
+            Self::BothBanks { .. } => Some(
+                "its line, with its free ends carried on straight, reaches into the aquifer without \
+                 parting it, and the general method takes only edges with the aquifer on one bank"
+                    .to_owned(),
+            ),
             _ => None,
         }
     }
@@ -237,10 +264,24 @@ impl OutlineError {
                  largest, such as { ratio = 3.0, azimuth = 40.0 }"
                     .to_owned()
             }
-            Self::BankResistance { .. } => "remove `bank_resistance`: the river then gives more \
-                 water than a clogged one would, which overstates heads near it"
+            Self::NoThickness { .. } => {
+                "give the aquifer `thickness` and `conductivity`, or remove `bank_resistance`"
+                    .to_owned()
+            }
+            Self::RechargeWithoutEnd { .. } => "close the aquifer with rivers and barriers on all \
+                 sides, or make it a strip beside a river; or set `recharge` to 0, which leaves \
+                 its water out"
                 .to_owned(),
-            Self::Recharge { .. } => "set `recharge` to 0, which leaves its water out".to_owned(),
+            Self::RechargeWithoutRiver { .. } => {
+                "give the aquifer a river, or set `recharge` to 0, which leaves its water out"
+                    .to_owned()
+            }
+            Self::SidesCross { .. } => {
+                "redraw the edges there so that they clearly meet, or clearly stay apart".to_owned()
+            }
+            Self::BothBanks { .. } => {
+                "draw both its banks, as one closed line around its width, or remove it".to_owned()
+            }
             Self::NoLength { .. } => "give it two vertices that lie apart, or remove it".to_owned(),
             Self::TooManyPieces { .. } => "simplify the lines to fewer vertices".to_owned(),
             Self::CrossesItself { .. } => {
@@ -260,12 +301,6 @@ impl OutlineError {
                 "split the area into one neighbour for each side".to_owned()
             }
             Self::NoClosedForm { remedy, .. } => remedy.clone(),
-            Self::StageNotLinear { .. } => {
-                "write stages that fall evenly along the line, or one constant stage".to_owned()
-            }
-            Self::StageVaries { mean_m, .. } => {
-                format!("write one constant stage for it, for instance its mean of {mean_m:.3} m")
-            }
             Self::StageCount { .. } => {
                 "write one stage for each vertex of `line`, or one number for all".to_owned()
             }
@@ -277,6 +312,10 @@ impl OutlineError {
         let label = |part: &Named, text: &str| (part.subject.clone(), text.to_owned());
         match self {
             Self::Overlap { other, .. } => vec![label(other, "the other edge")],
+            Self::NoThickness { river, .. } => vec![label(river, "this river")],
+            Self::RechargeWithoutEnd { well, .. } | Self::RechargeWithoutRiver { well, .. } => {
+                vec![label(well, "stands in it")]
+            }
             Self::OnEdge { edge, .. } | Self::RimCrossesEdge { edge, .. } => {
                 vec![label(edge, "this edge")]
             }
@@ -291,6 +330,7 @@ impl OutlineError {
                 label(second, "a well of the other"),
                 label(edge, "the edge between"),
             ],
+            Self::BothBanks { well, .. } => vec![label(well, "stands in the aquifer")],
             Self::NoClosedForm { well, others, .. } => {
                 let mut parts: Vec<_> = others
                     .iter()

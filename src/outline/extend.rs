@@ -45,13 +45,15 @@ struct Ray {
 impl Ray {
     fn from(scene: &Scene, end: FreeEnd) -> Option<Self> {
         let parent = scene.strokes.get(end.stroke)?;
-        let (from, direction) = if end.at_end {
-            (parent.end()?, parent.direction)
+        let (first, last) = parent.vertices;
+        let (vertex, from, direction) = if end.at_end {
+            (last, parent.end()?, parent.direction)
         } else {
-            (parent.from, -parent.direction)
+            (first, parent.from, -parent.direction)
         };
         let stroke = Stroke {
             role: Role::Extension,
+            vertices: (vertex, vertex),
             from,
             direction,
             length_m: f64::INFINITY,

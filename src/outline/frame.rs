@@ -63,6 +63,12 @@ impl Stretch {
         self.forward * gradient
     }
 
+    /// K/|K| times a gradient, |K| the geometric mean: S⁻² = √ratio u uᵀ +
+    /// (1 − u uᵀ)/√ratio.
+    pub fn conductivity_over_mean(&self, gradient: Vector) -> Vector {
+        self.backward * (self.backward * gradient)
+    }
+
     /// The radius of the circle that draws as much water as a stretched
     /// borehole of radius 1: (ratio^(1/4) + ratio^(−1/4))/2, the logarithmic
     /// capacity of an ellipse. Source: Kucuk & Brigham (1979), from memory.

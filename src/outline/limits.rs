@@ -3,33 +3,16 @@
 use super::error::{Named, OutlineError};
 use super::names;
 use super::scene::{edge_places, neighbour_places};
-use crate::site::{Anisotropy, EdgeKind, Point, Site};
+use crate::site::{Anisotropy, Point, Site};
 
 /// Largest coordinate in the local frame, metres.
 pub(super) const FARTHEST_M: f64 = 1e8;
 
-/// Capabilities that a plan asks for and the closed forms do not have.
-pub(super) fn not_covered(site: &Site) -> Vec<OutlineError> {
+/// What a plan lacks before any geometry.
+pub(super) fn lacks(site: &Site) -> Vec<OutlineError> {
     let mut errors = Vec::new();
     if site.wells.is_empty() {
         errors.push(OutlineError::NoWell);
-    }
-    let metres_a_day = site.aquifer.recharge.si();
-    if metres_a_day != 0.0 {
-        errors.push(OutlineError::Recharge { metres_a_day });
-    }
-    for (index, edge) in site.edges.iter().enumerate() {
-        if let EdgeKind::River {
-            bank_resistance: Some(resistance),
-            ..
-        } = &edge.kind
-            && resistance.si() != 0.0
-        {
-            errors.push(OutlineError::BankResistance {
-                river: names::edge(site, index),
-                days: resistance.si(),
-            });
-        }
     }
     errors
 }

@@ -7,22 +7,41 @@
 //! face of every well found (`faces`). The sides of each face (`boundary`) are
 //! compared with the shapes that have a closed form (`recognise`, `named`),
 //! their pieces and stages set (`pieces`, `stages`), and wells and neighbours put in place (`placement`).
-//! `region` and `clip` answer where an outline lies.
+//! Every other outline with a river, or closed by barriers, becomes a general
+//! boundary (`assemble`, `general`). `region` and `clip` answer where an
+//! outline lies; of a general one `finder` and `window` do.
 //! Limits: at most 4000 straight pieces; sides count as parallel or square to
-//! within 1 mm over the plan's extent; every other outline is refused by name.
+//! within 1 mm over the plan's extent; circles are not stretched; open outlines
+//! of barriers alone without images, and edges with the aquifer on both banks
+//! (`slits`), are refused by name.
 
 mod arrangement;
+mod assemble;
+mod banks;
 mod boundary;
+mod chords;
+mod circle;
 mod clip;
+mod clogged;
+mod cutting;
+mod drain;
 mod drawn;
 mod error;
+mod examine;
 mod extend;
 mod faces;
+mod finder;
 mod frame;
+mod general;
 mod heading;
+mod infinity;
+mod inside;
+mod join;
 mod limits;
+mod lines;
 mod named;
 mod names;
+mod nearest;
 mod pieces;
 mod placement;
 mod reaches;
@@ -31,14 +50,19 @@ mod refuse;
 mod region;
 mod scene;
 mod shape;
+mod slits;
 mod stages;
 mod stroke;
 mod walk;
+mod window;
 mod words;
 
 pub use error::{Named, OutlineError};
 pub use frame::{Frame, Stretch};
+pub use general::{Boundary, BoundaryChain, BoundarySide, Condition, Curve, Opening};
 pub use shape::{Axis, Kind, Piece, Shape, argument_in_wedge};
+
+use std::sync::Arc;
 
 use crate::site::{Refusal, Site};
 
@@ -56,6 +80,19 @@ pub struct Outline {
     pub wells: Vec<usize>,
     /// The neighbours it holds, by index in `Site::neighbours`.
     pub neighbours: Vec<usize>,
+    /// The sides of a general outline; none where the shape has a closed form.
+    pub boundary: Option<Arc<Boundary>>,
+    /// Finds places among them.
+    finder: Option<Arc<finder::Finder>>,
+}
+
+/// Which outlines are recognised by name.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Naming {
+    /// All that have a closed form.
+    ClosedForms,
+    /// Those without a river, and those with an influence radius.
+    NoRivers,
 }
 
 /// The aquifers that hold the wells, in the order of their first wells.
@@ -63,18 +100,33 @@ pub struct Outline {
 /// # Errors
 /// Every fault of the plan's geometry in one go: see `OutlineError`.
 pub fn find(site: &Site) -> Result<Vec<Outline>, Vec<Refusal>> {
-    faultless(site).map_err(|errors| errors.into_iter().map(Refusal::from).collect())
+    found(site, Naming::ClosedForms)
+}
+
+/// As `find`, but every outline with a river, where the plan gives no influence
+/// radius, is a general one: so that closed forms and the general solver can
+/// be compared.
+///
+/// # Errors
+/// As `find`.
+pub fn find_unnamed(site: &Site) -> Result<Vec<Outline>, Vec<Refusal>> {
+    found(site, Naming::NoRivers)
+}
+
+fn found(site: &Site, naming: Naming) -> Result<Vec<Outline>, Vec<Refusal>> {
+    let found = faultless(site, naming);
+    found.map_err(|errors| errors.into_iter().map(Refusal::from).collect())
 }
 
 /// The aquifers, or everything that is wrong.
-fn faultless(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
+fn faultless(site: &Site, naming: Naming) -> Result<Vec<Outline>, Vec<OutlineError>> {
     let wild = limits::wild_numbers(site);
-    let mut errors = limits::not_covered(site);
+    let mut errors = limits::lacks(site);
     if !wild.is_empty() {
         errors.extend(wild);
         return Err(errors);
     }
-    let outlines = match outlines(site) {
+    let outlines = match outlines(site, naming) {
         Ok(outlines) => outlines,
         Err(others) => {
             errors.extend(others);
@@ -89,7 +141,7 @@ fn faultless(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
 }
 
 /// The outlines of a site whose numbers are finite.
-fn outlines(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
+fn outlines(site: &Site, naming: Naming) -> Result<Vec<Outline>, Vec<OutlineError>> {
     let (scene, mut faults) = scene::Scene::read(site);
     faults.extend(drawn::faults(site, &scene.strokes));
     if !faults.is_empty() {
@@ -98,5 +150,5 @@ fn outlines(site: &Site) -> Result<Vec<Outline>, Vec<OutlineError>> {
     let strokes = extend::strokes(&scene);
     let arrangement = arrangement::Arrangement::of(&scene, &strokes);
     let faces = faces::Faces::of(site, &scene, arrangement);
-    placement::outlines(site, &scene, &strokes, &faces)
+    placement::outlines(site, &scene, &strokes, &faces, naming)
 }

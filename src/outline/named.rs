@@ -42,7 +42,7 @@ fn unit(z: Complex64) -> Complex64 {
 }
 
 /// The mean of the wells' places, stretched.
-fn centre_of_wells(context: Context<'_>) -> Complex64 {
+pub(super) fn centre_of_wells(context: Context<'_>) -> Complex64 {
     let places = context
         .wells
         .iter()

@@ -25,6 +25,8 @@ pub(super) fn finish(context: Context<'_>, named: &Named<'_>) -> Outline {
         sides,
         wells: context.wells.to_vec(),
         neighbours: Vec::new(),
+        boundary: None,
+        finder: None,
     }
 }
 

@@ -3,13 +3,13 @@
 
 use std::collections::BTreeSet;
 
-use super::Outline;
 use super::error::OutlineError;
 use super::faces::Faces;
 use super::names;
 use super::recognise::{self, Context};
 use super::scene::Scene;
 use super::stroke::{Role, Stroke, TOUCH_M, contacts};
+use super::{Naming, Outline};
 use crate::site::{EdgeShape, Place, Point, Site};
 
 /// The outlines of all faces with wells, with everything in its place.
@@ -18,6 +18,7 @@ pub(super) fn outlines(
     scene: &Scene,
     strokes: &[Stroke],
     faces: &Faces<'_>,
+    naming: Naming,
 ) -> Result<Vec<Outline>, Vec<OutlineError>> {
     let edges = Edges::of(site, scene, strokes);
     let mut placement = Placement {
@@ -30,7 +31,12 @@ pub(super) fn outlines(
     placement.place_wells();
     let mut outlines = Vec::new();
     for (face, wells) in &placement.groups {
-        let context = Context { site, scene, wells };
+        let context = Context {
+            site,
+            scene,
+            wells,
+            naming,
+        };
         match recognise::outline(context, faces, *face) {
             Ok(outline) => outlines.push(outline),
             Err(errors) => placement.errors.extend(errors),

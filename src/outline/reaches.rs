@@ -3,8 +3,8 @@
 
 use std::ops::Range;
 
-use super::shape::Shape;
-use super::{Outline, Piece};
+use super::general::Curve;
+use super::{Outline, Piece, window};
 use crate::site::{EdgeShape, Point, Site};
 
 /// Vertices nearer than this to the end of a piece do not cut it.
@@ -25,12 +25,11 @@ impl Outline {
 
     /// Positions of an edge's vertices strictly inside one of its pieces.
     fn vertices_along(&self, site: &Site, side: usize, piece: &Piece) -> Vec<f64> {
-        let is_round = matches!(self.shape, Shape::Disk { .. } | Shape::DiskExterior { .. });
         let Some(EdgeShape::Line(vertices)) = site.edges.get(piece.edge).map(|edge| &edge.shape)
         else {
             return Vec::new();
         };
-        if is_round {
+        if self.round_side(side).is_some() {
             return Vec::new();
         }
         let line = self.side_line(side);
@@ -47,9 +46,31 @@ impl Outline {
             .collect()
     }
 
-    /// The two ends of a straight part of a side; an infinite end is drawn
-    /// `beyond_m` past the other.
-    pub fn reach_line(&self, side: usize, along: &Range<f64>, beyond_m: f64) -> [Point; 2] {
+    /// The course of a part of a side, an arc as chords; an infinite end is
+    /// drawn `beyond_m` past the other.
+    pub fn reach_course(&self, side: usize, along: &Range<f64>, beyond_m: f64) -> Vec<Point> {
+        match self.round_side(side) {
+            Some(curve) => window::chords(&self.frame, &curve, (along.start, along.end)),
+            None => self.reach_line(side, along, beyond_m).to_vec(),
+        }
+    }
+
+    /// Length of a part of a side in metres of the site; none where it goes on
+    /// without end.
+    pub fn reach_length_m(&self, side: usize, along: &Range<f64>) -> Option<f64> {
+        if along.start.is_infinite() || along.end.is_infinite() {
+            return None;
+        }
+        // Circles are never stretched.
+        if let Some(Curve::Arc { radius, .. }) = self.round_side(side) {
+            return Some(radius * (along.end - along.start));
+        }
+        let [from, to] = self.reach_line(side, along, 0.0);
+        Some((to - from).norm())
+    }
+
+    /// The two ends of a straight part of a side.
+    fn reach_line(&self, side: usize, along: &Range<f64>, beyond_m: f64) -> [Point; 2] {
         let (start, end) = match (along.start.is_finite(), along.end.is_finite()) {
             (true, true) => (along.start, along.end),
             (true, false) => (along.start, along.start + beyond_m),

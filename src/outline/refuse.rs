@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 use std::f64::consts::{PI, TAU};
 
-use super::boundary::{Bit, Side, is_straight_on};
+use super::boundary::{Bit, Side};
 use super::error::{Named, OutlineError};
 use super::names;
 use super::recognise::Context;
@@ -75,12 +75,13 @@ pub(super) fn arc(context: Context<'_>, circle: usize, around: &[Bit]) -> Outlin
     refusal(context, circle, &edges, outline, Some(why), remedy)
 }
 
-/// A barrier that is a circle.
-pub(super) fn round_barrier(context: Context<'_>, circle: usize, inside: bool) -> OutlineError {
+/// The open plane around a barrier that is a circle.
+pub(super) fn round_barrier(context: Context<'_>, circle: usize) -> OutlineError {
     let name = names::edge(context.site, circle);
-    let place = if inside { "inside" } else { "around" };
-    let outline = format!("the aquifer {place} the round {name}");
-    let why = "a closed form here covers a circle that is a river or lake".to_owned();
+    let outline = format!("the aquifer around the round {name}");
+    let why = "without a river the cones end at influence_radius, which needs image wells, and a \
+               round barrier has none"
+        .to_owned();
     let remedy = "make it a river, leave it out, or draw straight barriers".to_owned();
     refusal(context, circle, &[], outline, Some(why), remedy)
 }
@@ -95,37 +96,6 @@ pub(super) fn ellipse(context: Context<'_>, circle: usize) -> OutlineError {
     );
     let remedy = "leave `anisotropy` out, or the circle".to_owned();
     refusal(context, circle, &[], outline, Some(why), remedy)
-}
-
-/// A river that a barrier continues on one straight line, if there is one.
-pub(super) fn continued(context: Context<'_>, sides: &[Side]) -> Option<OutlineError> {
-    let tolerance = context.scene.angle_tolerance_rad();
-    let following = sides.iter().cycle().skip(1);
-    let pair = sides.iter().zip(following).find(|(side, next)| {
-        let first = next.bits.first();
-        side.to().is_some()
-            && side.kind != next.kind
-            && side.direction.dot(&next.direction) > 0.0
-            && first.is_some_and(|bit| is_straight_on(side, bit, tolerance))
-    })?;
-    let (before, after) = (pair.0.bits.last()?.edge, pair.1.bits.first()?.edge);
-    let name = |edge| names::edge(context.site, edge);
-    let (first, second) = (before.min(after), before.max(after));
-    let outline = format!(
-        "an aquifer where {} continues {} on one straight line",
-        name(second),
-        name(first)
-    );
-    let why = "a side that is fixed head in part and no flow in part has no closed form".to_owned();
-    let remedy = "make both the same kind, or let them meet at an angle".to_owned();
-    Some(refusal(
-        context,
-        second,
-        &[first],
-        outline,
-        Some(why),
-        remedy,
-    ))
 }
 
 /// An outline of straight sides that is none of the named ones.

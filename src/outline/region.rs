@@ -4,7 +4,8 @@ use std::f64::consts::TAU;
 
 use num_complex::Complex64;
 
-use super::shape::{Axis, Shape};
+use super::general::Curve;
+use super::shape::{Axis, Kind, Shape};
 use super::{Outline, Piece};
 use crate::site::Point;
 
@@ -19,8 +20,9 @@ impl Outline {
     pub fn holds(&self, point: Point) -> bool {
         let z = self.frame.to_canonical(point);
         let slack = ON_EDGE * z.norm() + self.rounding_m(point);
-        match self.shape {
+        match self.shape.unclogged() {
             Shape::Axes { x, y } => within(x, z.re, slack) && within(y, z.im, slack),
+            Shape::CloggedHalfPlane { .. } => z.re >= -slack,
             Shape::Wedge { angle_rad, .. } => {
                 // Near the apex no angle tells a place on a side from one off it.
                 let slack_rad = slack / z.norm().max(slack);
@@ -31,6 +33,10 @@ impl Outline {
             }
             Shape::Disk { radius_m } => z.norm() <= radius_m + slack,
             Shape::DiskExterior { radius_m } => z.norm() + slack >= radius_m,
+            Shape::General => self
+                .finder
+                .as_ref()
+                .is_some_and(|finder| finder.inside.holds(z, slack)),
         }
     }
 
@@ -44,6 +50,9 @@ impl Outline {
     /// Distance of a place from the nearest edge of the aquifer, in metres of
     /// the site; infinite in an open plane.
     pub fn distance_to_edge_m(&self, point: Point) -> f64 {
+        if let Some(finder) = &self.finder {
+            return finder.nearest.distance_m(point);
+        }
         let sides = self.sides.iter().enumerate();
         sides
             .flat_map(|(side, pieces)| pieces.iter().map(move |piece| (side, piece)))
@@ -63,9 +72,56 @@ impl Outline {
         (self.frame.to_site(line.at(along)) - point).norm()
     }
 
+    /// The course of a side of a general outline.
+    pub(super) fn curve(&self, side: usize) -> Option<Curve> {
+        let boundary = self.boundary.as_ref()?;
+        boundary.sides.get(side).map(|side| side.curve)
+    }
+
+    /// Where a side is round: its course, positions along it the arc angle.
+    pub(super) fn round_side(&self, side: usize) -> Option<Curve> {
+        match self.shape {
+            Shape::Disk { radius_m } | Shape::DiskExterior { radius_m } => Some(Curve::Arc {
+                centre: Complex64::ZERO,
+                radius: radius_m,
+                start_rad: 0.0,
+                sweep_rad: TAU,
+            }),
+            Shape::General => self
+                .curve(side)
+                .filter(|curve| matches!(curve, Curve::Arc { .. })),
+            Shape::Axes { .. } | Shape::Wedge { .. } | Shape::CloggedHalfPlane { .. } => None,
+        }
+    }
+
+    /// The kinds of the sides, in their order; a clogged river counts as
+    /// fixed head.
+    pub fn side_kinds(&self) -> Vec<Kind> {
+        match &self.boundary {
+            Some(boundary) => boundary.kinds(),
+            None => self.shape.side_kinds(),
+        }
+    }
+
+    /// Whether edges close the aquifer on all sides.
+    pub fn is_closed(&self) -> bool {
+        match (self.shape, &self.boundary) {
+            (_, Some(boundary)) => boundary.is_bounded(),
+            (
+                Shape::Axes {
+                    x: Axis::TwoEdges { .. },
+                    y: Axis::TwoEdges { .. },
+                }
+                | Shape::Disk { .. },
+                None,
+            ) => true,
+            _ => false,
+        }
+    }
+
     /// The straight line of a canonical side.
     pub(super) fn side_line(&self, side: usize) -> SideLine {
-        let lines = match self.shape {
+        let lines = match self.shape.unclogged() {
             Shape::Axes { x, y } => {
                 let across_x = places(x).map(|x| SideLine {
                     origin: Complex64::new(x, 0.0),
@@ -85,7 +141,10 @@ impl Outline {
                     Complex64::cis(angle_rad)
                 },
             }),
-            Shape::Disk { .. } | Shape::DiskExterior { .. } => None,
+            Shape::CloggedHalfPlane { .. } | Shape::Disk { .. } | Shape::DiskExterior { .. } => {
+                None
+            }
+            Shape::General => self.curve(side).and_then(straight_line),
         };
         lines.unwrap_or(SideLine {
             origin: Complex64::ZERO,
@@ -115,6 +174,19 @@ impl SideLine {
         let step = outline.frame.direction_to_site(self.axis);
         step.dot(&(point - start)) / step.norm_squared()
     }
+}
+
+/// The line of a straight curve.
+fn straight_line(curve: Curve) -> Option<SideLine> {
+    let origin = match curve {
+        Curve::Segment { from, .. } | Curve::RayOut { from, .. } => from,
+        Curve::RayIn { to, .. } => to,
+        Curve::Arc { .. } => return None,
+    };
+    Some(SideLine {
+        origin,
+        axis: curve.heading(0.0),
+    })
 }
 
 /// The places of the edges across an axis.

@@ -2,6 +2,7 @@
 //! joins line ends within 1 mm, drops vertices that lie within 1 mm of a
 //! straight run, and cuts circles into chords.
 
+use super::chords;
 use super::error::OutlineError;
 use super::frame::Stretch;
 use super::heading;
@@ -13,9 +14,6 @@ use crate::site::{EdgeShape, Place, Point, Site};
 /// Straight pieces that may make up the edges; the search for crossings looks
 /// at every pair.
 const PIECES_LIMIT: usize = 4000;
-
-/// Chords that stand for a circle.
-const CHORDS: usize = 180;
 
 /// The edges of a site, ready to be carried on and joined.
 pub(super) struct Scene {
@@ -50,32 +48,33 @@ impl Scene {
             _ => Stretch::none(),
         };
         let lines = joined_lines(site);
+        let mut of_edges: Vec<Vec<Stroke>> = lines
+            .iter()
+            .enumerate()
+            .map(|(index, line)| {
+                let line = line.as_ref();
+                line.map_or_else(Vec::new, |line| line.strokes(index, &stretch))
+            })
+            .collect();
+        if let Some(error) = too_many(site, &of_edges) {
+            return (Self::empty(site, stretch), vec![error]);
+        }
+        let joined: Vec<[bool; 2]> = lines
+            .iter()
+            .map(|line| line.as_ref().map_or([true; 2], |line| line.joined))
+            .collect();
+        chords::add(site, &stretch, &joined, &mut of_edges);
         let mut errors = Vec::new();
         let mut strokes: Vec<Stroke> = Vec::new();
         let mut free_ends = Vec::new();
-        let mut drawn = 0;
-        for (index, line) in lines.iter().enumerate() {
+        for (index, (line, of_edge)) in lines.iter().zip(of_edges).enumerate() {
             let first = strokes.len();
-            match line {
-                Some(line) => strokes.extend(line.strokes(index, &stretch)),
-                None => strokes.extend(chords(site, index, &stretch)),
-            }
-            let count = strokes.len() - first;
-            if count == 0 {
+            strokes.extend(of_edge);
+            if strokes.len() == first {
                 let edge = names::edge(site, index);
                 errors.push(OutlineError::NoLength { edge });
             } else if let Some(line) = line {
                 free_ends.extend(line.free_ends(first, strokes.len() - 1));
-                drawn += count;
-            }
-            if drawn > PIECES_LIMIT {
-                errors.push(OutlineError::TooManyPieces {
-                    edge: names::edge(site, index),
-                    pieces: drawn,
-                    limit: PIECES_LIMIT,
-                });
-                strokes.truncate(first);
-                break;
             }
         }
         let (centre, extent_m) = extent(site, &stretch);
@@ -90,10 +89,39 @@ impl Scene {
         (scene, errors)
     }
 
+    /// A site whose edges are left out.
+    fn empty(site: &Site, stretch: Stretch) -> Self {
+        let (centre, extent_m) = extent(site, &stretch);
+        Self {
+            stretch,
+            strokes: Vec::new(),
+            free_ends: Vec::new(),
+            extent_m,
+            centre,
+        }
+    }
+
     /// The angle within which two lines count as parallel or square.
     pub fn angle_tolerance_rad(&self) -> f64 {
         TOUCH_M / self.extent_m
     }
+}
+
+/// The edge that makes the straight pieces of all lines too many.
+fn too_many(site: &Site, of_edges: &[Vec<Stroke>]) -> Option<OutlineError> {
+    let mut pieces = 0;
+    let counts = of_edges.iter().map(Vec::len).enumerate();
+    for (index, count) in counts {
+        pieces += count;
+        if pieces > PIECES_LIMIT {
+            return Some(OutlineError::TooManyPieces {
+                edge: names::edge(site, index),
+                pieces,
+                limit: PIECES_LIMIT,
+            });
+        }
+    }
+    None
 }
 
 /// One polyline with its ends joined.
@@ -239,28 +267,6 @@ fn distance_to_chord(place: Point, from: Point, to: Point) -> f64 {
     }
     let share = (chord.dot(&(place - from)) / length_squared).clamp(0.0, 1.0);
     (place - (from + chord * share)).norm()
-}
-
-/// The chords of a circle, counterclockwise; none if its radius is nothing.
-fn chords(site: &Site, index: usize, stretch: &Stretch) -> Vec<Stroke> {
-    let Some(EdgeShape::Circle { centre, radius }) = site.edges.get(index).map(|edge| &edge.shape)
-    else {
-        return Vec::new();
-    };
-    let radius_m = radius.si();
-    if radius_m <= TOUCH_M {
-        return Vec::new();
-    }
-    let corner = |step: usize| {
-        let (sin, cos) = (std::f64::consts::TAU * (step % CHORDS) as f64 / CHORDS as f64).sin_cos();
-        stretch.apply(Point::new(
-            centre.x + radius_m * cos,
-            centre.y + radius_m * sin,
-        ))
-    };
-    (0..CHORDS)
-        .map(|step| Stroke::between(index, Role::Chord, (0, 0), [corner(step), corner(step + 1)]))
-        .collect()
 }
 
 /// Centre and diagonal of the box around all that the plan places.

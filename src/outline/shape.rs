@@ -8,7 +8,8 @@ use num_complex::Complex64;
 /// What an edge of the outline does to the head.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Kind {
-    /// The head is given: a river. Images change sign.
+    /// The head is given: a river. Images change sign. Behind a clogged bank
+    /// the river's stage is given, not the head.
     FixedHead,
     /// No flow crosses: a barrier. Images keep their sign.
     NoFlow,
@@ -37,7 +38,7 @@ pub enum Axis {
 ///
 /// The canonical sides come in this order: x low, x high, y low, y high, as
 /// far as they exist; a wedge has arg z = 0, then arg z = angle; a disk has
-/// its circle.
+/// its circle; a general outline the sides of its boundary.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Shape {
     /// An axis-parallel outline: the product of two mirror sets. An axis with
@@ -57,6 +58,12 @@ pub enum Shape {
         /// The kinds of the sides at arg z = 0 and arg z = angle.
         kinds: [Kind; 2],
     },
+    /// x > 0 beside a river on x = 0 whose bank is clogged.
+    CloggedHalfPlane {
+        /// b of the bank's condition ∂s/∂x = s/b for the drawdown s, metres,
+        /// > 0: the aquifer's conductivity times the bank's resistance.
+        skin_m: f64,
+    },
     /// abs z < `radius_m` inside a river.
     Disk {
         /// Radius, metres.
@@ -67,6 +74,8 @@ pub enum Shape {
         /// Radius, metres.
         radius_m: f64,
     },
+    /// Any other outline: its sides are those of `Outline::boundary`.
+    General,
 }
 
 impl Shape {
@@ -83,8 +92,21 @@ impl Shape {
                 (TwoEdges { .. }, TwoEdges { .. }) => "box",
             },
             Self::Wedge { .. } => "wedge",
+            Self::CloggedHalfPlane { .. } => "half-plane behind a clogged bank",
             Self::Disk { .. } => "disk",
             Self::DiskExterior { .. } => "plane around a lake",
+            Self::General => "general outline",
+        }
+    }
+
+    /// The shape with the same sides, all banks clean: where it lies.
+    pub fn unclogged(self) -> Self {
+        match self {
+            Self::CloggedHalfPlane { .. } => Self::Axes {
+                x: Axis::OneEdge(Kind::FixedHead),
+                y: Axis::Open,
+            },
+            other => other,
         }
     }
 
@@ -124,11 +146,16 @@ impl Shape {
                     Complex64::from_polar(corner_m, inside)
                 }
             }
-            Self::Disk { .. } | Self::DiskExterior { .. } => z,
+            // Behind a clogged bank nothing jumps.
+            Self::CloggedHalfPlane { .. }
+            | Self::Disk { .. }
+            | Self::DiskExterior { .. }
+            | Self::General => z,
         }
     }
 
-    /// The kinds of the canonical sides, in their order.
+    /// The kinds of the canonical sides, in their order. Those of a general
+    /// outline the shape alone does not know: see `Outline::side_kinds`.
     pub fn side_kinds(&self) -> Vec<Kind> {
         match *self {
             Self::Axes { x, y } => [x, y]
@@ -140,7 +167,10 @@ impl Shape {
                 })
                 .collect(),
             Self::Wedge { kinds, .. } => kinds.to_vec(),
-            Self::Disk { .. } | Self::DiskExterior { .. } => vec![Kind::FixedHead],
+            Self::CloggedHalfPlane { .. } | Self::Disk { .. } | Self::DiskExterior { .. } => {
+                vec![Kind::FixedHead]
+            }
+            Self::General => Vec::new(),
         }
     }
 }
@@ -148,7 +178,8 @@ impl Shape {
 /// A piece of a canonical side that one river or barrier of the site makes.
 ///
 /// Positions along a side: y on a side across x, x on a side across y, the
-/// distance from the apex on a wedge; on a circle the arc angle, 0 to 2π.
+/// distance from the apex on a wedge; on a circle the arc angle, 0 to 2π; on a
+/// side of a general outline those of its `Curve`.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Piece {
     /// Index in `Site::edges`.

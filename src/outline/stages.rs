@@ -2,12 +2,11 @@
 //!
 //! A stage is constant, or, beside a half-plane, one linear function of the
 //! position, which the drawn vertices follow to within 1 mm and which is
-//! carried on to infinity.
+//! carried on to infinity; the rivers of one half-plane all fall alike. Any
+//! other stage makes a general outline.
 
 use super::boundary::Side;
-use super::error::OutlineError;
 use super::frame::Frame;
-use super::names;
 use super::shape::{Axis, Shape};
 use super::stroke::TOUCH_M;
 use super::{Outline, Piece};
@@ -16,51 +15,42 @@ use crate::site::{EdgeKind, EdgeShape, Level, Point, Site, Stage};
 /// Stages that differ by less count as the same, metres.
 const SAME_STAGE_M: f64 = 1e-9;
 
+/// Slopes that differ by less count as the same: a millimetre a kilometre.
+const SAME_SLOPE: f64 = 1e-6;
+
 /// Sets the stages of all pieces of an outline, whose sides are given in
-/// canonical order.
-pub(super) fn set(
-    site: &Site,
-    sides: &[&Side],
-    mut outline: Outline,
-) -> Result<Outline, Vec<OutlineError>> {
+/// canonical order; none where no closed form takes them.
+pub(super) fn set(site: &Site, sides: &[&Side], mut outline: Outline) -> Option<Outline> {
     let (frame, shape) = (outline.frame, outline.shape);
-    let mut errors = Vec::new();
     for (pieces, side) in outline.sides.iter_mut().zip(sides) {
         for piece in pieces {
-            match on_piece(site, side, piece, &frame, &shape) {
-                Ok((stage_m, slope)) => {
-                    piece.stage_m = stage_m;
-                    piece.stage_slope = slope;
-                }
-                Err(error) if errors.contains(&*error) => {}
-                Err(error) => errors.push(*error),
-            }
+            let (stage_m, slope) = on_piece(site, side, piece, &frame, &shape)?;
+            piece.stage_m = stage_m;
+            piece.stage_slope = slope;
         }
     }
-    if errors.is_empty() {
-        Ok(outline)
-    } else {
-        Err(errors)
-    }
+    let mut sides = outline.sides.iter_mut();
+    sides.all(|side| fall_alike(side)).then_some(outline)
 }
 
-/// The stage of a circle, and no slope.
-pub(super) fn on_circle(site: &Site, edge: usize) -> Result<(f64, f64), Box<OutlineError>> {
-    match site.edges.get(edge).map(|edge| &edge.kind) {
-        Some(EdgeKind::River {
-            stage: Stage::Constant(level),
-            ..
-        }) => Ok((level.si(), 0.0)),
-        Some(EdgeKind::River {
-            stage: Stage::AtVertices(levels),
-            ..
-        }) => Err(Box::new(OutlineError::StageCount {
-            river: names::edge(site, edge),
-            stages: levels.len(),
-            vertices: 0,
-        })),
-        _ => Ok((0.0, 0.0)),
+/// Whether the rivers of one side share one slope, as the closed form needs;
+/// they are then given that of the first.
+fn fall_alike(side: &mut [Piece]) -> bool {
+    let Some((first, others)) = side.split_first_mut() else {
+        return true;
+    };
+    for piece in others {
+        let turn = piece.stage_slope - first.stage_slope;
+        if turn.abs() > SAME_SLOPE {
+            return false;
+        }
+        if turn != 0.0 {
+            // The pieces meet at the start of the later one.
+            piece.stage_m += turn * piece.along.start;
+            piece.stage_slope = first.stage_slope;
+        }
     }
+    true
 }
 
 /// Stage at position 0 and slope of one piece.
@@ -70,34 +60,23 @@ fn on_piece(
     piece: &Piece,
     frame: &Frame,
     shape: &Shape,
-) -> Result<(f64, f64), Box<OutlineError>> {
-    let Some(edge) = site.edges.get(piece.edge) else {
-        return Ok((0.0, 0.0));
-    };
+) -> Option<(f64, f64)> {
+    let edge = site.edges.get(piece.edge)?;
     let (EdgeKind::River { stage, .. }, EdgeShape::Line(points)) = (&edge.kind, &edge.shape) else {
-        return Ok((0.0, 0.0));
+        return Some((0.0, 0.0));
     };
     let levels = match stage {
-        Stage::Constant(level) => return Ok((level.si(), 0.0)),
+        Stage::Constant(level) => return Some((level.si(), 0.0)),
         Stage::AtVertices(levels) => levels,
     };
-    let river = || names::edge(site, piece.edge);
-    if levels.len() != points.len() {
-        return Err(Box::new(OutlineError::StageCount {
-            river: river(),
-            stages: levels.len(),
-            vertices: points.len(),
-        }));
-    }
     let known = at_positions(side, piece.edge, points, levels, frame);
     let highest = known
         .iter()
         .map(|at| at.1)
         .fold(f64::NEG_INFINITY, f64::max);
     let lowest = known.iter().map(|at| at.1).fold(f64::INFINITY, f64::min);
-    let mean_m = known.iter().map(|at| at.1).sum::<f64>() / known.len().max(1) as f64;
     if highest - lowest <= SAME_STAGE_M {
-        return Ok((lowest, 0.0));
+        return Some((lowest, 0.0));
     }
     let is_half_plane = matches!(
         shape,
@@ -106,32 +85,20 @@ fn on_piece(
             y: Axis::Open
         }
     );
-    if !is_half_plane {
-        return Err(Box::new(OutlineError::StageVaries {
-            river: river(),
-            spread: names::length(highest - lowest),
-            shape: shape.name(),
-            mean_m,
-        }));
+    if is_half_plane {
+        straight_fall(&known)
+    } else {
+        None
     }
-    straight_fall(&known).map_err(|worst| {
-        Box::new(OutlineError::StageNotLinear {
-            river: river(),
-            departure: names::length(worst),
-        })
-    })
 }
 
-/// Stage at position 0 and slope of a straight fall through known stages, or
-/// the largest departure from it where that exceeds 1 mm.
-fn straight_fall(known: &[(f64, f64)]) -> Result<(f64, f64), f64> {
+/// Stage at position 0 and slope of a straight fall through known stages, none
+/// where one departs from it by more than 1 mm.
+fn straight_fall(known: &[(f64, f64)]) -> Option<(f64, f64)> {
     let (stage_m, slope) = line_through(known);
     let departure = |at: &(f64, f64)| (stage_m + slope * at.0 - at.1).abs();
     let worst = known.iter().map(departure).fold(0.0, f64::max);
-    if worst > TOUCH_M {
-        return Err(worst);
-    }
-    Ok((stage_m, slope))
+    (worst <= TOUCH_M).then_some((stage_m, slope))
 }
 
 /// The stages at those vertices of an edge that make a side, with their

@@ -98,11 +98,16 @@ fn on_circle(centre: Point, radius_m: f64, angle: f64) -> Point {
     Point::new(centre.x + radius_m * cos, centre.y + radius_m * sin)
 }
 
+/// How many chords stand for an arc over an angle.
+pub(super) fn chords(radius_m: f64, span_rad: f64) -> usize {
+    let half_step = 2.0 * (SAGITTA_M / (2.0 * radius_m)).sqrt().min(0.5).asin();
+    (span_rad / (2.0 * half_step)).ceil().max(1.0) as usize
+}
+
 /// An arc as chords, its ends included.
 pub(super) fn arc(centre: Point, radius_m: f64, angles: Range<f64>) -> Vec<Point> {
-    let half_step = 2.0 * (SAGITTA_M / (2.0 * radius_m)).sqrt().min(0.5).asin();
     let span = angles.end - angles.start;
-    let count = (span / (2.0 * half_step)).ceil().max(1.0) as usize;
+    let count = chords(radius_m, span);
     (0..=count)
         .map(|step| {
             let angle = angles.start + span * step as f64 / count as f64;
@@ -147,7 +152,7 @@ pub(super) fn rings(extent: Extent, paths: &[Vec<Point>]) -> Vec<Vec<Point>> {
 
 /// Position on the rim, 0 to 4: one for each side, counterclockwise from the
 /// south-west corner.
-fn rim_position(extent: Extent, point: Point) -> f64 {
+pub(super) fn rim_position(extent: Extent, point: Point) -> f64 {
     let Extent { min, max } = extent;
     let east = ((point.x - min.x) / (max.x - min.x)).clamp(0.0, 1.0);
     let north = ((point.y - min.y) / (max.y - min.y)).clamp(0.0, 1.0);
@@ -162,7 +167,7 @@ fn rim_position(extent: Extent, point: Point) -> f64 {
 }
 
 /// The corners passed when going on from a rim position.
-fn rim_corners(extent: Extent, from: f64, length: f64) -> Vec<Point> {
+pub(super) fn rim_corners(extent: Extent, from: f64, length: f64) -> Vec<Point> {
     let corners = corners(extent);
     let first = from.floor() as usize + 1;
     let passed = (from + length).ceil() as usize;

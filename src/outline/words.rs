@@ -1,5 +1,6 @@
 //! Says in words what an outline is.
 
+use super::general::Condition;
 use super::names;
 use super::shape::{Axis, Kind, Shape};
 use super::{Outline, Piece};
@@ -23,17 +24,13 @@ impl Outline {
     /// The outline in one line: "strip 1,240 m wide between river Ostra
     /// (fixed head) and barrier granite edge (no flow)".
     pub fn words(&self, site: &Site) -> String {
-        let kinds = self.shape.side_kinds();
-        // One edge may bend round several sides; it is named once.
-        let mut sides: Vec<String> = Vec::new();
-        for (side, kind) in kinds.iter().enumerate() {
-            let words = format!("{} ({})", self.side_name(site, side), kind_words(*kind));
-            if !sides.contains(&words) {
-                sides.push(words);
-            }
-        }
+        let kinds = self.side_kinds();
+        let sides = self.sides_in_words(site);
         let between = if sides.len() > 1 { "between" } else { "within" };
-        let sides = names::listed(&sides);
+        let sides = match self.shape {
+            Shape::General => names::few(&sides),
+            _ => names::listed(&sides),
+        };
         let name = self.shape.name();
         let stretched = if self.frame.stretch == super::Stretch::none() {
             ""
@@ -41,6 +38,7 @@ impl Outline {
             ", lengths and angles stretched to isotropy"
         };
         let text = match self.shape {
+            Shape::CloggedHalfPlane { .. } => format!("half-plane beside {sides}"),
             Shape::Axes { x, y } => match (width(x), width(y)) {
                 (None, None) if kinds.is_empty() => name.to_owned(),
                 (None, None) if kinds.len() == 1 => format!("{name} beside {sides}"),
@@ -59,12 +57,43 @@ impl Outline {
                     names::length(radius_m)
                 )
             }
+            Shape::General => format!("{name} {between} {sides}"),
             Shape::DiskExterior { radius_m } => {
                 let radius = names::length(radius_m);
                 format!("{name} of radius {radius}: {sides}")
             }
         };
         text + stretched
+    }
+
+    /// The sides with what they do to the head. One edge may bend round
+    /// several sides; it is named once.
+    fn sides_in_words(&self, site: &Site) -> Vec<String> {
+        let mut sides: Vec<String> = Vec::new();
+        for (side, kind) in self.side_kinds().into_iter().enumerate() {
+            let condition = self.condition_words(side, kind);
+            let words = format!("{} ({condition})", self.side_name(site, side));
+            if !sides.contains(&words) {
+                sides.push(words);
+            }
+        }
+        sides
+    }
+
+    /// What a side of a kind does to the head.
+    fn condition_words(&self, side: usize, kind: Kind) -> &'static str {
+        let is_clogged = match &self.boundary {
+            Some(boundary) => boundary
+                .sides
+                .get(side)
+                .is_some_and(|side| matches!(side.condition, Condition::Clogged { .. })),
+            None => matches!(self.shape, Shape::CloggedHalfPlane { .. }),
+        };
+        match kind {
+            Kind::FixedHead if is_clogged => "clogged bank",
+            Kind::FixedHead => "fixed head",
+            Kind::NoFlow => "no flow",
+        }
     }
 }
 
@@ -73,12 +102,5 @@ fn width(axis: Axis) -> Option<String> {
     match axis {
         Axis::TwoEdges { width_m, .. } => Some(names::length(width_m)),
         Axis::Open | Axis::OneEdge(_) => None,
-    }
-}
-
-fn kind_words(kind: Kind) -> &'static str {
-    match kind {
-        Kind::FixedHead => "fixed head",
-        Kind::NoFlow => "no flow",
     }
 }

@@ -14,10 +14,12 @@
 mod checked;
 mod definition;
 mod error;
+mod system;
 
 use checked::{Accepted, Domain, Verdict};
 use definition::Projection;
 pub use error::CrsError;
+pub use system::{GridSystem, WGS_84};
 
 /// Semi-major axis of WGS 84, metres. Source: EPSG ellipsoid 7030.
 const SEMI_MAJOR_M: f64 = 6_378_137.0;
@@ -42,7 +44,7 @@ const LOCAL_REACH_M: f64 = 300_000.0;
 pub struct Crs {
     projection: Projection,
     name: String,
-    epsg: Option<u32>,
+    system: GridSystem,
     note: Option<String>,
     domain: Domain,
 }
@@ -68,7 +70,7 @@ impl Crs {
                     .map(|projection| Self {
                         projection,
                         name: format!("{} (EPSG:{code})", name_of(definition.wkt)),
-                        epsg: Some(code),
+                        system: GridSystem::Epsg(code),
                         note: note(&accepted),
                         domain: accepted.domain,
                     })
@@ -102,6 +104,10 @@ impl Crs {
         if !(longitude_deg.abs() <= 180.0 && latitude_deg.abs() <= 89.0) {
             return Err(refused());
         }
+        let system = GridSystem::Local {
+            longitude_deg,
+            latitude_deg,
+        };
         let definition = format!(
             "+proj=tmerc +lat_0={latitude_deg} +lon_0={longitude_deg} +k=1 +x_0=0 +y_0=0 \
              +datum=WGS84 +units=m +no_defs"
@@ -110,8 +116,8 @@ impl Crs {
         let wide_deg = (1.1 * reach_deg / latitude_deg.to_radians().cos()).min(180.0);
         Ok(Self {
             projection: Projection::new(&definition, None).map_err(|_| refused())?,
-            name: format!("local grid around longitude {longitude_deg}, latitude {latitude_deg}"),
-            epsg: None,
+            name: system.name(),
+            system,
             note: None,
             domain: Domain {
                 west: longitude_deg - wide_deg,
@@ -194,7 +200,15 @@ impl Crs {
 
     /// The EPSG code; none for a local grid.
     pub fn epsg(&self) -> Option<u32> {
-        self.epsg
+        match self.system {
+            GridSystem::Epsg(code) => Some(code),
+            GridSystem::Local { .. } => None,
+        }
+    }
+
+    /// What it is, as other programs are told.
+    pub fn system(&self) -> GridSystem {
+        self.system
     }
 
     /// What a reader should know of the system's accuracy.

@@ -148,7 +148,7 @@ pub(super) fn counted(count: usize, thing: &str) -> String {
 }
 
 /// The known word that a text most likely means, if any is near.
-pub(super) fn nearest<'a>(text: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+pub(crate) fn nearest<'a>(text: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
     /// Below this Jaro–Winkler likeness two words have little in common.
     const LEAST_LIKENESS: f64 = 0.8;
     // Long texts mean none of the words, and would cost time to compare.

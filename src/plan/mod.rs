@@ -45,6 +45,7 @@ use files::LayerStore;
 use source::{Source, Sources};
 use source_map::SourceMap;
 
+pub(crate) use fault::nearest;
 pub use fault::{ListedFault, PlanFaults};
 pub use materials::{ConductivityRange, Material, ShareRange, materials};
 pub use schema::schema;

@@ -5,7 +5,7 @@ use serde::Serialize;
 
 use crate::findings::{Flag, FlagCode, NeighbourFinding};
 use crate::layers::Planned;
-use crate::layers::words::{Words, percent};
+use crate::layers::words::{Words, listed as in_words, percent};
 
 /// Names that a sentence lists, at most.
 const MOST_NAMES: usize = 3;
@@ -305,11 +305,7 @@ fn listed(mut names: Vec<String>, count: usize) -> String {
     if more > 0 {
         names.push(format!("{more} more"));
     }
-    match names.split_last() {
-        Some((last, [])) => last.clone(),
-        Some((last, first)) => format!("{} and {last}", first.join(", ")),
-        None => String::new(),
-    }
+    in_words(&names)
 }
 
 #[cfg(test)]

@@ -92,7 +92,6 @@ fn steady(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
     let has_river = planned.solution.fields().iter().all(|field| {
         field
             .outline()
-            .shape
             .side_kinds()
             .contains(&crate::outline::Kind::FixedHead)
     });

@@ -35,10 +35,11 @@ fn property_names(layer: &Value) -> Vec<String> {
     properties.keys().cloned().collect()
 }
 
-const GEOJSON: [&str; 8] = [
+const GEOJSON: [&str; 9] = [
     "boundaries.geojson",
     "drawdown_bands.geojson",
     "drawdown_contours.geojson",
+    "flow.geojson",
     "head_contours.geojson",
     "image_wells.geojson",
     "neighbours.geojson",
@@ -203,13 +204,17 @@ fn rivers_give_what_the_wells_pump() {
 /// breaks, formulas, markup, and scripts from right to left.
 #[test]
 fn names_of_any_kind_come_back_as_they_were() {
+    let long = "long name ".repeat(1_000);
     let names = [
+        long.as_str(),
         "=HYPERLINK(\"x\")",
         "a,b \"c\"",
         "two\nlines",
         "井戸 №1",
         "بئر",
-        "<script>",
+        "<script>alert(\"x\")</script>",
+        "\u{202e}right to left\u{202c}",
+        "carriage\r\nreturn",
         "'s mill",
         "-1",
     ];

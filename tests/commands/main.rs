@@ -17,5 +17,6 @@ mod files;
 mod heads;
 mod help;
 mod layers;
+mod outputs;
 mod run;
 mod support;

@@ -8,6 +8,7 @@
 )]
 
 mod accuracy;
+mod awkward_outlines;
 mod exchange;
 mod inflow;
 mod plans;

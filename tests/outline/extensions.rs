@@ -3,7 +3,7 @@
 use approx::assert_relative_eq;
 use mirrorwell::outline::{Axis, Shape};
 
-use crate::plans::{With, only, only_refusal, site};
+use crate::plans::{With, only, site};
 
 #[test]
 fn ends_within_a_millimetre_join() {
@@ -122,21 +122,4 @@ fn vertices_within_a_millimetre_of_a_straight_run_do_not_bend_it() {
     };
     assert_eq!(only(&river(0.0009)).shape.name(), "half-plane");
     assert_eq!(only(&river(0.002)).shape.name(), "wedge");
-}
-
-#[test]
-fn a_river_of_three_legs_has_two_corners_and_is_refused() {
-    let line = [(0.0, 300.0), (0.0, 0.0), (100.0, -50.0), (100.0, -400.0)];
-    let text = only_refusal(&site(&[(200.0, 50.0)]).river("Ostra", &line));
-    assert!(
-        text.contains(
-            "well PW-1 stands in an aquifer with 2 corners: river Ostra; no closed form covers it"
-        ),
-        "{text}"
-    );
-    // The bend from south to 100 east and 50 down turns by 63.4°.
-    assert!(
-        text.contains("its corners measure 116.6° and 243.4°"),
-        "{text}"
-    );
 }

@@ -6,12 +6,16 @@
 
 #![expect(
     clippy::panic,
+    clippy::expect_used,
+    clippy::unwrap_used,
     clippy::indexing_slicing,
     reason = "a test stops where its plan is not what it expects"
 )]
 
 mod areas;
 mod extensions;
+mod general;
+mod general_laws;
 mod laws;
 mod placements;
 mod plans;

@@ -3,7 +3,7 @@
 use mirrorwell::outline::{Outline, find};
 use mirrorwell::site::{
     Aquifer, Edge, EdgeKind, EdgeShape, Flux, Length, Level, MapRequest, Neighbour, Place, Point,
-    Rate, Refusal, Site, Stage, Transmissivity, Well, WellLoss,
+    Rate, Refusal, Site, Stage, Time, Transmissivity, Well, WellLoss,
 };
 
 /// A site with wells of radius 0.2 m at some places and no edge.
@@ -61,6 +61,8 @@ pub trait With: Sized {
     fn barrier(self, name: &str, line: &[(f64, f64)]) -> Self;
     fn lake(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
     fn round_barrier(self, name: &str, centre: (f64, f64), radius: f64) -> Self;
+    /// Gives the rivers of a name a bank resistance, days.
+    fn clogged(self, name: &str, days: f64) -> Self;
     fn neighbour(self, name: &str, at: (f64, f64)) -> Self;
     fn property(self, name: &str, corners: &[(f64, f64)]) -> Self;
 }
@@ -101,6 +103,18 @@ impl With for Site {
         self = self.lake(name, centre, radius);
         if let Some(edge) = self.edges.last_mut() {
             edge.kind = EdgeKind::Barrier;
+        }
+        self
+    }
+
+    fn clogged(mut self, name: &str, days: f64) -> Self {
+        for edge in self.edges.iter_mut().filter(|edge| edge.name == name) {
+            if let EdgeKind::River {
+                bank_resistance, ..
+            } = &mut edge.kind
+            {
+                *bank_resistance = Some(Time::from_si(days));
+            }
         }
         self
     }

@@ -4,7 +4,7 @@ use std::f64::consts::{FRAC_PI_4, TAU};
 
 use approx::assert_relative_eq;
 use mirrorwell::outline::{Axis, Kind, Shape, find};
-use mirrorwell::site::{Anisotropy, Point};
+use mirrorwell::site::{Anisotropy, Length, Point};
 
 use crate::plans::{With, only, site};
 
@@ -342,6 +342,40 @@ fn a_stage_that_falls_evenly_is_linear_along_a_half_plane() {
         60.0,
         max_relative = 1e-12
     );
+}
+
+#[test]
+fn rivers_of_one_line_that_fall_alike_are_a_half_plane() {
+    let plan = site(&[(50.0, 250.0)])
+        .falling_river("Ostra", &[(0.0, 0.0), (0.0, 500.0)], &[61.0, 60.5])
+        .falling_river("Weir pool", &[(0.0, 500.0), (0.0, 900.0)], &[60.2, 59.8]);
+    let outline = only(&plan);
+    assert_eq!(outline.shape.name(), "half-plane");
+    for (piece, stage_m) in outline.sides[0].iter().zip([60.75, 60.45]) {
+        assert_relative_eq!(piece.stage_m, stage_m, max_relative = 1e-12);
+        assert_relative_eq!(piece.stage_slope, -0.001, max_relative = 1e-12);
+    }
+}
+
+#[test]
+fn a_river_clogged_alike_all_along_is_a_half_plane_with_a_skin() {
+    // T = 500 m²/d over 20 m: K = 25 m/d; c = 2 d: a skin of 50 m.
+    let mut plan = site(&[(50.0, 0.0)])
+        .river("Ostra", &[(0.0, 0.0), (0.0, 9.0)])
+        .river("Lower Ostra", &[(0.0, -9.0), (0.0, 0.0)])
+        .clogged("Ostra", 2.0)
+        .clogged("Lower Ostra", 2.0);
+    plan.aquifer.thickness = Some(Length::from_si(20.0));
+    let outline = only(&plan);
+    assert_eq!(outline.shape, Shape::CloggedHalfPlane { skin_m: 50.0 });
+    assert_eq!(outline.side_kinds(), [Kind::FixedHead]);
+    assert_eq!(
+        outline.words(&plan),
+        "half-plane beside river Lower Ostra and river Ostra (clogged bank)"
+    );
+    // No resistance is no skin.
+    let clean = plan.clogged("Ostra", 0.0).clogged("Lower Ostra", 0.0);
+    assert_eq!(only(&clean).shape.name(), "half-plane");
 }
 
 #[test]

@@ -9,9 +9,12 @@
 //! | `reciprocity` | G(a, b) = G(b, a) > 0 |
 //! | `superposition` | wells superpose; double rates double drawdowns |
 //! | `balance` | rivers give what the wells pump, in shares of 0 to 1 |
+//! | `mounds` | recharge obeys T ∇²h = −N, and rivers take up N times the area |
+//! | `clogged_banks` | K ∂h/∂n = (h − stage)/c on a clogged bank |
 //! | `motions` | moving, turning, mirroring and enlarging carry the answer along |
 //! | `rims` | the level in a well does not depend on where in its rim one looks |
 //! | `contours` | contours never cross and lie on their level |
+//! | `solvers` | closed forms and the general solver agree within its bound |
 //! | `texts` | a plan as text, in either unit, says the same |
 //!
 //! Tolerances: drawdowns are a few metres, Σ abs(Q/T)/(2π) at most 5 m. The
@@ -28,14 +31,17 @@
 
 mod balance;
 mod barriers;
+mod clogged_banks;
 mod contours;
 mod drawings;
 mod gradients;
 mod harmonicity;
 mod motions;
+mod mounds;
 mod reciprocity;
 mod rims;
 mod rivers;
+mod solvers;
 mod superposition;
 mod texts;
 

@@ -18,6 +18,7 @@ use crate::site::{Extent, Point};
 use canvas::{Canvas, Label};
 pub use canvas::{INK, PAPER, escaped};
 pub use symbols::WATER;
+pub(super) use symbols::{band_colour, band_share, mixed};
 pub use ticks::{multiples, round_step};
 
 /// Width of the map itself, pixels.
@@ -128,7 +129,7 @@ fn content(
     }
     let (lines, levels_m) = contour_lines(planned, theme)?;
     canvas.group("contours");
-    symbols::contours(canvas, &lines, levels_m);
+    symbols::contours(canvas, lines, levels_m);
     canvas.end_group();
     canvas.group("neighbours");
     symbols::neighbour_areas(canvas, planned);
@@ -144,7 +145,7 @@ fn content(
     labels::names(canvas, planned, &mut taken);
     canvas.end_group();
     canvas.group("contours");
-    labels::contours(canvas, planned, &lines, &mut taken);
+    labels::contours(canvas, planned, lines, &mut taken);
     canvas.end_group();
     canvas.group("neighbours");
     symbols::neighbours(canvas, planned);
@@ -159,7 +160,7 @@ fn content(
 fn contour_lines<'p>(
     planned: &'p Planned<'_>,
     theme: Theme,
-) -> Result<(Vec<ContourLine>, &'p [f64]), LayerError> {
+) -> Result<(&'p [ContourLine], &'p [f64]), LayerError> {
     Ok(match theme {
         Theme::Drawdown => (
             contours::all_drawdown_lines(planned)?,

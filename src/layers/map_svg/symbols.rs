@@ -22,8 +22,13 @@ const TOOTH: f64 = 13.0;
 
 /// The colour of a band by its place from the lightest (0) to the darkest (1).
 pub fn band_colour(share: f64) -> String {
+    mixed(LIGHT, DARK, share)
+}
+
+/// A colour between two, each red, green and blue from 0 to 255.
+pub fn mixed(light: [f64; 3], dark: [f64; 3], share: f64) -> String {
     let mix = |light: f64, dark: f64| (light + (dark - light) * share).round() as u8;
-    let [[lr, lg, lb], [dr, dg, db]] = [LIGHT, DARK];
+    let [[lr, lg, lb], [dr, dg, db]] = [light, dark];
     format!("#{:02x}{:02x}{:02x}", mix(lr, dr), mix(lg, dg), mix(lb, db))
 }
 

@@ -42,6 +42,15 @@ fn runs_left(c: char) -> bool {
     matches!(c, '\u{590}'..='\u{8ff}' | '\u{fb1d}'..='\u{fdff}' | '\u{fe70}'..='\u{feff}' | '\u{10800}'..='\u{10fff}' | '\u{1e800}'..='\u{1efff}')
 }
 
+/// "Ostra", "Ostra and Marl Drain", "Ostra, Marl Drain and Mill leat".
+pub fn listed(names: &[String]) -> String {
+    match names {
+        [] => String::new(),
+        [only] => only.clone(),
+        [firsts @ .., last] => format!("{} and {last}", firsts.join(", ")),
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;

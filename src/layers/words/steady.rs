@@ -1,6 +1,6 @@
 //! Why a steady state exists, in words.
 
-use super::{LONGEST_NAME, short};
+use super::{LONGEST_NAME, listed, short};
 use crate::field::WellField;
 use crate::findings::Solution;
 use crate::outline::Kind;
@@ -9,7 +9,7 @@ use crate::outline::Kind;
 pub fn steady_state(solution: &Solution, field: &WellField) -> String {
     let site = solution.site();
     let outline = field.outline();
-    let kinds = outline.shape.side_kinds();
+    let kinds = outline.side_kinds();
     let mut rivers: Vec<String> = Vec::new();
     for (kind, pieces) in kinds.iter().zip(&outline.sides) {
         for piece in pieces.iter().filter(|_| *kind == Kind::FixedHead) {
@@ -24,7 +24,7 @@ pub fn steady_state(solution: &Solution, field: &WellField) -> String {
     match (rivers.is_empty(), site.aquifer.influence_radius) {
         (false, _) => {
             let hold = if rivers.len() > 1 { "hold" } else { "holds" };
-            format!("exists: {} {hold} the head", rivers.join(" and "))
+            format!("exists: {} {hold} the head", listed(&rivers))
         }
         (true, Some(_)) => {
             "assumed: no edge holds the head, so each cone ends at the influence radius".into()

@@ -2,16 +2,18 @@
 """Opens the layers of one run as a GIS does and compares them with the plan.
 
     mirrorwell run my-plan.toml --out layers
-    .venv/bin/python tests/references/gis/check_layers.py my-plan.toml layers
+    .venv/bin/python tests/references/gis/check_layers.py my-plan.toml layers --program mirrorwell
 
-Independent of the program: GDAL (pyogrio) reads the files, GEOS (shapely)
-judges the geometries, PROJ (pyproj) takes wells and edges back to the plan's
-coordinates. What must hold is RFC 7946 and the names and units of the layers;
-positions have 8 decimals, 0.6 mm, and the program's projection may be off by
-1 cm, as the list of checked systems allows.
+Independent of the program: GDAL (pyogrio, rasterio) reads the files, GEOS
+(shapely) judges the geometries, PROJ (pyproj) takes wells and edges back to the
+plan's coordinates. What must hold is RFC 7946 and the names and units of the
+layers; positions have 8 decimals, 0.6 mm, and the program's projection may be
+off by 1 cm, as the list of checked systems allows. The GeoPackage, the rasters
+and the styles are judged by the modules beside this one.
 """
 
 import argparse
+import csv
 import json
 import os
 import pathlib
@@ -24,6 +26,10 @@ import numpy
 import pyogrio
 import pyproj
 import shapely
+
+import packages
+import rasters
+import styles
 
 NEAR_M = 0.01
 BBOX_DEG = 1e-8
@@ -45,8 +51,10 @@ LAYERS = {
     "boundaries": ({"LineString", "MultiLineString"}, {"name": TEXT, "kind": TEXT, "inflow_{q}": NUMBER}),
     "river_reaches": ({"LineString"}, {"name": TEXT, "inflow_{q}": NUMBER, "inflow_{q}_per_{m}?": NUMBER}),
     "image_wells": ({"Point"}, {"of": TEXT, "sign": WHOLE, "order": WHOLE}),
+    "flow": ({"Point"}, {"azimuth": NUMBER, "flux_{m}_per_d?": NUMBER}),
 }
-NEEDED = set(LAYERS) - {"river_reaches", "image_wells"}
+# Layers that no plan leaves empty.
+NEEDED = {"head_contours", "drawdown_contours", "drawdown_bands", "wells", "flow"}
 
 
 class Faults(list):
@@ -148,7 +156,7 @@ def grid_of(plan):
             f"+proj=tmerc +lat_0={latitude} +lon_0={longitude} +k=1 +datum=WGS84 +units=m +type=crs"
         )
     grid = pyproj.Transformer.from_crs(4326, crs, always_xy=True, allow_ballpark=False, only_best=False)
-    return grid, crs.axis_info[0].unit_conversion_factor
+    return crs, grid, crs.axis_info[0].unit_conversion_factor
 
 
 def check_wells(plan, document, grid, metres, faults):
@@ -183,35 +191,74 @@ def check_boundaries(plan, document, grid, metres, faults):
                 faults.expect(off <= NEAR_M, f"boundaries: {edge['name']} is {off:.3f} m off its line")
 
 
+def check_names(plan, folder, documents, faults):
+    """Names come back from tables and layers as they were."""
+    for key in ("well", "neighbour"):
+        names = [entry["name"] for entry in plan.get(key, [])]
+        layer = [feature["properties"]["name"] for feature in documents[f"{key}s"]["features"]]
+        faults.expect(set(names) <= set(layer), f"{key}s: names are lost: {set(names) - set(layer)}")
+    with open(folder / "interference.csv", encoding="utf-8", newline="") as table:
+        heading, *rows = csv.reader(table)
+    cells = heading[1:] + [row[0] for row in rows]
+    for cell in cells:
+        faults.expect(not cell.startswith(("=", "+", "-", "@", "\t", "\r")), f"interference: {cell} may be run")
+    wanted = [feature["properties"]["name"] for name in ("wells", "wells", "neighbours") for feature in documents[name]["features"]]
+    faults.expect([cell.removeprefix("'") for cell in cells] == wanted, f"interference: names {cells}")
+
+
+def check_flow(document, faults):
+    for feature in document["features"]:
+        azimuth = feature["properties"].get("azimuth", -1.0)
+        faults.expect(0 <= azimuth < 360, f"flow: an azimuth of {azimuth}")
+
+
+def read_geojson(folder, units, faults):
+    """The GeoJSON layers by name, each checked."""
+    documents = {}
+    for path in sorted(folder.glob("*.geojson")):
+        name = path.stem
+        if name not in LAYERS:
+            faults.append(f"{name}: a layer that no contract names")
+            continue
+        documents[name] = json.loads(path.read_text(encoding="utf-8"))
+        check_rfc_7946(name, documents[name], faults)
+        check_properties(name, documents[name], units, faults)
+        check_as_gis(name, path, documents[name], faults)
+    for name in set(LAYERS) - set(documents):
+        faults.append(f"{name}: missing")
+    for name in NEEDED & set(documents):
+        faults.expect(documents[name]["features"], f"{name}: empty")
+    return documents
+
+
 def main():
     parser = argparse.ArgumentParser(description=__doc__.splitlines()[0])
     parser.add_argument("plan", type=pathlib.Path)
     parser.add_argument("folder", type=pathlib.Path)
+    parser.add_argument("--program", type=pathlib.Path, required=True)
     arguments = parser.parse_args()
     plan = tomllib.loads(arguments.plan.read_text(encoding="utf-8"))
     units = {"m": "ft", "q": "gpm"} if plan.get("units") == "us" else {"m": "m", "q": "m3_per_d"}
-    grid, metres = grid_of(plan)
-    faults, seen = Faults(), {}
-    for path in sorted(arguments.folder.glob("*.geojson")):
-        name = path.stem
-        document = json.loads(path.read_text(encoding="utf-8"))
-        seen[name] = document
-        if name not in LAYERS:
-            faults.append(f"{name}: a layer that no contract names")
-            continue
-        check_rfc_7946(name, document, faults)
-        check_properties(name, document, units, faults)
-        check_as_gis(name, path, document, faults)
-    for name in NEEDED - set(seen):
-        faults.append(f"{name}: missing")
-    if "wells" in seen:
-        check_wells(plan, seen["wells"], grid, metres, faults)
-    if "boundaries" in seen:
-        check_boundaries(plan, seen["boundaries"], grid, metres, faults)
+    crs, grid, metres = grid_of(plan)
+    faults, folder = Faults(), arguments.folder
+    documents = read_geojson(folder, units, faults)
+    if not faults:
+        wanted = {name: {key.format(**units): kind for key, kind in LAYERS[name][1].items()} for name in documents}
+        placed = {well["name"]: well["at"] for well in plan.get("well", []) if "at" in well}
+        check_wells(plan, documents["wells"], grid, metres, faults)
+        check_boundaries(plan, documents["boundaries"], grid, metres, faults)
+        check_names(plan, folder, documents, faults)
+        check_flow(documents["flow"], faults)
+        packages.check(folder / "results.gpkg", documents, wanted, crs, placed, NEAR_M / metres, faults)
+        rasters.check(folder, arguments.plan, plan, arguments.program, crs, units["m"], faults)
+        for name in [*documents, "head", "drawdown"]:
+            properties = {key.rstrip("?") for key in wanted.get(name, {})}
+            features = documents.get(name, {"features": []})["features"]
+            styles.check(folder / f"{name}.sld", properties, features, faults)
     if faults:
         sys.exit("\n".join(dict.fromkeys(faults)))
-    count = sum(len(document["features"]) for document in seen.values())
-    print(f"{arguments.folder}: {len(seen)} layers, {count} features as a GIS wants them")
+    count = sum(len(document["features"]) for document in documents.values())
+    print(f"{folder}: {len(documents)} layers, {count} features, a GeoPackage and two rasters as a GIS wants them")
 
 
 if __name__ == "__main__":

@@ -1,0 +1,157 @@
+//! Outlines that are hard to solve: the answer is right within the stated bound,
+//! held against a second solution with a hundredth of the error, or the plan is
+//! refused with the place named.
+
+use std::fmt::Write as _;
+use std::path::Path;
+
+use mirrorwell::findings::Solution;
+use mirrorwell::plan::Plan;
+use mirrorwell::site::{Length, Point, Refusal};
+
+/// The error that is asked for, metres.
+const ASKED_M: f64 = 1e-4;
+
+type Line<'a> = &'a [(f64, f64)];
+
+/// A plan of rivers (with a stage) and barriers around wells of 800 m³/d.
+fn plan(rivers: &[(Line<'_>, f64)], barriers: &[Line<'_>], wells: Line<'_>) -> Plan {
+    let mut text = "title = \"Awkward\"\ncrs = { origin = [14.0, 52.0] }\nunits = \"metric\"\n\
+                    [aquifer]\ntransmissivity = 500.0\nroof = 10.0\n"
+        .to_owned();
+    for (number, (line, stage)) in rivers.iter().enumerate() {
+        write!(
+            text,
+            "[[river]]\nname = \"R{number}\"\nline = {}\nstage = {stage:.1}\n",
+            list(line)
+        )
+        .expect("text");
+    }
+    for (number, line) in barriers.iter().enumerate() {
+        write!(
+            text,
+            "[[barrier]]\nname = \"B{number}\"\nline = {}\n",
+            list(line)
+        )
+        .expect("text");
+    }
+    for (number, (x, y)) in wells.iter().enumerate() {
+        write!(
+            text,
+            "[[well]]\nname = \"W{number}\"\nat = [{x:?}, {y:?}]\npumping = 800.0\nradius = 0.0004\n"
+        )
+        .expect("text");
+    }
+    Plan::from_text("plan.toml", &text, Path::new(".")).expect("a plan")
+}
+
+fn list(line: Line<'_>) -> String {
+    let points: Vec<String> = line
+        .iter()
+        .map(|(x, y)| format!("[{x:?}, {y:?}]"))
+        .collect();
+    format!("[{}]", points.join(", "))
+}
+
+fn solved(plan: &Plan, asked_m: f64) -> Result<Solution, Vec<Refusal>> {
+    let mut site = plan.site.clone();
+    site.head_tolerance = Length::from_si(asked_m);
+    Solution::of(site)
+}
+
+/// The bound holds at places of the plan, and is as small as asked for.
+fn assert_right(plan: &Plan, places: Line<'_>) {
+    let coarse = solved(plan, ASKED_M).unwrap_or_else(|refusals| panic!("{refusals:?}"));
+    let fine = solved(plan, 0.01 * ASKED_M).unwrap_or_else(|refusals| panic!("{refusals:?}"));
+    let bound_m = coarse.fields()[0].error_bound_m();
+    assert!(bound_m <= ASKED_M, "bound {bound_m}");
+    let points: Vec<Point> = places.iter().map(|(x, y)| plan.to_site(*x, *y)).collect();
+    let heads = coarse
+        .heads_m(&points)
+        .into_iter()
+        .zip(fine.heads_m(&points));
+    for ((coarse_m, fine_m), place) in heads.zip(places) {
+        let error_m = (coarse_m - fine_m).abs();
+        assert!(
+            error_m <= 1.01 * bound_m,
+            "error {error_m} of {bound_m} at {place:?}"
+        );
+    }
+}
+
+#[test]
+fn a_well_a_millimetre_from_a_bent_river_is_solved_within_the_bound() {
+    let river = [(-900.0, 40.0), (0.0, 0.0), (900.0, 130.0)];
+    let plan = plan(&[(&river, 50.0)], &[], &[(450.0, 65.001), (100.0, 300.0)]);
+    assert_right(
+        &plan,
+        &[
+            (450.0, 65.5),
+            (449.9, 65.0),
+            (100.0, 200.0),
+            (-300.0, 900.0),
+        ],
+    );
+}
+
+#[test]
+fn vertices_a_few_millimetres_apart_are_solved_within_the_bound() {
+    let river = [(-900.0, 40.0), (0.0, 0.0), (0.003, 0.002), (900.0, 130.0)];
+    let plan = plan(&[(&river, 50.0)], &[], &[(50.0, 120.0)]);
+    assert_right(&plan, &[(0.001, 0.05), (40.0, 80.0), (-500.0, 700.0)]);
+}
+
+#[test]
+fn a_corner_of_a_tenth_of_a_degree_is_solved_within_the_bound() {
+    let river = [(0.0, 0.0), (1000.0, 0.0)];
+    let barriers: [Line<'_>; 2] = [
+        &[(0.0, 0.0), (1000.0, 1.7453)],
+        &[(1000.0, 0.0), (1000.0, 1.7453)],
+    ];
+    let plan = plan(&[(&river, 50.0)], &barriers, &[(900.0, 0.8)]);
+    assert_right(&plan, &[(899.0, 0.5), (990.0, 1.0), (500.0, 0.4)]);
+}
+
+#[test]
+fn a_river_that_doubles_back_within_a_metre_is_solved_within_the_bound() {
+    let river = [
+        (-900.0, 0.0),
+        (0.0, 0.0),
+        (0.0, 300.0),
+        (0.8, 300.0),
+        (0.8, 0.0),
+        (900.0, 0.0),
+    ];
+    let plan = plan(&[(&river, 50.0)], &[], &[(60.0, 150.0), (-80.0, 200.0)]);
+    assert_right(
+        &plan,
+        &[(0.4, 300.5), (0.9, 100.0), (-1.0, 290.0), (200.0, 500.0)],
+    );
+}
+
+#[test]
+fn an_island_that_all_but_touches_a_river_is_solved_within_the_bound() {
+    let river = [(-900.0, 40.0), (0.0, 0.0), (900.0, 130.0)];
+    let island = [
+        (-100.0, 30.0),
+        (100.0, 14.455),
+        (0.0, 160.0),
+        (-100.0, 30.0),
+    ];
+    let plan = plan(&[(&river, 50.0)], &[&island], &[(50.0, 320.0)]);
+    assert_right(
+        &plan,
+        &[(100.0, 14.45), (0.0, 10.0), (0.0, 161.0), (400.0, 300.0)],
+    );
+}
+
+#[test]
+fn ten_thousand_vertices_are_refused_with_their_number() {
+    let river: Vec<(f64, f64)> = (0..10_000)
+        .map(|index| (f64::from(index), 3.0 * f64::from(index % 2)))
+        .collect();
+    let plan = plan(&[(&river, 50.0)], &[], &[(5000.0, 300.0)]);
+    let refusals = solved(&plan, ASKED_M).err().expect("a refusal");
+    let text = refusals[0].to_string();
+    assert!(text.contains("straight pieces"), "{text}");
+}
