@@ -3,7 +3,7 @@
 use std::path::Path;
 
 use mirrorwell::findings::{Findings, MapWindow, Solution, Survey};
-use mirrorwell::layers::{Levels, Planned, Units};
+use mirrorwell::layers::{Drawn, Levels, Planned, Units};
 use mirrorwell::plan::Plan;
 use mirrorwell::report;
 use scraper::{ElementRef, Html, Selector};
@@ -23,6 +23,7 @@ pub fn with<T>(plan: &str, act: impl FnOnce(&Planned<'_>) -> T) -> T {
         survey: &survey,
         levels: Levels::of(&survey, Units(plan.units), plan.site.map.interval).unwrap(),
         findings: &findings,
+        drawn: Drawn::default(),
     })
 }
 
