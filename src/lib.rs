@@ -12,4 +12,5 @@ pub mod layers;
 pub mod outline;
 pub mod plan;
 pub mod potential;
+pub mod report;
 pub mod site;

@@ -8,10 +8,9 @@ use super::console::{Console, wrapped};
 use super::failure::Failure;
 use super::source::{PlanArgument, solve};
 use crate::field::WellField;
-use crate::findings::{Oddity, Solution, WellsAndNeighbours, oddities};
-use crate::layers::words::{Words, one_line};
+use crate::findings::{Solution, WellsAndNeighbours, oddities};
+use crate::layers::words::{Words, one_line, steady_state};
 use crate::layers::{CAUTION, Properties, Units};
-use crate::outline::Kind;
 use crate::plan::{Plan, PlanFaults};
 use crate::site::Site;
 
@@ -78,7 +77,7 @@ impl<'a> Report<'a> {
         let words = Words::new(solution.site(), Units(plan.units));
         let oddities = oddities(solution, &found.wells, &found.neighbours)
             .iter()
-            .map(|oddity| sentence(&words, oddity))
+            .map(|oddity| words.oddity(oddity))
             .collect();
         Self {
             plan,
@@ -176,100 +175,5 @@ fn list(text: &mut String, heading: &str, items: &[String]) {
         for item in items {
             text.push_str(&wrapped(item, "- ", "  "));
         }
-    }
-}
-
-/// Why the steady state of an aquifer exists.
-fn steady_state(solution: &Solution, field: &WellField) -> String {
-    let site = solution.site();
-    let outline = field.outline();
-    let kinds = outline.side_kinds();
-    let mut rivers: Vec<String> = Vec::new();
-    for (kind, pieces) in kinds.iter().zip(&outline.sides) {
-        for piece in pieces.iter().filter(|_| *kind == Kind::FixedHead) {
-            if let Some(edge) = site.edges.get(piece.edge) {
-                let name = one_line(&edge.name);
-                if !rivers.contains(&name) {
-                    rivers.push(name);
-                }
-            }
-        }
-    }
-    match (rivers.is_empty(), site.aquifer.influence_radius) {
-        (false, _) => {
-            let hold = if rivers.len() > 1 { "hold" } else { "holds" };
-            format!(
-                "exists: {} {hold} the head",
-                super::summary::listed(&rivers)
-            )
-        }
-        (true, Some(_)) => {
-            "assumed: no edge holds the head, so each cone ends at the influence radius".into()
-        }
-        (true, None) => "exists: pumping and injection balance".into(),
-    }
-}
-
-/// What looks wrong, as a sentence.
-fn sentence(words: &Words<'_>, oddity: &Oddity) -> String {
-    match *oddity {
-        Oddity::NoRoof => {
-            "no `roof` is given, so it is not checked whether the aquifer stays confined".into()
-        }
-        Oddity::UnusualTransmissivity(m2_d) => format!(
-            "a transmissivity of {m2_d:.3} m²/d is unusual for a well field (1 to 100,000 m²/d): are the units right?"
-        ),
-        Oddity::UnconfinedBeforePumping {
-            well,
-            ambient_m,
-            roof_m,
-        } => format!(
-            "{}: the head before pumping, {}, is below the aquifer's roof at {}: the aquifer is not confined there",
-            words.well(well),
-            words.length(ambient_m),
-            words.length(roof_m)
-        ),
-        Oddity::IdleWell(well) => {
-            format!("{} neither pumps nor injects", words.well(well))
-        }
-        Oddity::WideWell(well, radius_m) => format!(
-            "{}: a borehole radius of {} is unusual: is it given in the right unit?",
-            words.well(well),
-            words.length(radius_m)
-        ),
-        Oddity::WellsAtOnePlace(a, b, distance_m) => format!(
-            "{} and {} stand only {} apart: are they one well?",
-            words.well(a),
-            words.well(b),
-            words.length(distance_m)
-        ),
-        Oddity::LowestLevelAboveHead {
-            well,
-            lowest_m,
-            ambient_m,
-        } => format!(
-            "{}: the lowest level, {}, is above the head before pumping, {}",
-            words.well(well),
-            words.length(lowest_m),
-            words.length(ambient_m)
-        ),
-        Oddity::BelowBase {
-            well,
-            level_m,
-            base_m,
-        } => format!(
-            "{}: the level in the well would be {}, below the aquifer's base at {}: no such rate is possible",
-            words.well(well),
-            words.length(level_m),
-            words.length(base_m)
-        ),
-        Oddity::NeighbourOutside(neighbour) => format!(
-            "{} lies outside every aquifer that holds a well: nothing can be said of it",
-            words.neighbour(neighbour)
-        ),
-        Oddity::NeighbourWithoutLimit(neighbour) => format!(
-            "{} has no `allowed_drawdown` to be judged by",
-            words.neighbour(neighbour)
-        ),
     }
 }

@@ -6,7 +6,7 @@ use std::path::Path;
 use comfy_table::{CellAlignment, Table};
 
 use super::console::wrapped;
-use crate::layers::words::{Words, one_line, percent};
+use crate::layers::words::{Words, listed, one_line, percent};
 use crate::layers::{CAUTION, Output, Planned};
 
 /// Rows of a table that are printed; the layers hold all.
@@ -145,15 +145,6 @@ fn exchange(planned: &Planned<'_>) -> String {
         let _ = write!(text, "; not determined for {}", listed(&open));
     }
     wrapped(&text, "", "  ")
-}
-
-/// "Ostra", "Ostra and Marl Drain", "Ostra, Marl Drain and Mill leat".
-pub fn listed(names: &[String]) -> String {
-    match names {
-        [] => String::new(),
-        [only] => only.clone(),
-        [firsts @ .., last] => format!("{} and {last}", firsts.join(", ")),
-    }
 }
 
 /// A table with a plain heading and numbers to the right.

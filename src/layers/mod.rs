@@ -1,7 +1,7 @@
 //! Writes what was found as GIS layers, tables and one JSON document, all
 //! listed in [`OUTPUTS`].
 
-mod boundaries;
+pub(crate) mod boundaries;
 mod caution;
 mod contours;
 mod findings_json;
@@ -29,6 +29,9 @@ pub use caution::CAUTION;
 pub use contours::Levels;
 pub use interference_csv::safe_cell;
 pub use map_svg::map_svg;
+pub(crate) use map_svg::{
+    INK, MapPicture, PAPER, Theme, WATER, escaped, map_picture, multiples, round_step,
+};
 pub use output::{OUTPUTS, Output, UnknownOutput, make, outputs_named};
 pub use property::{Property, Quantity};
 pub use units::{Properties, Units, number};
@@ -117,6 +120,9 @@ pub enum LayerError {
     /// A table cannot be written.
     #[error("the table cannot be written: {0}")]
     Table(String),
+    /// The report cannot be set.
+    #[error("the report cannot be set: {0}")]
+    Page(String),
     /// A document cannot be written as JSON.
     #[error("the document cannot be written: {0}")]
     Json(#[from] serde_json::Error),

@@ -9,6 +9,7 @@ use super::{
     geopackage, image_wells, interference_csv, neighbours, raster, river_reaches, wells,
 };
 use crate::plan::nearest;
+use crate::report;
 
 /// Something that a run writes.
 pub struct Output {
@@ -237,6 +238,14 @@ pub const OUTPUTS: &[Output] = &[
         about: "All that was found as one document, with flags, method, error bound and the plan's SHA-256",
         properties: &[],
         content: Content::File(findings_json::file),
+        style: None,
+    },
+    Output {
+        name: "report",
+        files: &["report.html"],
+        about: "All that was found as one page to read, print and sign, with maps, a section, cautions and the plan as it was read",
+        properties: &[],
+        content: Content::File(report::page),
         style: None,
     },
 ];

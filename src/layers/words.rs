@@ -4,11 +4,21 @@
 //! person reads clears it too.
 
 mod accuracy;
+mod names;
+mod oddity;
+mod rules;
+mod steady;
+
+pub use names::{listed, one_line, short};
+pub use steady::steady_state;
 
 use super::Planned;
 use super::units::Units;
 use crate::findings::{Cause, Flag, Measure, Rates, Remedy, Who};
 use crate::site::Site;
+
+/// Letters of a name in a sentence, at most.
+const LONGEST_NAME: usize = 80;
 
 /// Says things of one plan.
 pub struct Words<'a> {
@@ -83,13 +93,21 @@ impl<'a> Words<'a> {
 
     /// The name of a well.
     pub fn well(&self, well: usize) -> String {
-        one_line(self.site.wells.get(well).map_or("", |well| &well.name))
+        let name = self.site.wells.get(well).map_or("", |well| &well.name);
+        short(name, LONGEST_NAME)
     }
 
     /// The name of a neighbour.
     pub fn neighbour(&self, neighbour: usize) -> String {
         let neighbours = &self.site.neighbours;
-        one_line(neighbours.get(neighbour).map_or("", |n| &n.name))
+        let name = neighbours.get(neighbour).map_or("", |n| &n.name);
+        short(name, LONGEST_NAME)
+    }
+
+    /// The name of a river or barrier.
+    pub fn edge(&self, edge: usize) -> String {
+        let name = self.site.edges.get(edge).map_or("", |edge| &edge.name);
+        short(name, LONGEST_NAME)
     }
 
     /// Whom a flag is about.
@@ -105,26 +123,38 @@ impl<'a> Words<'a> {
     /// A flag as one or two sentences: how much, against what, caused by
     /// whom, and what would clear it.
     pub fn flag(&self, flag: &Flag) -> String {
+        let reason = self.reason(flag);
+        match self.clearing(flag) {
+            Some(clearing) => format!("{reason} {clearing}"),
+            None => reason,
+        }
+    }
+
+    /// Why a flag was raised: how much, against what, caused by whom.
+    pub fn reason(&self, flag: &Flag) -> String {
         let mut text = self.measure(&flag.measure);
         // With one well alone there is nothing to say of causes.
         if let Some(cause) = flag.cause.filter(|_| self.site.wells.len() > 1) {
             text.push_str(&self.cause(flag, cause));
         }
         text.push('.');
-        if let Some(remedy) = &flag.remedy {
-            text.push(' ');
-            text.push_str(&self.remedy(flag, remedy));
-        }
-        if let Measure::Accuracy {
-            bound_m,
-            hardest_edge,
-            ..
-        } = flag.measure
-        {
-            text.push(' ');
-            text.push_str(&self.exactness_remedy(bound_m, hardest_edge));
-        }
         text
+    }
+
+    /// What would clear a flag, where something is to be cleared.
+    pub fn clearing(&self, flag: &Flag) -> Option<String> {
+        match (&flag.remedy, flag.measure) {
+            (Some(remedy), _) => Some(self.remedy(flag, remedy)),
+            (
+                None,
+                Measure::Accuracy {
+                    bound_m,
+                    hardest_edge,
+                    ..
+                },
+            ) => Some(self.exactness_remedy(bound_m, hardest_edge)),
+            (None, _) => None,
+        }
     }
 
     /// How much, against what.
@@ -297,7 +327,7 @@ pub fn fixed(value: f64, decimals: usize) -> String {
 }
 
 /// Thousands set apart: "12,400".
-fn grouped(number: &str) -> String {
+pub fn grouped(number: &str) -> String {
     let (sign, digits) = match number.strip_prefix('−') {
         Some(digits) => ("−", digits),
         None => ("", number),
@@ -323,13 +353,6 @@ fn rate_decimals(rate: f64) -> usize {
         size if size >= 10.0 => 1,
         _ => 2,
     }
-}
-
-/// A text without line breaks and control characters, for a terminal.
-pub fn one_line(text: &str) -> String {
-    text.chars()
-        .map(|c| if c.is_control() { ' ' } else { c })
-        .collect()
 }
 
 #[cfg(test)]

@@ -54,6 +54,7 @@ pub(super) fn read(name: &str, bytes: Vec<u8>, store: LayerStore<'_>) -> Result<
         sources,
         faults: Vec::new(),
         notes: Vec::new(),
+        inputs: Vec::new(),
         units: UnitSystem::Metric,
         crs: None,
         layers,
@@ -72,6 +73,7 @@ fn read_document(
         sources,
         faults,
         notes,
+        inputs,
         layers,
         ..
     } = reading;
@@ -80,6 +82,7 @@ fn read_document(
         Some(plan) if faults.is_empty() => Ok(Plan {
             sha256: format!("{:x}", layers.hash.finalize()),
             notes,
+            inputs,
             sources,
             ..plan
         }),
@@ -131,6 +134,7 @@ fn read_sections(name: &str, document: &Value, reading: &mut Reading<'_>) -> Opt
         map: source_map,
         sha256: String::new(),
         notes: Vec::new(),
+        inputs: Vec::new(),
         sources: Sources::default(),
     })
 }

@@ -114,6 +114,9 @@ fn read_stage(
             measure: *measure,
         };
         let level = section.measured(&asked, item, reading);
+        if let Some(level) = level {
+            section.record(&asked, item, level, reading);
+        }
         levels.extend(level.map(Level::from_si));
     }
     let vertices = match shape? {

@@ -42,7 +42,7 @@ use crate::site::{Point, Refusal, Site, Subject};
 use crs::{Crs, CrsError};
 use fault::Fault;
 use files::LayerStore;
-use source::Sources;
+use source::{Source, Sources};
 use source_map::SourceMap;
 
 pub(crate) use fault::nearest;
@@ -51,6 +51,30 @@ pub use materials::{ConductivityRange, Material, ShareRange, materials};
 pub use schema::schema;
 pub use source::Location;
 pub use units::{Dimension, UnitSystem};
+
+/// A quantity that a plan gives.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Input {
+    /// Whose it is: "[aquifer]", "well `PW-1`".
+    pub of: String,
+    /// Its key.
+    pub key: &'static str,
+    /// As it was written, with its unit.
+    pub written: String,
+    /// Its value in metres, days and degrees.
+    pub si: f64,
+    /// What it measures.
+    pub dimension: Dimension,
+}
+
+impl Input {
+    /// Its value in metres and days, to nine digits, with its unit.
+    pub fn in_si(&self) -> String {
+        let value = quantities::rounded(self.si, 9);
+        let unit = UnitSystem::Metric.unit_name(self.dimension);
+        format!("{value} {unit}").trim_end().to_owned()
+    }
+}
 
 /// A plan that was read without a fault.
 #[derive(Clone, Debug)]
@@ -74,6 +98,9 @@ pub struct Plan {
     pub material: Option<&'static Material>,
     /// What the reader should know: values taken where the plan was silent.
     pub notes: Vec<String>,
+    /// The quantities it gives, in the order in which they were read; of
+    /// coordinates the file holds the only record.
+    pub inputs: Vec<Input>,
     sources: Sources,
     map: SourceMap,
 }
@@ -105,6 +132,11 @@ impl Plan {
     /// All the plan's faults, each at its place.
     pub fn from_texts(name: &str, text: &str, layers: &[(&str, &str)]) -> Result<Self, PlanFaults> {
         document::read(name, text.as_bytes().to_vec(), LayerStore::BuiltIn(layers))
+    }
+
+    /// The plan as it was written, without its layers.
+    pub fn text(&self) -> &str {
+        self.sources.first().map_or("", Source::text)
     }
 
     /// A place of the site in the plan's CRS and its unit.

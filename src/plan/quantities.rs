@@ -1,6 +1,7 @@
 //! Reads numbers: bare in the plan's units, or as a text with a unit of its
 //! own; each within the bounds of its key.
 
+use super::Input;
 use super::fault::{Fault, escaped, shown};
 use super::keys::{Form, Key, Measure};
 use super::reader::{Reading, Section};
@@ -28,7 +29,9 @@ impl Section<'_> {
                     subject,
                     measure,
                 };
-                self.measured(&asked, value, reading)
+                let si = self.measured(&asked, value, reading)?;
+                self.record(&asked, value, si, reading);
+                Some(si)
             }
             _ => None,
         }
@@ -54,6 +57,27 @@ impl Section<'_> {
             }
             None => Some(si),
         }
+    }
+
+    /// Keeps a quantity as it was written, for whoever checks the plan.
+    pub(super) fn record(
+        &self,
+        asked: &Asked<'_>,
+        value: &Value,
+        si: f64,
+        reading: &mut Reading<'_>,
+    ) {
+        let written = match (&value.node, unit_name(asked.measure, reading)) {
+            (Node::Text(text), _) => text.clone(),
+            (_, unit) => format!("{} {unit}", reading.written(value)),
+        };
+        reading.inputs.push(Input {
+            of: self.title.clone(),
+            key: asked.key.name,
+            written: written.trim_end().to_owned(),
+            si,
+            dimension: asked.measure.dimension,
+        });
     }
 
     fn in_si(&self, asked: &Asked<'_>, value: &Value, reading: &mut Reading<'_>) -> Option<f64> {

@@ -1,6 +1,7 @@
 //! Reads one table of the plan against its list of keys, and collects every
 //! fault instead of stopping at the first.
 
+use super::Input;
 use super::crs::Crs;
 use super::fault::{Fault, nearest, shown};
 use super::keys::{Key, Table};
@@ -20,6 +21,7 @@ pub(super) struct Reading<'l> {
     pub(super) sources: Sources,
     pub(super) faults: Vec<Fault>,
     pub(super) notes: Vec<String>,
+    pub(super) inputs: Vec<Input>,
     pub(super) units: UnitSystem,
     /// Absent where the plan's CRS is at fault; the rest is read all the same.
     pub(super) crs: Option<Crs>,

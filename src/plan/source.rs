@@ -99,6 +99,11 @@ impl Sources {
         self.0.len() - 1
     }
 
+    /// The plan itself.
+    pub fn first(&self) -> Option<&Source> {
+        self.0.first()
+    }
+
     /// The source that a place lies in.
     pub fn of(&self, place: Place) -> Option<&Source> {
         self.0.get(place.source as usize)

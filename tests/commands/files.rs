@@ -57,6 +57,7 @@ fn the_files_of_the_contract_are_written_and_no_others() {
             "interference.csv",
             "neighbours.geojson",
             "neighbours.sld",
+            "report.html",
             "results.gpkg",
             "river_reaches.geojson",
             "river_reaches.sld",

@@ -2,6 +2,8 @@
 
 use std::fmt::Write as _;
 
+use geo::{Coord, LineString, Simplify};
+
 use crate::site::{Extent, Point};
 
 /// Space around the map, pixels.
@@ -18,22 +20,43 @@ pub const PAPER: &str = "#fbfaf5";
 /// Text and fine lines.
 pub const INK: &str = "#24302f";
 
+/// Points closer than this to the line through their neighbours are left out
+/// of a path, pixels: less than a screen or a printer shows.
+const FINEST: f64 = 0.15;
+
 /// A drawing in the making.
 pub struct Canvas {
     extent: Extent,
     pixels_a_metre: f64,
+    ids: &'static str,
     body: String,
 }
 
+/// A text on the map.
+pub struct Label<'t> {
+    /// The place that it belongs to, pixels.
+    pub at: [f64; 2],
+    /// Where its baseline begins, seen from that place, pixels.
+    pub offset: [f64; 2],
+    /// Degrees that it is turned by, clockwise.
+    pub angle: f64,
+    /// What it says.
+    pub text: &'t str,
+    /// Attributes of the SVG text.
+    pub attributes: &'t str,
+}
+
 impl Canvas {
-    /// An empty sheet for an extent, its map so many pixels wide.
-    pub fn new(extent: Extent, width: f64) -> Self {
+    /// An empty sheet for an extent, its map so many pixels wide. Its patterns
+    /// have names that begin with `ids`, so that a page may hold several maps.
+    pub fn new(extent: Extent, width: f64, ids: &'static str) -> Self {
         let size = extent.max - extent.min;
         // A tall map is drawn narrower, so that it fits a page.
         let pixels_a_metre = (width / size.x).min(1.25 * width / size.y);
         Self {
             extent,
             pixels_a_metre,
+            ids,
             body: String::new(),
         }
     }
@@ -73,19 +96,30 @@ impl Canvas {
         self.pixel_path(points.iter().map(|&point| self.place(point)), closed)
     }
 
-    /// The `d` of a path through pixels; points closer than a tenth of a
-    /// pixel to the last are left out.
+    /// The `d` of a path through pixels, in steps of a tenth of a pixel; points
+    /// that no eye would miss are left out, and with them a path that has
+    /// shrunk to one place.
     pub fn pixel_path(&self, points: impl Iterator<Item = [f64; 2]>, closed: bool) -> String {
+        let line: LineString = points.map(|[x, y]| Coord { x, y }).collect();
         let mut path = String::new();
-        let mut last: Option<[f64; 2]> = None;
-        for [x, y] in points {
-            let here = [(x * 10.0).round() / 10.0, (y * 10.0).round() / 10.0];
-            if last == Some(here) {
-                continue;
-            }
-            let letter = if last.is_none() { "M" } else { "L" };
-            let _ = write!(path, "{letter}{} {}", here[0] + 0.0, here[1] + 0.0);
+        let mut last: Option<[i64; 2]> = None;
+        let mut steps = 0;
+        for Coord { x, y } in line.simplify(FINEST).into_inner() {
+            // Truncation is meant: pixels are few.
+            let here = [(x * 10.0).round() as i64, (y * 10.0).round() as i64];
+            let _ = match last {
+                None => write!(path, "M{} {}", tenths(here[0]), tenths(here[1])),
+                Some(last) if last == here => continue,
+                Some(last) => {
+                    let [dx, dy] = [here[0] - last[0], here[1] - last[1]];
+                    write!(path, "l{} {}", tenths(dx), tenths(dy))
+                }
+            };
+            steps += 1;
             last = Some(here);
+        }
+        if steps < 2 {
+            return String::new();
         }
         if closed {
             path.push('Z');
@@ -93,14 +127,67 @@ impl Canvas {
         path
     }
 
+    /// Opens a group that can be shown and hidden.
+    pub fn group(&mut self, layer: &str) {
+        self.add(&format!("<g data-layer=\"{layer}\">"));
+    }
+
+    /// Closes a group.
+    pub fn end_group(&mut self) {
+        self.add("</g>");
+    }
+
+    /// Adds a symbol drawn around zero; it keeps its size when the map grows.
+    pub fn symbol(&mut self, [x, y]: [f64; 2], svg: &str) {
+        self.add(&format!(
+            "<g transform=\"translate({x:.1} {y:.1})\"><g class=\"keep\">{svg}</g></g>"
+        ));
+    }
+
     /// Adds text with a halo that keeps it readable on the map.
-    pub fn text(&mut self, [x, y]: [f64; 2], text: &str, attributes: &str) {
-        let text = escaped(text);
+    pub fn text(&mut self, label: &Label<'_>) {
+        let Label {
+            at: [x, y],
+            offset: [dx, dy],
+            angle,
+            attributes,
+            ..
+        } = label;
+        let text = escaped(label.text);
+        let turned = if *angle == 0.0 {
+            String::new()
+        } else {
+            format!(" rotate({angle:.1})")
+        };
         // Two texts, since not every viewer can paint a stroke under a fill.
         self.add(&format!(
-            "<text x=\"{x:.1}\" y=\"{y:.1}\" class=\"halo\" {attributes}>{text}</text>\
-             <text x=\"{x:.1}\" y=\"{y:.1}\" {attributes}>{text}</text>"
+            "<g transform=\"translate({x:.1} {y:.1}){turned}\"><g class=\"keep\">\
+             <text x=\"{dx:.1}\" y=\"{dy:.1}\" class=\"halo\" {attributes}>{text}</text>\
+             <text x=\"{dx:.1}\" y=\"{dy:.1}\" {attributes}>{text}</text></g></g>"
         ));
+    }
+
+    /// What was drawn.
+    pub fn into_body(self) -> String {
+        self.body
+    }
+
+    /// The name of one of the map's patterns.
+    pub fn id(&self, name: &str) -> String {
+        format!("{}{name}", self.ids)
+    }
+
+    /// The patterns of rises and of areas over their limit, and the map's rim.
+    pub fn definitions(&self) -> String {
+        let [width, height] = self.size();
+        let [rise, over, map] = ["rise", "over", "map"].map(|name| self.id(name));
+        format!(
+            "<defs>\n\
+             <pattern id=\"{rise}\" width=\"6\" height=\"6\" patternUnits=\"userSpaceOnUse\"><circle cx=\"3\" cy=\"3\" r=\"1\" fill=\"{INK}\"/></pattern>\n\
+             <pattern id=\"{over}\" width=\"7\" height=\"7\" patternUnits=\"userSpaceOnUse\" patternTransform=\"rotate(45)\"><path d=\"M0 0V7\" stroke=\"{INK}\" stroke-width=\"1.6\"/></pattern>\n\
+             <clipPath id=\"{map}\"><rect width=\"{width:.1}\" height=\"{height:.1}\"/></clipPath>\n\
+             </defs>"
+        )
     }
 
     /// The finished picture.
@@ -109,6 +196,8 @@ impl Canvas {
         let page_width = width + LEGEND + 3.0 * MARGIN;
         let page_height = height + HEADING + FOOTING + MARGIN;
         let title = escaped(title);
+        let definitions = self.definitions();
+        let map = self.id("map");
         let (left, top, beside) = (MARGIN, HEADING + 6.0, width + 2.0 * MARGIN);
         let below = top + height + 18.0;
         let note = "Screening-level results; a licensed hydrogeologist must review them before anything is drilled or permitted.";
@@ -116,25 +205,25 @@ impl Canvas {
             "<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 {page_width:.0} {page_height:.0}\" \
              width=\"{page_width:.0}\" height=\"{page_height:.0}\" role=\"img\" aria-label=\"{title}\" \
              font-family=\"Georgia, 'Times New Roman', serif\" font-size=\"12\" fill=\"{INK}\">\n\
-             <title>{title}</title>\n{STYLE}\n\
+             <title>{title}</title>\n{STYLE}\n{definitions}\n\
              <rect width=\"100%\" height=\"100%\" fill=\"{PAPER}\"/>\n\
              <text x=\"{left}\" y=\"28\" font-size=\"19\">{title}</text>\n\
-             <g transform=\"translate({left} {top})\" clip-path=\"url(#map)\">\n{body}</g>\n\
+             <g transform=\"translate({left} {top})\" clip-path=\"url(#{map})\">\n{body}</g>\n\
              <g transform=\"translate({beside:.1} {top})\">\n{legend}</g>\n\
              <text x=\"{left}\" y=\"{below:.1}\" font-size=\"10.5\" font-style=\"italic\">{note}</text>\n\
-             <defs><clipPath id=\"map\"><rect width=\"{width:.1}\" height=\"{height:.1}\"/></clipPath></defs>\n\
              </svg>\n",
             body = self.body,
         )
     }
 }
 
-/// Halos and the patterns of rises and of areas over their limit.
-const STYLE: &str = "<style>.halo{stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>
-<defs>
-<pattern id=\"rise\" width=\"6\" height=\"6\" patternUnits=\"userSpaceOnUse\"><circle cx=\"3\" cy=\"3\" r=\"1\" fill=\"#24302f\"/></pattern>
-<pattern id=\"over\" width=\"7\" height=\"7\" patternUnits=\"userSpaceOnUse\" patternTransform=\"rotate(45)\"><path d=\"M0 0V7\" stroke=\"#24302f\" stroke-width=\"1.6\"/></pattern>
-</defs>";
+/// Halos.
+const STYLE: &str = "<style>.halo{stroke:#fbfaf5;stroke-width:3px;stroke-linejoin:round}</style>";
+
+/// A number of tenths: "12", "-0.3".
+fn tenths(count: i64) -> String {
+    format!("{}", count as f64 / 10.0)
+}
 
 /// A text as XML, on one line.
 pub fn escaped(text: &str) -> String {

@@ -1,13 +1,17 @@
 //! Names and contour labels, placed where they do not cover each other.
 
-use super::canvas::{Canvas, INK};
+use super::canvas::{Canvas, INK, Label};
+use super::symbols;
 use crate::contours::ContourLine;
-use crate::layers::words::one_line;
+use crate::layers::words::short;
 use crate::layers::{Planned, boundaries};
 use crate::site::{Place, Point};
 
-/// Width of a letter, pixels, roughly.
-const LETTER: f64 = 6.0;
+/// Width of a letter and of a digit, pixels, roughly.
+const LETTER: f64 = 7.2;
+const DIGIT: f64 = 7.0;
+/// Letters of a name on the map, at most.
+const LONGEST_NAME: usize = 28;
 /// A contour shorter than this has no label, pixels.
 const SHORTEST_LABELLED: f64 = 90.0;
 
@@ -16,6 +20,11 @@ const SHORTEST_LABELLED: f64 = 90.0;
 pub struct Taken(Vec<[f64; 4]>);
 
 impl Taken {
+    /// Takes a box whether or not something overlaps it.
+    pub fn reserve(&mut self, corners: [f64; 4]) {
+        self.0.push(corners);
+    }
+
     /// Takes a box if nothing overlaps it.
     fn take(&mut self, [left, top, right, bottom]: [f64; 4]) -> bool {
         let free = self
@@ -29,54 +38,88 @@ impl Taken {
     }
 }
 
+/// Keeps names off the symbols of wells and neighbours.
+pub fn reserve_symbols(canvas: &Canvas, planned: &Planned<'_>, taken: &mut Taken) {
+    let site = planned.solution.site();
+    let wells = site.wells.iter().enumerate();
+    let wells = wells.map(|(index, well)| (well.at, symbols::well_radius(planned, index)));
+    let neighbours = site.neighbours.iter().filter_map(|n| match n.place {
+        Place::At(at) => Some((at, 5.0)),
+        Place::Area(_) => None,
+    });
+    for (at, radius) in wells.chain(neighbours) {
+        let ([x, y], half) = (canvas.place(at), radius + 2.0);
+        taken.reserve([x - half, y - half, x + half, y + half]);
+    }
+}
+
 /// Names of wells, neighbours and edges. A name that finds no room is left
 /// out; the tables have it.
 pub fn names(canvas: &mut Canvas, planned: &Planned<'_>, taken: &mut Taken) {
     let site = planned.solution.site();
-    let wells = site.wells.iter().map(|well| (well.at, &well.name, true));
-    let neighbours = site
-        .neighbours
-        .iter()
-        .map(|neighbour| match &neighbour.place {
-            Place::At(at) => (*at, &neighbour.name, false),
-            Place::Area(ring) => (middle(ring), &neighbour.name, false),
-        });
-    let all: Vec<(Point, &String, bool)> = wells.chain(neighbours).collect();
-    for &(at, ..) in &all {
-        let [x, y] = canvas.place(at);
-        taken.0.push([x - 7.0, y - 7.0, x + 7.0, y + 7.0]);
+    for (index, well) in site.wells.iter().enumerate() {
+        let radius = symbols::well_radius(planned, index) + 4.0;
+        let attributes = "font-weight=\"bold\"";
+        name_beside(canvas, taken, well.at, radius, &well.name, attributes);
     }
-    for (at, name, is_well) in all {
-        let weight = if is_well { "font-weight=\"bold\"" } else { "" };
-        name_beside(canvas, taken, canvas.place(at), &one_line(name), weight);
+    for neighbour in &site.neighbours {
+        match &neighbour.place {
+            Place::At(at) => name_beside(canvas, taken, *at, 7.0, &neighbour.name, ""),
+            Place::Area(ring) => name_beside(canvas, taken, middle(ring), 0.0, &neighbour.name, ""),
+        }
     }
     for (index, edge) in site.edges.iter().enumerate() {
         if let Some(line) = boundaries::lines(planned, index).first() {
-            name_along(canvas, taken, line, &one_line(&edge.name));
+            name_along(canvas, taken, line, &on_map(&edge.name));
         }
     }
+}
+
+/// A name as the map has room for it.
+fn on_map(name: &str) -> String {
+    short(name, LONGEST_NAME)
 }
 
 /// A name right, left, above or below its symbol.
 fn name_beside(
     canvas: &mut Canvas,
     taken: &mut Taken,
-    [x, y]: [f64; 2],
+    at: Point,
+    radius: f64,
     name: &str,
     attributes: &str,
 ) {
+    let name = on_map(name);
+    let [x, y] = canvas.place(at);
     let width = name.chars().count() as f64 * LETTER;
-    let places = [
-        (x + 13.0, y + 4.0, "start"),
-        (x - 13.0 - width, y + 4.0, "start"),
-        (x - 0.5 * width, y - 13.0, "start"),
-        (x - 0.5 * width, y + 22.0, "start"),
+    let aside = radius + 3.0;
+    let offsets = [
+        [aside, 4.5],
+        [-aside - width, 4.5],
+        [-0.5 * width, -radius - 5.0],
+        [-0.5 * width, radius + 13.0],
+        [aside, -radius],
+        [aside, radius + 9.0],
     ];
-    for (left, base, anchor) in places {
-        let inside = canvas.shows([left, base - 10.0]) && canvas.shows([left + width, base + 3.0]);
-        if inside && taken.take([left, base - 10.0, left + width, base + 3.0]) {
+    for [dx, dy] in offsets {
+        let (left, base) = (x + dx, y + dy);
+        let corners = [left, base - 11.0, left + width, base + 4.0];
+        let inside = canvas.shows([left, base - 11.0]) && canvas.shows([left + width, base + 4.0]);
+        if inside && taken.take(corners) {
+            // A name left of its place ends there, however wide it turns out.
+            let (dx, anchor) = match dx {
+                dx if dx >= 0.0 => (dx, "start"),
+                dx if dx > -width => (0.0, "middle"),
+                _ => (-aside, "end"),
+            };
             let attributes = format!("text-anchor=\"{anchor}\" {attributes}");
-            canvas.text([left, base], name, &attributes);
+            canvas.text(&Label {
+                at: [x, y],
+                offset: [dx, dy],
+                angle: 0.0,
+                text: &name,
+                attributes: &attributes,
+            });
             return;
         }
     }
@@ -98,16 +141,19 @@ fn name_along(canvas: &mut Canvas, taken: &mut Taken, line: &[Point], name: &str
             && canvas.shows([x + w, y + h])
             && taken.take([x - w, y - h, x + w, y + h])
         {
-            let attributes = format!(
-                "text-anchor=\"middle\" font-style=\"italic\" font-size=\"13\" transform=\"rotate({angle:.1} {x:.1} {y:.1})\""
-            );
-            canvas.text([x, y + 4.0], name, &attributes);
+            canvas.text(&Label {
+                at: [x, y],
+                offset: [0.0, 4.0],
+                angle,
+                text: name,
+                attributes: "text-anchor=\"middle\" font-style=\"italic\" font-size=\"14\"",
+            });
             return;
         }
     }
 }
 
-/// Labels on head contours.
+/// Labels on contours, along their lines.
 pub fn contours(
     canvas: &mut Canvas,
     planned: &Planned<'_>,
@@ -121,18 +167,26 @@ pub fn contours(
         }
         let level = planned.units().length(line.level);
         let text = format!("{}", (level * 1e6).round() / 1e6);
-        let half = 0.5 * text.chars().count() as f64 * 5.5 + 2.0;
+        let half = 0.5 * text.chars().count() as f64 * DIGIT + 2.0;
         for share in [0.5, 0.35, 0.65, 0.2, 0.8, 0.1, 0.9] {
             let Some(([x, y], angle)) = at_share(&pixels, share) else {
                 break;
             };
-            let box_around = [x - half - 3.0, y - half, x + half + 3.0, y + half];
-            let inside = canvas.shows([x - half, y - half]) && canvas.shows([x + half, y + half]);
-            if inside && taken.take(box_around) {
-                let attributes = format!(
-                    "text-anchor=\"middle\" font-size=\"10\" fill=\"{INK}\" transform=\"rotate({angle:.1} {x:.1} {y:.1})\""
-                );
-                canvas.text([x, y + 3.4], &text, &attributes);
+            let (sin, cos) = angle.to_radians().sin_cos();
+            let (w, h) = (
+                half * cos.abs() + 7.0 * sin.abs(),
+                half * sin.abs() + 7.0 * cos.abs(),
+            );
+            let inside = canvas.shows([x - w, y - h]) && canvas.shows([x + w, y + h]);
+            if inside && taken.take([x - w, y - h, x + w, y + h]) {
+                let attributes = format!("text-anchor=\"middle\" font-size=\"12\" fill=\"{INK}\"");
+                canvas.text(&Label {
+                    at: [x, y],
+                    offset: [0.0, 4.0],
+                    angle,
+                    text: &text,
+                    attributes: &attributes,
+                });
                 break;
             }
         }

@@ -12,9 +12,11 @@ use crate::site::{EdgeKind, Place, Point, Vector};
 const LIGHT: [f64; 3] = [238.0, 243.0, 238.0];
 const DARK: [f64; 3] = [70.0, 112.0, 120.0];
 /// Rivers.
-const WATER: &str = "#1f5673";
+pub const WATER: &str = "#1f5673";
 /// Barriers.
-const ROCK: &str = "#5b4636";
+pub const ROCK: &str = "#5b4636";
+/// Radius of the smallest symbol of a well, pixels.
+const SMALLEST_RADIUS: f64 = 3.5;
 /// Distance of the teeth of a barrier, pixels.
 const TOOTH: f64 = 13.0;
 
@@ -54,25 +56,39 @@ pub fn bands(canvas: &mut Canvas, planned: &Planned<'_>) -> Result<(), LayerErro
             .iter()
             .flat_map(|polygon| std::iter::once(polygon.exterior()).chain(polygon.interiors()));
         let path: String = rings.map(|ring| canvas.path(&points(ring), true)).collect();
+        if path.is_empty() {
+            continue;
+        }
         let fill = band_colour(band_share(planned, band.from.max(0.0)));
         canvas.add(&format!(
             "<path d=\"{path}\" fill=\"{fill}\" stroke=\"{fill}\" stroke-width=\"0.5\" fill-rule=\"evenodd\"/>"
         ));
         if band.to <= 1e-9 {
             canvas.add(&format!(
-                "<path d=\"{path}\" fill=\"url(#rise)\" fill-rule=\"evenodd\" opacity=\"0.45\"/>"
+                "<path d=\"{path}\" fill=\"url(#{})\" fill-rule=\"evenodd\" opacity=\"0.45\"/>",
+                canvas.id("rise")
             ));
         }
     }
     Ok(())
 }
 
-/// Head contours.
-pub fn contours(canvas: &mut Canvas, lines: &[ContourLine]) {
+/// Contours; every fifth level is drawn bolder.
+pub fn contours(canvas: &mut Canvas, lines: &[ContourLine], levels_m: &[f64]) {
+    let step_m = levels_m
+        .iter()
+        .zip(levels_m.iter().skip(1))
+        .map(|(low_m, high_m)| high_m - low_m)
+        .fold(f64::INFINITY, f64::min);
     for line in lines {
         let path = canvas.path(&line.points, line.closed);
+        if path.is_empty() {
+            continue;
+        }
+        let is_fifth = (line.level / step_m).round() % 5.0 == 0.0;
+        let width = if is_fifth { 1.5 } else { 0.8 };
         canvas.add(&format!(
-            "<path d=\"{path}\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"0.8\"/>"
+            "<path d=\"{path}\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"{width}\"/>"
         ));
     }
 }
@@ -160,9 +176,9 @@ pub fn neighbour_areas(canvas: &mut Canvas, planned: &Planned<'_>) {
         if let Place::Area(ring) = &neighbour.place {
             let path = canvas.path(ring, true);
             let (fill, dashes) = match state(finding) {
-                State::Within => ("none", ""),
-                State::Over => ("url(#over)", ""),
-                State::Unjudged => ("none", " stroke-dasharray=\"5 3\""),
+                State::Within => ("none".to_owned(), ""),
+                State::Over => (format!("url(#{})", canvas.id("over")), ""),
+                State::Unjudged => ("none".to_owned(), " stroke-dasharray=\"5 3\""),
             };
             canvas.add(&format!(
                 "<path d=\"{path}\" fill=\"{fill}\" stroke=\"{INK}\" stroke-width=\"1.6\"{dashes}/>"
@@ -176,23 +192,20 @@ pub fn neighbours(canvas: &mut Canvas, planned: &Planned<'_>) {
     let site = planned.solution.site();
     for (finding, neighbour) in planned.findings.neighbours.iter().zip(&site.neighbours) {
         if let Place::At(at) = neighbour.place {
-            let symbol = neighbour_symbol(canvas.place(at), state(finding));
-            canvas.add(&symbol);
+            canvas.symbol(canvas.place(at), &neighbour_symbol(state(finding)));
         }
     }
 }
 
 /// The square of a neighbour.
-pub fn neighbour_symbol([x, y]: [f64; 2], state: State) -> String {
+pub fn neighbour_symbol(state: State) -> String {
     let (fill, dashes) = match state {
         State::Within => (PAPER, ""),
         State::Over => (INK, ""),
         State::Unjudged => (PAPER, " stroke-dasharray=\"2.5 1.8\""),
     };
     format!(
-        "<rect x=\"{:.1}\" y=\"{:.1}\" width=\"9\" height=\"9\" fill=\"{fill}\" stroke=\"{INK}\" stroke-width=\"1.5\"{dashes}/>",
-        x - 4.5,
-        y - 4.5
+        "<rect x=\"-4.5\" y=\"-4.5\" width=\"9\" height=\"9\" fill=\"{fill}\" stroke=\"{INK}\" stroke-width=\"1.5\"{dashes}/>"
     )
 }
 
@@ -204,26 +217,49 @@ pub fn wells(canvas: &mut Canvas, planned: &Planned<'_>) {
             .findings
             .flags_of(Who::Well(finding.well))
             .any(|flag| flag.code != FlagCode::NoLimitGiven);
-        let symbol = well_symbol(canvas.place(well.at), finding.pumping_m3_d < 0.0, flagged);
-        canvas.add(&symbol);
+        let radius = well_radius(planned, finding.well);
+        let symbol = well_symbol(radius, finding.pumping_m3_d < 0.0, flagged);
+        canvas.symbol(canvas.place(well.at), &symbol);
     }
 }
 
-/// The disc or diamond of a well.
-pub fn well_symbol([x, y]: [f64; 2], injects: bool, flagged: bool) -> String {
+/// Radius of a well's symbol, pixels: its area goes with the rate.
+pub fn well_radius(planned: &Planned<'_>, well: usize) -> f64 {
+    let rates = || planned.findings.wells.iter().map(|w| w.pumping_m3_d.abs());
+    let most = rates().fold(0.0, f64::max);
+    let own = rates().nth(well).unwrap_or(0.0);
+    let largest = largest_radius(planned);
+    let share = if most > 0.0 { own / most } else { 1.0 };
+    (largest * share.sqrt()).max(SMALLEST_RADIUS)
+}
+
+/// Radius of the symbol of the largest well, pixels.
+pub fn largest_radius(planned: &Planned<'_>) -> f64 {
+    if planned.findings.wells.len() > 30 {
+        6.0
+    } else {
+        9.0
+    }
+}
+
+/// The disc or diamond of a well, as large as a disc of this radius.
+pub fn well_symbol(radius: f64, injects: bool, flagged: bool) -> String {
     let mut symbol = if injects {
+        // A square on its tip with half the diagonal r √(π/2) has the disc's area.
+        let r = radius * std::f64::consts::FRAC_PI_2.sqrt();
         format!(
-            "<path d=\"M{:.1} {y:.1}l6.5 -6.5l6.5 6.5l-6.5 6.5Z\" fill=\"{PAPER}\" stroke=\"{INK}\" stroke-width=\"2\"/>",
-            x - 6.5
+            "<path d=\"M{:.1} 0l{r:.1} {:.1}l{r:.1} {r:.1}l{:.1} {r:.1}Z\" fill=\"{PAPER}\" stroke=\"{INK}\" stroke-width=\"2\"/>",
+            -r, -r, -r
         )
     } else {
         format!(
-            "<circle cx=\"{x:.1}\" cy=\"{y:.1}\" r=\"5\" fill=\"{INK}\" stroke=\"{PAPER}\" stroke-width=\"1.5\"/>"
+            "<circle r=\"{radius:.1}\" fill=\"{INK}\" stroke=\"{PAPER}\" stroke-width=\"1.5\"/>"
         )
     };
     if flagged {
         symbol.push_str(&format!(
-            "<circle cx=\"{x:.1}\" cy=\"{y:.1}\" r=\"10\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.8\"/>"
+            "<circle r=\"{:.1}\" fill=\"none\" stroke=\"{INK}\" stroke-width=\"1.8\"/>",
+            radius + 4.5
         ));
     }
     symbol

@@ -1,7 +1,7 @@
 //! How exactly heads are computed, in words. A bound is rounded up to one digit, so
 //! that what a person reads is a bound too.
 
-use super::{Words, one_line};
+use super::Words;
 
 impl Words<'_> {
     /// "heads are computed to 2e-11 m (proven bound)". Of the computation, not
@@ -30,9 +30,8 @@ impl Words<'_> {
 
     /// What would make a proven bound suffice.
     pub(super) fn exactness_remedy(&self, bound_m: f64, hardest_edge: Option<usize>) -> String {
-        let simpler = hardest_edge
-            .and_then(|edge| self.site.edges.get(edge))
-            .map(|edge| format!("a simpler outline near {}", one_line(&edge.name)));
+        let simpler =
+            hardest_edge.map(|edge| format!("a simpler outline near {}", self.edge(edge)));
         let larger = bound_m
             .is_finite()
             .then(|| rounded_up(self.units.length(bound_m)));
@@ -55,7 +54,7 @@ impl Words<'_> {
     }
 
     /// An accepted error with its unit, to three digits.
-    fn tolerance(&self, metres: f64) -> String {
+    pub(super) fn tolerance(&self, metres: f64) -> String {
         let value = legible(&format!("{:.2e}", self.units.length(metres)));
         format!("{value} {}", self.units.length_ending())
     }
