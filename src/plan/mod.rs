@@ -55,7 +55,7 @@ pub use units::{Dimension, UnitSystem};
 /// A quantity that a plan gives.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Input {
-    /// Whose it is: "[aquifer]", "well `PW-1`".
+    /// Whose it is: `[aquifer]`, "well `PW-1`".
     pub of: String,
     /// Its key.
     pub key: &'static str,
