@@ -73,10 +73,21 @@ pub fn drawdown_lines(planned: &Planned<'_>) -> Result<Layer, LayerError> {
     ))
 }
 
+/// Contours that stay within this of their start, metres, as where two stages
+/// meet, are dots: longitudes and latitudes are too coarse to hold them.
+const DOT_M: f64 = 0.002;
+
+/// The largest distance of a line's points from its start.
+fn reach_m(points: &[Point]) -> f64 {
+    let start = points.first().copied().unwrap_or_default();
+    let distances = points.iter().map(|point| (point - start).norm());
+    distances.fold(0.0, f64::max)
+}
+
 /// Contours as a layer, each with its level.
 fn lines(stem: &str, lines: &[ContourLine], units: Units) -> Layer {
     let mut layer = Layer::default();
-    for line in lines {
+    for line in lines.iter().filter(|line| reach_m(&line.points) > DOT_M) {
         let value = Some(level(units, line.level));
         let properties = Properties::new(units).number(stem, Quantity::Length, value);
         layer.add_line(line.points.clone(), properties);
