@@ -6,7 +6,7 @@ use std::sync::Arc;
 
 use num_complex::Complex64;
 
-use super::FieldWell;
+use super::{FieldWell, steady};
 use crate::green::{Before, General, WeightedPole};
 use crate::outline::{Kind, Outline};
 use crate::site::{Refusal, Site, Subject};
@@ -83,20 +83,6 @@ pub(super) fn solve(
 }
 
 fn without_river(outline: &Outline) -> Refusal {
-    let mut edges: Vec<usize> = outline
-        .sides
-        .iter()
-        .flatten()
-        .map(|piece| piece.edge)
-        .collect();
-    edges.sort_unstable();
-    edges.dedup();
-    let edge = |edge| {
-        (
-            Subject::Edge(edge, None),
-            "an edge of this aquifer".to_owned(),
-        )
-    };
     Refusal {
         subject: Subject::Aquifer(None),
         what: "barriers alone bound the aquifer, and it is no box".to_owned(),
@@ -106,6 +92,6 @@ fn without_river(outline: &Outline) -> Refusal {
                 .to_owned(),
         ),
         remedy: "give the aquifer a river, or simplify the barriers to a box".to_owned(),
-        related: edges.into_iter().map(edge).collect(),
+        related: steady::edges_of(outline),
     }
 }

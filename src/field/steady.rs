@@ -128,7 +128,8 @@ fn refusal(error: GreenError, outline: &Outline) -> Refusal {
     }
 }
 
-fn edges_of(outline: &Outline) -> Vec<(Subject, String)> {
+/// The edges of an outline, for a refusal to point at.
+pub(super) fn edges_of(outline: &Outline) -> Vec<(Subject, String)> {
     let mut edges: Vec<usize> = outline
         .sides
         .iter()

@@ -200,16 +200,12 @@ fn joint(sides: &[Side], index: usize, next: usize) -> Joint {
     };
     let same_kind = sides
         .get(next)
-        .is_some_and(|other| is_alike(side.condition, other.condition));
+        .is_some_and(|other| side.condition == other.condition);
     Joint {
         next,
         angle_rad,
         exponent: exponent(angle_rad, same_kind),
     }
-}
-
-fn is_alike(one: Condition, other: Condition) -> bool {
-    one == other
 }
 
 /// The side that comes from infinity next, counter-clockwise, after one that
