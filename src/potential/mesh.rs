@@ -48,6 +48,31 @@ pub(super) struct Panel {
     pub half: f64,
 }
 
+/// Where a panel is, and how long.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Reach {
+    ends: [Complex64; 2],
+    /// Half its length; infinite on one that reaches infinity.
+    half_m: f64,
+}
+
+impl Reach {
+    /// What a unit of water from another panel at most makes of slope on this one,
+    /// about: the inverse of their distance in lengths of this panel.
+    pub fn sees(&self, other: &Self) -> f64 {
+        let pairs = self.ends.iter().flat_map(|own| {
+            let gaps = other.ends.iter().map(move |end| (own - end).norm());
+            gaps.filter(|gap| gap.is_finite())
+        });
+        let gap_m = pairs.fold(f64::INFINITY, f64::min);
+        if self.half_m.is_finite() {
+            self.half_m / (2.0 * self.half_m + gap_m)
+        } else {
+            0.5
+        }
+    }
+}
+
 /// A place on a panel where a condition is asked.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Place {
@@ -280,6 +305,19 @@ impl Mesh {
     /// Number of unknown densities.
     pub fn unknowns(&self) -> usize {
         self.panels.len() * self.rule.order()
+    }
+
+    /// Where each panel is.
+    pub fn reaches(&self) -> Vec<Reach> {
+        let reach = |panel: &Panel| {
+            let ends = [-1.0, 1.0].map(|t| panel.curve.at(panel.u(t)));
+            let half_m = 0.5 * (ends[1] - ends[0]).norm();
+            Reach {
+                ends,
+                half_m: if half_m.is_nan() { f64::INFINITY } else { half_m },
+            }
+        };
+        self.panels.iter().map(reach).collect()
     }
 
     /// The nodes, panel after panel.

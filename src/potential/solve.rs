@@ -17,7 +17,9 @@
 //! where those of a polynomial collocation are largest; [`BETWEEN_CHECKS`]
 //! covers what they may rise to in between.
 
-use super::mesh::{Mesh, Place};
+use rayon::prelude::*;
+
+use super::mesh::{Mesh, Place, Reach};
 use super::problem::{Posed, Problem};
 use super::region::{Condition, Region};
 use super::system::{Densities, System, asked_by};
@@ -26,11 +28,18 @@ use super::system::{Densities, System, asked_by};
 /// parabola through three checks of a Legendre polynomial stays within 1.3.
 const BETWEEN_CHECKS: f64 = 1.5;
 
-/// ω is at least this share of the largest ε, so that φ is resolved anywhere.
-const SMALLEST_OMEGA: f64 = 1e-2;
+/// ω is at least this share of the largest ε.
+const SMALLEST_OMEGA: f64 = 1e-4;
+
+/// ω is lifted and φ solved for anew at most so often.
+const MOST_LIFTS: usize = 3;
 
 /// Share of the target that a panel's residual is to stay below.
 const FIRST_AIM: f64 = 0.25;
+
+/// Where all panels keep their aim and the bound is still too large, the aim is
+/// lowered to no less than this share.
+const LEAST_STEP: f64 = 1e-2;
 
 /// Refinement ends after so many rounds.
 const MOST_ROUNDS: usize = 14;
@@ -130,7 +139,8 @@ impl Solution {
             let from = latest.as_ref().unwrap_or(&best);
             let excess = from.measure.excess(aim_m);
             if excess.iter().all(|&excess| excess <= 1.0) {
-                aim_m *= FIRST_AIM;
+                let missed = (target_m / from.measure.bound_m).max(LEAST_STEP);
+                aim_m *= FIRST_AIM.min(0.5 * missed);
             }
             let finer = from
                 .system
@@ -267,47 +277,72 @@ fn highest(values: impl Iterator<Item = f64>) -> f64 {
 }
 
 /// The bound on φ whose slopes exceed the given ones.
+///
+/// Where φ misses ω by much, ω was too rough for the mesh; it is lifted there.
 fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]) -> f64 {
-    let floor = SMALLEST_OMEGA * highest(slopes.iter().copied());
-    let omega: Vec<f64> = slopes.iter().map(|slope| slope.max(floor)).collect();
+    if !region.has_head() {
+        return f64::INFINITY;
+    }
+    let mut omega = smoothed(&system.mesh.reaches(), slopes);
+    for _ in 0..=MOST_LIFTS {
+        let (highest_m, missed) = solve_comparison(system, checks, &omega);
+        let shares = missed.iter().zip(&omega);
+        let share = highest(shares.map(|(missed, omega)| missed / omega));
+        if share <= 0.7 {
+            return highest_m / (1.0 - share);
+        }
+        for (omega, missed) in omega.iter_mut().zip(missed) {
+            *omega = omega.max(4.0 * missed);
+        }
+    }
+    f64::INFINITY
+}
+
+/// The largest value of φ, its residual in head included, and by how much its
+/// slope misses ω on each panel.
+fn solve_comparison(
+    system: &System,
+    checks: &[Place],
+    omega: &[f64],
+) -> (f64, Vec<f64>) {
     let asked = |_: usize, place: &Place| match place.condition {
         Condition::Head => 0.0,
         Condition::Flux | Condition::Clogged { .. } => {
-            omega.get(place.panel).copied().unwrap_or(floor)
+            omega.get(place.panel).copied().unwrap_or_default()
         }
     };
     let densities = system.solve(&asked, &[0.0]);
     let fields = system.fields(&densities, checks);
     let residuals = fields.residuals(checks, 1, &asked);
-    let highest_m = highest(fields.values.iter().copied());
-    let (heads_m, slopes) = largest(
-        system,
-        checks,
-        &residuals
-            .iter()
-            .map(|residual| residual.abs())
-            .collect::<Vec<_>>(),
-    );
-    let head_m = highest(heads_m.iter().copied());
-    let shares = slopes
+    let residuals: Vec<f64> = residuals.iter().map(|residual| residual.abs()).collect();
+    let (heads_m, missed) = largest(system, checks, &residuals);
+    let highest_m = highest(fields.values.iter().copied()) + highest(heads_m.iter().copied());
+    (highest_m, missed)
+}
+
+/// ω: no smaller than the given slopes anywhere, nor than what the water that
+/// they let through on other panels makes of slope there, so that φ is as
+/// smooth on every panel as ω asks for.
+fn smoothed(reaches: &[Reach], slopes: &[f64]) -> Vec<f64> {
+    let floor = SMALLEST_OMEGA * highest(slopes.iter().copied());
+    let strong: Vec<_> = reaches
         .iter()
-        .zip(&omega)
-        .map(|(slope, omega)| slope / omega);
-    let share = highest(shares);
-    if share < 1.0 && region.has_head() {
-        (highest_m + head_m) / (1.0 - share)
-    } else {
-        f64::INFINITY
-    }
+        .zip(slopes)
+        .filter(|(_, slope)| **slope > floor)
+        .collect();
+    let omega = reaches.par_iter().zip(slopes).map(|(reach, slope)| {
+        let seen = strong.iter().map(|(other, slope)| *slope * reach.sees(other));
+        seen.fold(slope.max(floor), f64::max)
+    });
+    omega.collect()
 }
 
 impl Measure {
     /// For each panel by what factor it misses its aim.
     fn excess(&self, aim_m: f64) -> Vec<f64> {
         let of_slopes = self.slopes.iter().filter(|slope| **slope > 0.0).count();
-        // A panel's slope residual raises the head by about twice itself, and
-        // those of many panels of random sign add up as their root.
-        let slope_aim_m = aim_m / (2.0 * (of_slopes.max(1) as f64).sqrt());
+        // φ adds up the slopes of all panels, each a fraction of a metre a metre.
+        let slope_aim_m = aim_m * (4.0 / of_slopes.max(1) as f64).min(0.5);
         let panels = self.heads_m.iter().zip(&self.slopes);
         panels
             .map(|(head_m, slope)| (head_m / aim_m).max(slope / slope_aim_m))
