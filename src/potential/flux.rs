@@ -10,7 +10,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::curve::Curve;
-use super::mesh::Panel;
+use super::panel::Panel;
 use super::solve::Solution;
 
 impl Solution {
@@ -24,7 +24,7 @@ impl Solution {
         if posed.jumps_within(&self.region, side, &along) {
             return Some(f64::INFINITY);
         }
-        let of_panels: f64 = (self.system.mesh.panels.iter().enumerate())
+        let of_panels: f64 = (self.system.mesh.panels().enumerate())
             .filter(|(_, panel)| panel.side == side)
             .map(|(index, panel)| self.outflow_of_panel(problem, index, panel, &along))
             .sum();

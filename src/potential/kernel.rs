@@ -15,7 +15,8 @@ use std::f64::consts::{FRAC_1_PI, TAU};
 use num_complex::Complex64;
 
 use super::legendre::{MOST_NODES, Rule, ellipse};
-use super::mesh::{Mesh, Panel, Place};
+use super::panel::{Panel, Place};
+use super::region::Condition;
 
 /// −1/(2π).
 pub(super) const FACTOR: f64 = -0.5 * FRAC_1_PI;
@@ -52,16 +53,15 @@ impl Effect {
     };
 }
 
-/// The panels of a mesh, ready to act.
-pub(super) fn sources(mesh: &Mesh) -> Vec<Source> {
-    let rule = &mesh.rule;
-    let source = |panel: &Panel| {
+impl Source {
+    /// A panel, ready to act.
+    pub fn new(panel: &Panel, rule: &Rule) -> Self {
         let parameters: Vec<f64> = rule.nodes.iter().map(|&t| panel.u(t)).collect();
         let power = f64::from(panel.power);
         let far_radius = 0.5 * (rule.far + 1.0 / rule.far);
         let offset = |u: &f64| panel.curve.below(*u).norm().ln() - power * panel.half.ln();
         let root = |index: u32| Complex64::cis(TAU * f64::from(index) / power);
-        Source {
+        Self {
             panel: *panel,
             nodes: parameters.iter().map(|&u| panel.curve.at(u)).collect(),
             offsets: parameters.iter().map(offset).collect(),
@@ -69,11 +69,27 @@ pub(super) fn sources(mesh: &Mesh) -> Vec<Source> {
             far_parameter: (panel.middle + far_radius * panel.half).powf(power),
             far_radius,
         }
-    };
-    mesh.panels.iter().map(source).collect()
-}
+    }
 
-impl Source {
+    /// The effect of its nodes as points on a place of another side; what is not
+    /// wanted is left zero.
+    pub fn as_points_on_side(&self, rule: &Rule, place: &Place, wanted: Wanted, out: &mut OnSide) {
+        *out = OnSide::NONE;
+        let nodes = self.nodes.iter().zip(&rule.weights);
+        if wanted.values {
+            for ((node, weight), value) in nodes.clone().zip(&mut out.values) {
+                *value = FACTOR * weight * 0.5 * (place.x - node).norm_sqr().ln();
+            }
+        }
+        if wanted.slopes {
+            for ((node, weight), slope) in nodes.zip(&mut out.slopes) {
+                let distance = place.x - node;
+                let along = (distance.conj() * place.outward).re;
+                *slope = FACTOR * weight * along / distance.norm_sqr();
+            }
+        }
+    }
+
     /// The effect at a place anywhere in the region.
     pub fn at(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
         self.effect(rule, x, self.panel.curve.parameter(x), effect);
@@ -228,6 +244,28 @@ impl Source {
                 let unit = (0..rule.order()).map(|m| f64::from(m == k));
                 *slope += 0.5 * rule.interpolate(place.t, unit);
             }
+        }
+    }
+}
+
+/// What of an effect is wanted.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Wanted {
+    pub values: bool,
+    pub slopes: bool,
+}
+
+impl Wanted {
+    pub const ALL: Self = Self {
+        values: true,
+        slopes: true,
+    };
+
+    /// What a place's condition looks at.
+    pub fn by(place: &Place) -> Self {
+        Self {
+            values: place.condition != Condition::Flux,
+            slopes: place.condition != Condition::Head,
         }
     }
 }

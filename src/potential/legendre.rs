@@ -18,6 +18,10 @@ use num_complex::Complex64;
 /// Largest number of nodes of a panel.
 pub(super) const MOST_NODES: usize = 16;
 
+/// Order of the rule between whose nodes a panel is checked that shares its few
+/// unknowns with others.
+const FEW: usize = 4;
+
 /// A Gauss rule with the tables that panels of its order share.
 #[derive(Clone, Debug)]
 pub(super) struct Rule {
@@ -29,6 +33,8 @@ pub(super) struct Rule {
     coefficients: Vec<Vec<f64>>,
     /// Places between the nodes, where residuals are largest.
     pub checks: Vec<f64>,
+    /// Places on a panel that shares its unknowns with others.
+    pub few_checks: Vec<f64>,
     /// A place whose ρ exceeds this sees the nodes as points, to 1e-15.
     pub far: f64,
 }
@@ -46,6 +52,7 @@ impl Rule {
         let coefficients = coefficients.collect();
         Self {
             checks: between(&nodes),
+            few_checks: between(&gauss(FEW).0),
             coefficients,
             far: 10f64.powf(15.0 / (2.0 * order as f64)),
             nodes,
@@ -141,7 +148,7 @@ fn gauss(order: usize) -> (Vec<f64>, Vec<f64>) {
 }
 
 /// P₀(t), …, `count` of them.
-fn polynomials(t: f64, count: usize) -> Vec<f64> {
+pub(super) fn polynomials(t: f64, count: usize) -> Vec<f64> {
     let mut values = Vec::with_capacity(count);
     let (mut before, mut here) = (0.0, 1.0);
     for n in 0..count {

@@ -2,15 +2,20 @@
 //! error.
 
 mod batch;
+mod comparison;
 mod curve;
+mod cut;
 mod flux;
+mod hub;
 mod kernel;
 mod layer;
 mod legendre;
 mod mesh;
+mod panel;
 mod problem;
 mod region;
 mod solve;
+mod span;
 mod system;
 mod taper;
 

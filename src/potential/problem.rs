@@ -9,7 +9,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use super::kernel::of_pole;
-use super::mesh::Place;
+use super::panel::Place;
 use super::region::{Condition, Region};
 use super::taper::Taper;
 

@@ -6,36 +6,31 @@
 //! most ε(p) on panel p, in the panel's own measure. On clogged sides the sum
 //! ∂e/∂n + e/skin is; a constant δ outweighs it where it is at most δ/skin, so
 //! it counts as head where the skin is thin for its panel and as slope elsewhere.
-//! Let φ be harmonic, zero on head sides, with slope ω(p) ≥ ε(p) on flux sides
-//! (on clogged sides slope and head together): then |e| ≤ δ + φ everywhere. φ is one more solution of
-//! the same system; its own residual, δ′ in head and a share ε′ of ω in slope,
-//! obeys the same rule, so that
-//!
-//! > |e| ≤ δ + (max φ̂ + δ′)/(1 − ε′).
+//! [`comparison`] turns the slopes into a head that exceeds what they make of one:
+//! |e| ≤ δ + φ everywhere.
 //!
 //! Residuals are measured between the nodes and beside the ends of each panel,
 //! where those of a polynomial collocation are largest; [`BETWEEN_CHECKS`]
 //! covers what they may rise to in between.
 
-use rayon::prelude::*;
-
-use super::mesh::{Mesh, Place, Reach};
+use super::comparison::Parts;
+use super::kernel::Wanted;
+use super::mesh::Mesh;
+use super::panel::Place;
 use super::problem::{Posed, Problem};
-use super::region::{Condition, Region};
+use super::region::Region;
 use super::system::{Densities, System, asked_by};
 
 /// Residuals between two checks exceed the larger of both at most by this: a
 /// parabola through three checks of a Legendre polynomial stays within 1.3.
-const BETWEEN_CHECKS: f64 = 1.5;
-
-/// ω is at least this share of the largest ε.
-const SMALLEST_OMEGA: f64 = 1e-4;
-
-/// ω is lifted and φ solved for anew at most so often.
-const MOST_LIFTS: usize = 3;
+pub(super) const BETWEEN_CHECKS: f64 = 1.5;
 
 /// Share of the target that a panel's residual is to stay below.
 const FIRST_AIM: f64 = 0.25;
+
+/// Parts that together let less than this share of the water through are not
+/// refined before the others.
+const SMALL_SHARE: f64 = 0.02;
 
 /// Where all panels keep their aim and the bound is still too large, the aim is
 /// lowered to no less than this share.
@@ -95,7 +90,7 @@ impl Attempt {
     /// The side with the panel that misses its aim by most.
     fn hardest_side(&self) -> Option<usize> {
         let excess = self.measure.excess(1.0);
-        let panels = self.system.mesh.panels.iter().zip(excess);
+        let panels = self.system.mesh.panels().zip(excess);
         panels
             .max_by(|(_, one), (_, other)| one.total_cmp(other))
             .map(|(panel, _)| panel.side)
@@ -107,7 +102,12 @@ struct Measure {
     /// For each panel the largest residual in head; zero off head sides.
     heads_m: Vec<f64>,
     /// For each panel the largest residual in slope; zero on head sides.
-    slopes: Vec<f64>,
+    slopes_m: Vec<f64>,
+    /// For each panel the water that the residuals in slope let through its part;
+    /// zero on head sides.
+    amounts_m: Vec<f64>,
+    /// What each part lets through, the least first.
+    of_parts_m: Vec<f64>,
     /// The proven bound; infinite where φ is not resolved.
     bound_m: f64,
 }
@@ -138,18 +138,15 @@ impl Solution {
         while best.measure.bound_m > target_m && rounds < MOST_ROUNDS {
             let from = latest.as_ref().unwrap_or(&best);
             let excess = from.measure.excess(aim_m);
-            if excess.iter().all(|&excess| excess <= 1.0) {
+            if excess.iter().all(|&excess| excess == 0.0) {
                 let missed = (target_m / from.measure.bound_m).max(LEAST_STEP);
                 aim_m *= FIRST_AIM.min(0.5 * missed);
             }
-            let finer = from
-                .system
-                .mesh
-                .refined(&region, &from.measure.excess(aim_m));
-            let is_stuck = finer.panels == from.system.mesh.panels;
-            if is_stuck || finer.unknowns() > MOST_UNKNOWNS {
+            let excess = from.measure.excess(aim_m);
+            let finer = from.system.mesh.refined(&region, &excess);
+            let Some(finer) = finer.filter(|mesh| mesh.unknowns() <= MOST_UNKNOWNS) else {
                 break;
-            }
+            };
             let next = Attempt::on(&region, &posed, finer, target_m);
             rounds += 1;
             if next.measure.bound_m <= best.measure.bound_m {
@@ -159,7 +156,9 @@ impl Solution {
                 latest = Some(next);
             }
         }
-        let node_slopes = best.system.fields(&best.densities, best.system.nodes());
+        let node_slopes = best
+            .system
+            .fields(&best.densities, best.system.nodes(), |_| Wanted::ALL);
         Self {
             node_slopes: node_slopes.slopes,
             hardest_side: best.hardest_side(),
@@ -222,7 +221,7 @@ fn measure(
 ) -> Measure {
     let checks = system.mesh.checks(region);
     let asked = asked_by(region, posed);
-    let fields = system.fields(densities, &checks);
+    let fields = system.fields(densities, &checks, Wanted::by);
     let residuals = fields.residuals(&checks, posed.len(), &asked);
     let weights: Vec<f64> = posed.iter().map(|problem| problem.weight().abs()).collect();
     let sums = residuals.chunks(posed.len()).map(|residuals| {
@@ -232,41 +231,50 @@ fn measure(
             .sum()
     });
     let sums: Vec<f64> = sums.collect();
-    let (heads_m, slopes) = largest(system, &checks, &sums);
+    let (heads_m, slopes_m) = largest_on_panels(system, &checks, &sums);
+    let parts = Parts::of(system, &checks);
+    let slopes = parts.largest(&sums);
+    let amounts_m = parts.amounts(&slopes);
     let head_m = highest(heads_m.iter().copied());
-    let slope = highest(slopes.iter().copied());
+    let amount_m = highest(amounts_m.iter().copied());
     // φ is not worth solving for while the residuals alone exceed the target.
-    let bound_m = if slope == 0.0 {
+    let bound_m = if amount_m == 0.0 {
         head_m
-    } else if head_m.max(slope) > target_m {
+    } else if head_m.max(amount_m) > target_m {
         f64::INFINITY
     } else {
-        head_m + comparison(region, system, &checks, &slopes)
+        head_m + parts.highest(region, &slopes)
     };
     Measure {
         heads_m,
-        slopes,
+        slopes_m,
+        amounts_m,
+        of_parts_m: parts.sorted_amounts(&slopes),
         bound_m,
     }
 }
 
-/// For each panel its largest residual, in head and in slope.
-fn largest(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f64>) {
-    let a_panel = system.mesh.rule.checks.len();
-    let panels = checks.chunks(a_panel).zip(sums.chunks(a_panel));
-    let largest = |places: &[Place], sums: &[f64], counts_head: bool| {
-        let parts = places.iter().zip(sums);
-        let counted = parts.filter(|(place, _)| place.counts_head() == counts_head);
-        BETWEEN_CHECKS * highest(counted.map(|(_, sum)| *sum))
-    };
-    panels
-        .map(|(places, sums)| (largest(places, sums, true), largest(places, sums, false)))
-        .unzip()
+/// For each panel its largest residual in head and in slope; infinite where one
+/// is not a number.
+fn largest_on_panels(system: &System, checks: &[Place], sums: &[f64]) -> (Vec<f64>, Vec<f64>) {
+    let panels = system.sources.len();
+    let (mut heads_m, mut slopes_m) = (vec![0.0; panels], vec![0.0; panels]);
+    for (place, sum) in checks.iter().zip(sums) {
+        let residuals = if place.counts_head() {
+            &mut heads_m
+        } else {
+            &mut slopes_m
+        };
+        if let Some(residual) = residuals.get_mut(place.panel) {
+            *residual = highest([*residual, BETWEEN_CHECKS * sum].into_iter());
+        }
+    }
+    (heads_m, slopes_m)
 }
 
 /// The largest of some values and zero; infinite where one is not a number, so
 /// that nothing undefined passes for small.
-fn highest(values: impl Iterator<Item = f64>) -> f64 {
+pub(super) fn highest(values: impl Iterator<Item = f64>) -> f64 {
     values.fold(0.0, |highest, value| {
         if value.is_nan() {
             f64::INFINITY
@@ -276,76 +284,29 @@ fn highest(values: impl Iterator<Item = f64>) -> f64 {
     })
 }
 
-/// The bound on φ whose slopes exceed the given ones.
-///
-/// Where φ misses ω by much, ω was too rough for the mesh; it is lifted there.
-fn comparison(region: &Region, system: &System, checks: &[Place], slopes: &[f64]) -> f64 {
-    if !region.has_head() {
-        return f64::INFINITY;
-    }
-    let mut omega = smoothed(&system.mesh.reaches(), slopes);
-    for _ in 0..=MOST_LIFTS {
-        let (highest_m, missed) = solve_comparison(system, checks, &omega);
-        let shares = missed.iter().zip(&omega);
-        let share = highest(shares.map(|(missed, omega)| missed / omega));
-        if share <= 0.7 {
-            return highest_m / (1.0 - share);
-        }
-        for (omega, missed) in omega.iter_mut().zip(missed) {
-            *omega = omega.max(4.0 * missed);
-        }
-    }
-    f64::INFINITY
-}
-
-/// The largest value of φ, its residual in head included, and by how much its
-/// slope misses ω on each panel.
-fn solve_comparison(
-    system: &System,
-    checks: &[Place],
-    omega: &[f64],
-) -> (f64, Vec<f64>) {
-    let asked = |_: usize, place: &Place| match place.condition {
-        Condition::Head => 0.0,
-        Condition::Flux | Condition::Clogged { .. } => {
-            omega.get(place.panel).copied().unwrap_or_default()
-        }
-    };
-    let densities = system.solve(&asked, &[0.0]);
-    let fields = system.fields(&densities, checks);
-    let residuals = fields.residuals(checks, 1, &asked);
-    let residuals: Vec<f64> = residuals.iter().map(|residual| residual.abs()).collect();
-    let (heads_m, missed) = largest(system, checks, &residuals);
-    let highest_m = highest(fields.values.iter().copied()) + highest(heads_m.iter().copied());
-    (highest_m, missed)
-}
-
-/// ω: no smaller than the given slopes anywhere, nor than what the water that
-/// they let through on other panels makes of slope there, so that φ is as
-/// smooth on every panel as ω asks for.
-fn smoothed(reaches: &[Reach], slopes: &[f64]) -> Vec<f64> {
-    let floor = SMALLEST_OMEGA * highest(slopes.iter().copied());
-    let strong: Vec<_> = reaches
-        .iter()
-        .zip(slopes)
-        .filter(|(_, slope)| **slope > floor)
-        .collect();
-    let omega = reaches.par_iter().zip(slopes).map(|(reach, slope)| {
-        let seen = strong.iter().map(|(other, slope)| *slope * reach.sees(other));
-        seen.fold(slope.max(floor), f64::max)
-    });
-    omega.collect()
-}
-
 impl Measure {
-    /// For each panel by what factor it misses its aim.
+    /// For each panel by what factor it misses its aim; zero where its part keeps
+    /// it.
     fn excess(&self, aim_m: f64) -> Vec<f64> {
-        let of_slopes = self.slopes.iter().filter(|slope| **slope > 0.0).count();
-        // φ adds up the slopes of all panels, each a fraction of a metre a metre.
-        let slope_aim_m = aim_m * (4.0 / of_slopes.max(1) as f64).min(0.5);
-        let panels = self.heads_m.iter().zip(&self.slopes);
-        panels
-            .map(|(head_m, slope)| (head_m / aim_m).max(slope / slope_aim_m))
-            .collect()
+        // φ is about what all parts let through together: those that let most
+        // through are refined, until the others make up no more than the aim, or
+        // first a small share.
+        let all_m: f64 = self.of_parts_m.iter().sum();
+        let rest_m = aim_m.max(SMALL_SHARE * all_m);
+        let mut sum_m = 0.0;
+        let small = self.of_parts_m.iter().take_while(|amount_m| {
+            sum_m += **amount_m;
+            sum_m <= rest_m
+        });
+        let small_m = highest(small.copied());
+        let each_m = aim_m / self.of_parts_m.len().max(2) as f64;
+        let slopes_m = self.slopes_m.iter().zip(&self.amounts_m);
+        let panels = self.heads_m.iter().zip(slopes_m);
+        let excess = |(head_m, (slope_m, amount_m)): (&f64, (&f64, &f64))| {
+            let of_head = Some(head_m / aim_m).filter(|excess| *excess > 1.0);
+            let of_slope = Some(slope_m / each_m).filter(|_| *amount_m > small_m);
+            highest([of_head, of_slope].into_iter().flatten())
+        };
+        panels.map(excess).collect()
     }
 }

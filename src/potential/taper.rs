@@ -15,7 +15,7 @@ use std::f64::consts::{FRAC_1_PI, PI};
 use num_complex::Complex64;
 
 use super::curve::Curve;
-use super::mesh::Place;
+use super::panel::Place;
 
 /// |ζ| beyond which L is summed as a series in 1/ζ.
 const FAR: f64 = 16.0;
