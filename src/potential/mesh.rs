@@ -18,9 +18,9 @@ pub(super) struct Stretch {
 }
 
 impl Stretch {
-    /// A side as first solved: made of few functions where it can be and no pole
-    /// is near; otherwise cut until every pole is well off all its panels, and
-    /// where its corners are known to ask for it.
+    /// A side as first solved: made of few functions where it can be and neither a
+    /// pole nor a corner of other sides is near; otherwise cut until all of these
+    /// are well off its panels, and where its own corners ask for it.
     fn new(region: &Region, side: usize, poles: &[Complex64], rule: &Rule) -> Self {
         let Some(curve) = region.sides().get(side).map(|side| side.curve) else {
             return Self {
@@ -29,6 +29,10 @@ impl Stretch {
             };
         };
         let whole = Panel::whole(region, side, curve);
+        let poles: Vec<_> = (poles.iter().copied())
+            .chain(region.other_corners(side))
+            .collect();
+        let poles = poles.as_slice();
         let is_off_poles = cut_near_poles(whole, poles).len() == 1;
         if !Span::suits(region, side) {
             let uncut = cut_near_poles(whole, poles);

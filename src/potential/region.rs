@@ -174,6 +174,18 @@ impl Region {
         self.joints.get(side)
     }
 
+    /// The corners that a side does not touch.
+    pub(super) fn other_corners(&self, side: usize) -> impl Iterator<Item = Complex64> + '_ {
+        let own = [self.before(side), side];
+        let joints = self.joints.iter().enumerate();
+        let others = joints.filter(move |(number, _)| !own.contains(number));
+        others.filter_map(|(number, joint)| {
+            let side = self.sides.get(number)?;
+            let is_corner = joint.exponent.is_finite() && !side.goes_out();
+            is_corner.then(|| side.curve.at(1.0))
+        })
+    }
+
     /// The number of the joint at the start of a side, which is the side that
     /// ends there.
     pub(super) fn before(&self, side: usize) -> usize {
