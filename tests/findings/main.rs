@@ -11,6 +11,7 @@ mod accuracy;
 mod awkward_outlines;
 mod exchange;
 mod inflow;
+mod near_edges;
 mod plans;
 mod remedies;
 mod roof;
