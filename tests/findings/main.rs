@@ -8,6 +8,7 @@
 )]
 
 mod accuracy;
+mod ambient_flow;
 mod awkward_outlines;
 mod exchange;
 mod inflow;

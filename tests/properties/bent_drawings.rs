@@ -1,12 +1,12 @@
 //! Random plans without a closed form: closed polygons and open coasts of rivers
-//! and barriers with bends, a lake or a barrier island inside, falling stages and
-//! jumps between rivers.
+//! and barriers with bends, a lake or a barrier island inside, falling stages,
+//! clogged banks and jumps between rivers.
 
 use std::f64::consts::TAU;
 
 use mirrorwell::outline::Kind::{self, FixedHead, NoFlow};
 use mirrorwell::site::{
-    Aquifer, Edge, EdgeKind, EdgeShape, Flux, Length, Level, MapRequest, Rate, Site, Stage,
+    Aquifer, Edge, EdgeKind, EdgeShape, Flux, Length, Level, MapRequest, Rate, Site, Stage, Time,
     Transmissivity, Well, WellLoss,
 };
 use num_complex::Complex64;
@@ -30,12 +30,13 @@ pub struct Leg {
     pub kind: Kind,
     pub ends: [Complex64; 2],
     pub stages_m: [f64; 2],
+    /// Of a clogged bank, days.
+    pub resistance_d: Option<f64>,
 }
 
 /// A plan before it is put into a place.
 #[derive(Clone, Debug)]
 pub struct BentDrawing {
-    pub is_closed: bool,
     pub legs: Vec<Leg>,
     pub inside: Inside,
     /// Middle and radius of what stands inside.
@@ -47,6 +48,7 @@ pub struct BentDrawing {
 }
 
 pub const TRANSMISSIVITY_M2_D: f64 = 500.0;
+const THICKNESS_M: f64 = 20.0;
 
 /// The size of everything drawn, metres.
 pub const SIZE_M: f64 = 800.0;
@@ -88,16 +90,19 @@ impl BentDrawing {
         let line = |places: &[Complex64]| {
             EdgeShape::Line(places.iter().map(|z| setting.place(*z)).collect())
         };
-        let river = |stages_m: &[f64]| EdgeKind::River {
-            stage: Stage::AtVertices(stages_m.iter().map(|m| Level::from_si(*m)).collect()),
-            bank_resistance: None,
+        let river = |leg: &Leg| EdgeKind::River {
+            stage: Stage::AtVertices(leg.stages_m.map(Level::from_si).to_vec()),
+            // The skin is a length: it grows with the plan.
+            bank_resistance: leg
+                .resistance_d
+                .map(|days| Time::from_si(days * setting.scale)),
         };
         let mut edges: Vec<Edge> = Vec::new();
         for (number, leg) in self.legs.iter().enumerate() {
             edges.push(Edge {
                 name: format!("E{number}"),
                 kind: match leg.kind {
-                    FixedHead => river(&leg.stages_m),
+                    FixedHead => river(leg),
                     NoFlow => EdgeKind::Barrier,
                 },
                 shape: line(&leg.ends),
@@ -142,7 +147,7 @@ impl BentDrawing {
         Site {
             aquifer: Aquifer {
                 transmissivity: Transmissivity::from_si(TRANSMISSIVITY_M2_D),
-                thickness: None,
+                thickness: Some(Length::from_si(THICKNESS_M)),
                 roof: None,
                 recharge: Flux::from_si(0.0),
                 anisotropy: setting.anisotropy(),
@@ -159,12 +164,16 @@ impl BentDrawing {
     }
 }
 
-/// What the kinds and stages of one leg are drawn from.
-fn leg() -> impl Strategy<Value = (Kind, f64, f64)> {
+/// Kind, resistance of the bank, stage, and jump of the stage at its beginning.
+type DrawnLeg = (Kind, Option<f64>, f64, f64);
+
+fn leg() -> impl Strategy<Value = DrawnLeg> {
     let kind = prop_oneof![3 => Just(FixedHead), 2 => Just(NoFlow)];
+    // Skins of 10 m to 2 km.
+    let resistance = prop_oneof![4 => Just(None), 1 => (0.4..80.0_f64).prop_map(Some)];
     // One corner in four has a jump of the stage.
     let jump = prop_oneof![3 => Just(0.0), 1 => -0.5..0.5_f64];
-    (kind, 58.0..62.0_f64, jump)
+    (kind, resistance, 58.0..62.0_f64, jump)
 }
 
 fn inside() -> impl Strategy<Value = Inside> {
@@ -176,12 +185,7 @@ fn inside() -> impl Strategy<Value = Inside> {
 }
 
 /// Legs from place to place, each with its kind and stages; one of them a river.
-fn legs(
-    corners: &[Complex64],
-    is_closed: bool,
-    drawn: &[(Kind, f64, f64)],
-    river: usize,
-) -> Vec<Leg> {
+fn legs(corners: &[Complex64], is_closed: bool, drawn: &[DrawnLeg], river: usize) -> Vec<Leg> {
     let count = if is_closed {
         corners.len()
     } else {
@@ -189,7 +193,7 @@ fn legs(
     };
     let next = |number: usize| (number + 1) % corners.len();
     let leg = |number: usize| {
-        let (kind, stage_m, jump_m) = drawn[number];
+        let (kind, resistance_d, stage_m, jump_m) = drawn[number];
         Leg {
             kind: if number == river % count {
                 FixedHead
@@ -197,7 +201,8 @@ fn legs(
                 kind
             },
             ends: [corners[number], corners[next(number)]],
-            stages_m: [stage_m + jump_m, drawn[next(number)].1],
+            stages_m: [stage_m + jump_m, drawn[next(number)].2],
+            resistance_d,
         }
     };
     (0..count).map(leg).collect()
@@ -247,7 +252,6 @@ fn closed() -> impl Strategy<Value = BentDrawing> {
                     radius_m: 0.2,
                 });
             BentDrawing {
-                is_closed: true,
                 wells: wells.collect(),
                 places: places
                     .iter()
@@ -317,7 +321,6 @@ fn open() -> impl Strategy<Value = BentDrawing> {
                 inside == Inside::Nothing || (z - middle).norm() > 1.05 * middle_radius_m
             };
             BentDrawing {
-                is_closed: false,
                 wells: drawn_wells.collect(),
                 places: places
                     .iter()
