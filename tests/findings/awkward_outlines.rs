@@ -225,7 +225,7 @@ fn rivers_and_barriers_that_touch_themselves_are_refused_with_the_place() {
             text(&[], &[line], &[(0.0, 500.0)]),
         ] {
             let faults = Plan::from_text("plan.toml", &text, Path::new("."));
-            let faults = faults.err().expect("a refusal").to_string();
+            let faults = faults.expect_err("a refusal").to_string();
             assert!(faults.contains("crosses or touches itself"), "{faults}");
             assert!(faults.contains(sides), "{faults}");
         }

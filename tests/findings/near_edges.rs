@@ -167,7 +167,8 @@ fn slopes_in_corners_follow_their_power_down_to_a_millimetre() {
     }
 }
 
-/// The head at a place is the same asked for alone and among others spread wide.
+/// The head at a place is the same asked for alone, with one nearby, and among
+/// others spread wide.
 #[test]
 fn a_head_beside_an_edge_does_not_depend_on_what_else_is_asked_for() {
     let (plan, solution) = solved(1e-4);
@@ -186,5 +187,8 @@ fn a_head_beside_an_edge_does_not_depend_on_what_else_is_asked_for() {
         let apart_m = (alone_m - together_m).abs();
         // Heads of 50 m sum some hundred parts of up to 100 m: 1e-16 of each.
         assert!(apart_m <= 1e-11, "{apart_m} m apart at {at}");
+        let inside = *at + (solution.site().wells[0].at - at) * 1e-5;
+        let apart_m = (solution.heads_m(&[*at, inside])[0] - together_m).abs();
+        assert!(apart_m <= 1e-11, "{apart_m} m apart at {at} beside another");
     }
 }

@@ -63,6 +63,11 @@ impl BentDrawing {
         self.legs.iter().map(beside).enumerate().collect()
     }
 
+    pub fn is_closed(&self) -> bool {
+        let ends = [self.legs.first(), self.legs.last()];
+        matches!(ends, [Some(first), Some(last)] if first.ends[0] == last.ends[1])
+    }
+
     pub fn with_wells(&self, wells: Vec<DrawnWell>) -> Self {
         Self {
             wells,
