@@ -2,7 +2,7 @@
 
 use thiserror::Error;
 
-use super::ambient::azimuth_deg;
+use super::stated::azimuth_deg;
 use crate::site::{Point, Refusal, Subject, Vector};
 
 /// A contradiction between `[ambient]` and the edges, or a gap in it.

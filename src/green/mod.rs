@@ -74,6 +74,12 @@ pub trait Green: Send + Sync {
     /// ∂G/∂x + i ∂G/∂y at `at`, in 1/m.
     fn gradient(&self, at: Complex64, pole: Complex64) -> Complex64;
 
+    /// Σ strength · (∂G/∂x + i ∂G/∂y) at a place off the poles, rims left out.
+    fn superposed_gradient(&self, sources: &[Source], at: Complex64) -> Complex64 {
+        let gradient = |source: &Source| source.strength_m * self.gradient(at, source.pole);
+        sources.iter().map(gradient).sum()
+    }
+
     /// The limit of G(z, pole) + ln abs(z − pole)/(2π) at the pole.
     ///
     /// Read off on a rim of a micrometre, on which G is −ln(rim)/(2π) + the

@@ -84,6 +84,74 @@ fn the_same_plan_gives_the_same_bytes_at_any_number_of_threads() {
     assert!(one == files(&folder.path().join("seven")));
 }
 
+/// A bent river that meets a barrier, with a lake: solved by the general solver,
+/// whose matrices, sums and maps are shared out among the threads.
+const BENT: &str = r#"
+title = "Bent"
+crs = { origin = [15.0, 48.0] }
+units = "metric"
+[aquifer]
+conductivity = 25.0
+thickness = 20.0
+roof = 40.0
+[[river]]
+name = "Ostra"
+line = [[-900.0, 60.0], [-200.0, -40.0], [150.0, 180.0], [700.0, 0.0]]
+stage = [61.0, 60.6, 60.2, 60.0]
+[[barrier]]
+name = "granite edge"
+line = [[700.0, 0.0], [820.0, 900.0]]
+[[river]]
+name = "Round lake"
+circle = { centre = [250.0, 520.0], radius = 90.0 }
+stage = 59.8
+[[well]]
+name = "PW-1"
+at = [-150.0, 170.0]
+pumping = 900.0
+radius = 0.15
+[[well]]
+name = "PW-2"
+at = [520.0, 300.0]
+pumping = 600.0
+radius = 0.15
+[[neighbour]]
+name = "Lot 14"
+area = [[0.0, 300.0], [120.0, 300.0], [60.0, 420.0]]
+allowed_drawdown = 0.3
+[map]
+extent = [-700.0, -150.0, 900.0, 800.0]
+spacing = 20.0
+"#;
+
+#[test]
+fn a_bent_outline_gives_the_same_bytes_at_any_number_of_threads() {
+    let folder = folder();
+    fs::write(folder.path().join("plan.toml"), BENT).unwrap();
+    let of = |threads: &str| {
+        let run = ["run", "plan.toml", "--threads", threads, "--out", threads];
+        let done = outcome(folder.path(), &run);
+        assert!(done.status.success(), "{done:?}");
+        files(&folder.path().join(threads))
+    };
+    let one = of("1");
+    assert_eq!(one.len(), count());
+    let findings = String::from_utf8_lossy(&one["findings.json"]);
+    assert!(
+        findings.contains("general solver on the edges"),
+        "{findings}"
+    );
+    for threads in ["2", "4"] {
+        let other = of(threads);
+        let names = one.keys().filter(|name| one.get(*name) != other.get(*name));
+        let names: Vec<&String> = names.collect();
+        assert!(
+            names.is_empty() && other.len() == one.len(),
+            "{threads}: {names:?}"
+        );
+    }
+}
+
 #[test]
 fn a_second_run_replaces_the_files_of_the_first() {
     let folder = folder();

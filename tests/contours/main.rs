@@ -7,6 +7,7 @@
     reason = "what tests share fails loudly too"
 )]
 
+mod bends;
 mod fields;
 mod outlines;
 mod properties;

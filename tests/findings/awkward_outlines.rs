@@ -16,6 +16,10 @@ type Line<'a> = &'a [(f64, f64)];
 
 /// A plan of rivers (with a stage) and barriers around wells of 800 m³/d.
 fn plan(rivers: &[(Line<'_>, f64)], barriers: &[Line<'_>], wells: Line<'_>) -> Plan {
+    read(&text(rivers, barriers, wells))
+}
+
+fn text(rivers: &[(Line<'_>, f64)], barriers: &[Line<'_>], wells: Line<'_>) -> String {
     let mut text = "title = \"Awkward\"\ncrs = { origin = [14.0, 52.0] }\nunits = \"metric\"\n\
                     [aquifer]\ntransmissivity = 500.0\nroof = 10.0\n"
         .to_owned();
@@ -42,7 +46,12 @@ fn plan(rivers: &[(Line<'_>, f64)], barriers: &[Line<'_>], wells: Line<'_>) -> P
         )
         .expect("text");
     }
-    let mut plan = Plan::from_text("plan.toml", &text, Path::new(".")).expect("a plan");
+    text
+}
+
+/// A plan's text, its wells made thin.
+fn read(text: &str) -> Plan {
+    let mut plan = Plan::from_text("plan.toml", text, Path::new(".")).expect("a plan");
     // Thinner than a plan may say, to come near to an edge.
     for well in &mut plan.site.wells {
         well.radius = Length::from_si(0.0004);
@@ -148,6 +157,92 @@ fn an_island_that_all_but_touches_a_river_is_solved_within_the_bound() {
         &plan,
         &[(100.0, 14.45), (0.0, 10.0), (0.0, 161.0), (400.0, 300.0)],
     );
+}
+
+#[test]
+fn a_well_a_millimetre_from_a_bent_river_is_solved_within_the_bound() {
+    let river = [(-900.0, 40.0), (0.0, 0.0), (900.0, 130.0)];
+    // 1 mm along the normal of the second leg is 1.0104 mm upward.
+    let plan = plan(&[(&river, 50.0)], &[], &[(450.0, 65.0010104)]);
+    assert_right(&plan, &[(450.0, 65.5), (449.9, 65.0), (100.0, 200.0)]);
+}
+
+#[test]
+fn vertices_a_millimetre_apart_are_solved_within_the_bound() {
+    let river = [(-900.0, 40.0), (0.0, 0.0), (0.0008, 0.0006), (900.0, 130.0)];
+    let plan = plan(&[(&river, 50.0)], &[], &[(50.0, 120.0)]);
+    assert_right(&plan, &[(0.001, 0.05), (40.0, 80.0), (-500.0, 700.0)]);
+}
+
+#[test]
+fn two_lakes_that_cross_beside_a_river_are_solved_within_the_bound() {
+    let plan = read(
+        "title = \"Two lakes\"\ncrs = { origin = [14.0, 52.0] }\nunits = \"metric\"\n\
+         [aquifer]\ntransmissivity = 500.0\nroof = 10.0\n\
+         [[river]]\nname = \"R0\"\nline = [[-900.0, 40.0], [0.0, 0.0], [900.0, 130.0]]\nstage = 50.0\n\
+         [[river]]\nname = \"L0\"\ncircle = { centre = [0.0, 300.0], radius = 100.0 }\nstage = 50.4\n\
+         [[river]]\nname = \"L1\"\ncircle = { centre = [160.0, 300.0], radius = 100.0 }\nstage = 50.4\n\
+         [[well]]\nname = \"W0\"\nat = [80.0, 450.0]\npumping = 800.0\nradius = 0.2\n",
+    );
+    // The lakes' shores meet at (80, 360) and (80, 240).
+    let places = [
+        (80.0, 360.01),
+        (80.0, 361.0),
+        (80.0, 239.0),
+        (-200.0, 200.0),
+        (0.0, 199.9),
+    ];
+    assert_right(&plan, &places);
+}
+
+#[test]
+fn rivers_and_barriers_that_touch_themselves_are_refused_with_the_place() {
+    let loops = [
+        [
+            (-900.0, 0.0),
+            (0.0, 0.0),
+            (200.0, 200.0),
+            (-200.0, 200.0),
+            (0.0, 0.0),
+            (900.0, 50.0),
+        ],
+        // A vertex on an earlier leg.
+        [
+            (-900.0, 0.0),
+            (300.0, 0.0),
+            (200.0, 200.0),
+            (0.0, 0.0),
+            (-100.0, 300.0),
+            (900.0, 350.0),
+        ],
+    ];
+    for (line, sides) in loops
+        .iter()
+        .zip(["side 1 meets side 4", "side 1 meets side 3"])
+    {
+        for text in [
+            text(&[(line, 50.0)], &[], &[(0.0, 500.0)]),
+            text(&[], &[line], &[(0.0, 500.0)]),
+        ] {
+            let faults = Plan::from_text("plan.toml", &text, Path::new("."));
+            let faults = faults.expect_err("a refusal").to_string();
+            assert!(faults.contains("crosses or touches itself"), "{faults}");
+            assert!(faults.contains(sides), "{faults}");
+        }
+    }
+}
+
+#[test]
+fn rivers_that_lie_on_one_another_are_refused_with_both_names() {
+    let (upper, lower) = (
+        [(-900.0, 40.0), (0.0, 0.0), (400.0, 80.0)],
+        [(200.0, 40.0), (600.0, 120.0), (900.0, 0.0)],
+    );
+    let plan = plan(&[(&upper, 50.0), (&lower, 49.0)], &[], &[(50.0, 300.0)]);
+    let refusals = solved(&plan, ASKED_M).err().expect("a refusal");
+    let text = refusals[0].to_string();
+    assert!(text.contains("R0") && text.contains("R1"), "{text}");
+    assert!(text.contains("lie on one another"), "{text}");
 }
 
 #[test]

@@ -8,9 +8,11 @@
 )]
 
 mod accuracy;
+mod ambient_flow;
 mod awkward_outlines;
 mod exchange;
 mod inflow;
+mod near_edges;
 mod plans;
 mod remedies;
 mod roof;

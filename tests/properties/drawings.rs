@@ -145,7 +145,7 @@ impl Setting {
         Complex64::new(x.dot(&gradient), y.dot(&gradient))
     }
 
-    fn anisotropy(&self) -> Option<Anisotropy> {
+    pub fn anisotropy(&self) -> Option<Anisotropy> {
         if self.ratio == 1.0 {
             return None;
         }

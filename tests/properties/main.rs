@@ -14,6 +14,7 @@
 //! | `motions` | moving, turning, mirroring and enlarging carry the answer along |
 //! | `rims` | the level in a well does not depend on where in its rim one looks |
 //! | `contours` | contours never cross and lie on their level |
+//! | `bends` | all of these in outlines without a closed form, within the bound |
 //! | `solvers` | closed forms and the general solver agree within its bound |
 //! | `texts` | a plan as text, in either unit, says the same |
 //!
@@ -31,6 +32,8 @@
 
 mod balance;
 mod barriers;
+mod bends;
+mod bent_drawings;
 mod clogged_banks;
 mod contours;
 mod drawings;

@@ -63,6 +63,10 @@ impl Case {
                 let (river, well) = parts();
                 field.inflow_m3_d(self.edge(river), self.well(well))
             }
+            "exchange" => {
+                let inflow = field.ambient_inflow_m3_d(self.edge(name));
+                inflow.unwrap_or_else(|| panic!("{}: no exchange of {name}", self.name))
+            }
             kind => panic!("no kind {kind}"),
         }
     }
@@ -72,10 +76,11 @@ impl Case {
     /// as much, so an inflow by T δ; ten times that near corners.
     fn tolerance(&self, row: &Row) -> f64 {
         let bound_m = self.field.error_bound_m();
-        let ours = if row.text("kind").starts_with("inflow") {
-            10.0 * self.plan.site.aquifer.transmissivity.si() * bound_m
-        } else {
-            bound_m
+        let ours = match row.text("kind") {
+            "inflow" | "inflow_by_well" | "exchange" => {
+                10.0 * self.plan.site.aquifer.transmissivity.si() * bound_m
+            }
+            _ => bound_m,
         };
         row.number("accuracy") + ours
     }
@@ -133,6 +138,16 @@ fn a_river_of_bends_from_infinity_to_infinity_agrees_with_least_squares() {
 #[test]
 fn a_river_and_a_barrier_that_both_reach_infinity_agree_with_least_squares() {
     agrees_with_its_table("quarry_bend");
+}
+
+#[test]
+fn a_flow_from_afar_square_to_a_bent_river_agrees_with_least_squares() {
+    agrees_with_its_table("withy_reach");
+}
+
+#[test]
+fn a_flow_from_afar_along_a_bent_barrier_to_a_bent_river_agrees_with_least_squares() {
+    agrees_with_its_table("crag_side");
 }
 
 #[test]

@@ -241,6 +241,23 @@ impl Green for General {
         share.unwrap_or(0.0)
     }
 
+    /// One sum over the sides for all wells.
+    fn superposed_gradient(&self, sources: &[Source], at: Complex64) -> Complex64 {
+        let mut weights = vec![0.0; self.poles.len() + 1];
+        let mut of_strangers = Complex64::ZERO;
+        for source in sources {
+            let problem = self.problem_of(source.pole);
+            match problem.and_then(|problem| weights.get_mut(problem)) {
+                Some(weight) => *weight += source.strength_m,
+                None => of_strangers += source.strength_m * self.gradient(at, source.pole),
+            }
+        }
+        if self.near(at) != at {
+            return of_strangers;
+        }
+        of_strangers + self.solution.gradient(&self.solution.sum(&weights), at)
+    }
+
     fn superpose(&self, sources: &[Source], points: &[Complex64], sums: &mut [f64]) {
         let mut weights = vec![0.0; self.poles.len() + 1];
         let mut poles = Vec::with_capacity(sources.len());

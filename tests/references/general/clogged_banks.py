@@ -157,7 +157,7 @@ def box():
     shares = lambda x, y: {"silted Ketter": domain.west_share(x, y), "mill race": 1 - domain.west_share(x, y)}
     wells = wells_of(plan)
     rows = superposed(at, wells, plan.transmissivity, domain.ambient, domain.green, 1e-12)
-    write("clogged_box", rows + inflows(wells, shares, 1e-10))
+    return "clogged_box", rows + inflows(wells, shares, 1e-10)
 
 
 def strip():
@@ -172,8 +172,8 @@ def strip():
     assert_bank(domain, lambda x, y: domain.green(x, y, 170.0, 40.0), [mp.mpf(60)])
     shares = lambda x, y: {"silted Ketter": domain.west_share(x, y), "east canal": 1 - domain.west_share(x, y)}
     rows = superposed(at, wells, mp.mpf(400), domain.ambient, domain.green, 1e-12)
-    write("clogged_strip", rows + inflows(wells, shares, 1e-10))
     mp.mp.dps = 30
+    return "clogged_strip", rows + inflows(wells, shares, 1e-10)
 
 
 def half_plane():
@@ -186,10 +186,15 @@ def half_plane():
           ("behind", 700.0, -300.0), ("far", 9000.0, 4000.0), ("1 m from KE-1", 201.0, 0.0)]
     wells = wells_of(plan)
     rows = superposed(at, wells, plan.transmissivity, domain.ambient, domain.green, 1e-12)
-    write("clogged_bank", rows + inflows(wells, lambda x, y: {"silted Ketter": mp.mpf(1)}, 1e-10))
+    return "clogged_bank", rows + inflows(wells, lambda x, y: {"silted Ketter": mp.mpf(1)}, 1e-10)
+
+
+def tables():
+    yield box()
+    yield strip()
+    yield half_plane()
 
 
 if __name__ == "__main__":
-    box()
-    strip()
-    half_plane()
+    for made in tables():
+        write(*made)

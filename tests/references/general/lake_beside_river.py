@@ -109,9 +109,14 @@ def table(name, kind):
         return {edge.name: 1 - share, lake.name: share}
 
     rows = superposed(at, wells, plan.transmissivity, ambient, annulus.green, ACCURACY)
-    write(name, rows + inflows(wells, shares, 1e-10))
+    return name, rows + inflows(wells, shares, 1e-10)
+
+
+def tables():
+    yield table("heron_bank", "river")
+    yield table("heron_dyke", "barrier")
 
 
 if __name__ == "__main__":
-    table("heron_bank", "river")
-    table("heron_dyke", "barrier")
+    for made in tables():
+        write(*made)

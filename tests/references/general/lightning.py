@@ -1,6 +1,6 @@
 """Heads of a plan by least squares with analytic functions.
 
-The head is a known part (wells, recharge, jumps of stage) plus the real part of
+The head is a known part (wells, recharge, jumps of stage, uniform flow far away) plus the real part of
 an analytic function f = head + i stream, and f is a sum of
 
 - simple poles clustered exponentially at the corners (Gopal & Trefethen 2019,
@@ -48,6 +48,7 @@ class Stretch:
     ends: tuple  # corner numbers or None
     length_along: np.ndarray  # metres along the edge: for recharge
     gaps: dict  # corner number -> w - w of the corner, without cancellation
+    flow: np.ndarray | float = 0.0  # head + i stream of the uniform flow; on half-lines the part that is constant
 
 
 class Plane:
@@ -184,6 +185,9 @@ class Field:
         jump = 0.0
         if before.condition == "head" and after.condition == "head":
             jump = before.stages[1] - after.stages[0]
+            if before.end is None:
+                # What the uniform flow rises by from one half-line to the other.
+                jump -= (self.plan.flow.conjugate() * (before.start - after.end)).real
         reach = self.reach(w, outside)
         kinds = (before.condition, after.condition)
         return Corner(w, outside, angle, kinds, reach, jump)
@@ -293,8 +297,9 @@ class Field:
             weight = np.minimum(1.0, np.sqrt(near / (0.05 * edge.length)))
         origin = edge.end if edge.start is None else edge.start
         along = ((z - origin) * edge.heading.conjugate()).real
+        flow = self.plan.flow.conjugate() * (z if edge.length < math.inf else np.full(z.shape, origin))
         return Stretch(z, self.plane.to_w(z), normal, edge.condition, edge.name, edge.stage_at(z), edge.skin,
-                       weight, ends, along, gaps)
+                       weight, ends, along, gaps, flow)
 
     # --- functions ----------------------------------------------------------
 
@@ -468,13 +473,13 @@ class Field:
                 a_re, a_im = v.imag, v.real
                 log_columns = [args[("log", j), i] for j in range(len(logs))]
                 matrix[rows, 2 * count - 1 + len(logs) + chain_of[i]] = -1.0
-                right[rows, 0] = self.recharge_stream(stretches, runs[chain_of[i]], i) - jump.imag
+                right[rows, 0] = self.recharge_stream(stretches, runs[chain_of[i]], i) - jump.imag - np.imag(s.flow)
                 for j in range(len(wells)):
                     right[rows, 1 + j] = args[("well", j), i] / TAU
             elif s.condition == "head":
                 a_re, a_im = v.real, -v.imag
                 log_columns = [log_part(a, b) for a, b in logs]
-                right[rows, 0] = s.stage - known - jump.real
+                right[rows, 0] = s.stage - known - jump.real - np.real(s.flow)
                 for j, at in enumerate(wells):
                     right[rows, 1 + j] = log_part(at, None) / TAU
             else:
@@ -483,7 +488,8 @@ class Field:
                 robin_log = lambda a, b: log_part(a, b) + s.skin * (log_slope(a, b) * turn[:, 0]).real
                 log_columns = [robin_log(a, b) for a, b in logs]
                 right[rows, 0] = (s.stage - known - s.skin * known_slope - jump.real
-                                  - s.skin * (jump_slope * turn[:, 0]).real)
+                                  - s.skin * (jump_slope * turn[:, 0]).real
+                                  - np.real(s.flow) - s.skin * (plan.flow.conjugate() * s.normal).real)
                 for j, at in enumerate(wells):
                     right[rows, 1 + j] = robin_log(at, None) / TAU
             matrix[rows, :count] = a_re
@@ -532,7 +538,7 @@ class Field:
                                     for a, b in logs], axis=1)
         harmonic = columns @ self.solution[: columns.shape[1]]
         jump, _ = self.jump_terms(w)
-        ambient = harmonic[:, 0] + jump.real
+        ambient = harmonic[:, 0] + jump.real + (self.plan.flow.conjugate() * z).real
         if self.plan.recharge:
             ambient = ambient - self.plan.recharge / self.plan.transmissivity / 4 * np.abs(z - self.plane.middle) ** 2
         wells = [self.plane.to_w(well.at) for well in self.plan.wells]
@@ -558,13 +564,31 @@ class Field:
 
     def shares(self):
         """Share of each well's water by river: name -> array over wells."""
-        wells = [self.plane.to_w(well.at) for well in self.plan.wells]
+        shares = {name: np.zeros(len(self.plan.wells)) for name in self.plan.rivers()}
+        for stretch, rise in self.stream_rises():
+            shares[stretch.name] -= rise[1:]
+        return shares
+
+    def exchanges(self):
+        """What rivers give before pumping over transmissivity, metres: name -> value,
+        of those without a jump of the stage; none under recharge."""
+        found = {}
+        if self.plan.recharge:
+            return found
+        for stretch, rise in self.stream_rises():
+            corners = [self.corners[end] for end in stretch.ends if end is not None]
+            is_known = np.isfinite(rise[0]) and not any(corner.jump for corner in corners)
+            found.setdefault(stretch.name, []).append(rise[0] if is_known else None)
+        return {name: sum(parts) for name, parts in found.items() if None not in parts}
+
+    def stream_rises(self):
+        """Rise of the stream function along each stretch of river, aquifer on the left:
+        before pumping (infinite on half-lines that the flow crosses), and of each G."""
+        plane, rises = self.plane, []
+        wells = [plane.to_w(well.at) for well in self.plan.wells]
         logs = self.logarithms()
-        shares = {name: np.zeros(len(wells)) for name in self.plan.rivers()}
-        stretches = self.sample(8)
         corners = [corner.w for corner in self.corners]
-        solution = self.solution
-        for s in stretches:
+        for s in self.sample(8):
             if s.condition == "flow":
                 continue
             closed = s.ends[0] is None
@@ -573,11 +597,18 @@ class Field:
             values, _ = self.functions(ends)
             count = values.shape[1]
             stream = np.concatenate([values.imag, values.real[:, 1:]], axis=1)
-            rise = (stream[1] - stream[0]) @ solution[: 2 * count - 1, 1:]
+            rise = (stream[1] - stream[0]) @ self.solution[: 2 * count - 1]
             turn = lambda a: (lambda angles: angles[-1] - angles[0])(np.unwrap(np.angle(path - a)))
             for j, (a, b) in enumerate(logs):
-                rise = rise + (turn(a) - (0 if b is None else turn(b))) * solution[2 * count - 1 + j, 1:]
-            rise = rise - np.array([turn(at) for at in wells]) / TAU
+                rise = rise + (turn(a) - (0 if b is None else turn(b))) * self.solution[2 * count - 1 + j]
+            rise[1:] -= np.array([turn(at) for at in wells]) / TAU
+            with np.errstate(divide="ignore", invalid="ignore"):
+                rise[0] += np.diff(self.jump_terms(ends)[0].imag)[0]
+                rise[0] += math.inf if self.plan.flow and 0 in ends else self.flow_rise(plane.to_z(ends))
             # Circles are sampled counterclockwise: the aquifer is on their right.
-            shares[s.name] += rise if closed else -rise
-        return shares
+            rises.append((s, -rise if closed else rise))
+        return rises
+
+    def flow_rise(self, ends):
+        """What the stream function of the uniform flow rises by between two places."""
+        return (self.plan.flow.conjugate() * (ends[1] - ends[0])).imag if self.plan.flow else 0.0

@@ -72,6 +72,7 @@ class Plan:
     islands: list[list[Edge]] = field(default_factory=list)
     lakes: list[Circle] = field(default_factory=list)
     wells: list[Well] = field(default_factory=list)
+    flow: complex = 0j  # dh/dx + i dh/dy far away
 
     @property
     def is_open(self):
@@ -148,9 +149,29 @@ def left_of(chain, place):
     return turn > 0
 
 
+def stated_flow(table):
+    """dh/dx + i dh/dy of [ambient]; `toward` is clockwise from north."""
+    ambient = table.get("ambient", {})
+    toward = math.radians(ambient.get("toward", 0.0))
+    return -ambient.get("gradient", 0.0) * complex(math.sin(toward), math.cos(toward))
+
+
+def along_edges(flow, chain):
+    """The part of a flow that goes on far away: square to half-lines of rivers,
+    along those of barriers. Rounding of the azimuth must not count there."""
+    axes = [edge.heading * (1j if edge.kind == "river" else 1) for edge in (chain[0], chain[-1])]
+    assert abs((axes[0].conjugate() * axes[1]).imag) < 1e-12, "no flow goes on along both half-lines"
+    part = axes[0] * (axes[0].conjugate() * flow).real
+    assert abs(part - flow) < 1e-9 * abs(flow), "the flow does not go on far away"
+    return part
+
+
 def read(path):
-    with open(path, "rb") as file:
-        table = tomllib.load(file)
+    return read_text(path.read_text(encoding="utf-8"))
+
+
+def read_text(text):
+    table = tomllib.loads(text)
     aquifer = table["aquifer"]
     conductivity = aquifer.get("conductivity", math.nan)
     transmissivity = aquifer.get("transmissivity", conductivity * aquifer.get("thickness", math.nan))
@@ -172,6 +193,9 @@ def read(path):
         if abs(ring[0].start - ring[-1].end) > JOIN:
             ring = with_half_lines(ring)
             plan.outer = ring if left_of(ring, wells[0].at) else turned(ring)
+    flow = stated_flow(table)
+    if flow:
+        plan.flow = along_edges(flow, plan.outer)
     closed = [ring for ring in rings if abs(ring[0].start - ring[-1].end) < JOIN]
     closed.sort(key=lambda ring: -abs(area(ring)))
     if not plan.outer and closed:

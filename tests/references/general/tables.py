@@ -1,4 +1,4 @@
-"""Writes the tables: kind, name, x, y, value, accuracy."""
+"""Writes the tables: kind, name, x, y, value, accuracy; compares them with the committed ones."""
 
 import csv
 import pathlib
@@ -10,6 +10,22 @@ COLUMNS = ["kind", "name", "x", "y", "value", "accuracy"]
 def text(value):
     """Shortest decimal that reads back as the same double."""
     return value if isinstance(value, str) else repr(float(value))
+
+
+def differences(name, rows):
+    """Where new rows differ from the committed table by more than its accuracy."""
+    with open(HERE / f"{name}.csv", newline="", encoding="utf-8") as file:
+        committed = [(*row[:4], float(row[4]), float(row[5])) for row in list(csv.reader(file))[1:]]
+    if len(committed) != len(rows):
+        return [f"{name}: {len(rows)} rows computed, {len(committed)} committed"]
+    found = []
+    for new, old in zip(rows, committed):
+        what, value = tuple(map(text, new[:4])), float(new[4])
+        # Written as doubles, values differ in their last digits at least.
+        allowed = max(old[5], 1e-13 * abs(old[4]))
+        if what != old[:4] or not abs(value - old[4]) <= allowed:
+            found.append(f"{name}: computed {what} {value!r}, committed {old}")
+    return found
 
 
 def write(name, rows):
