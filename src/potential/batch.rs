@@ -1,7 +1,8 @@
 //! Sums over many places at once, through local expansions.
 //!
 //! Places are gathered in boxes. Panels and poles more than [`FAR`] radii from
-//! a box are summed into one Taylor series around its centre c,
+//! a box, all of whose places see their nodes as points, are summed into one
+//! Taylor series around its centre c,
 //!
 //! > Σ q ln(x − y) = Σ q ln(y − c) − Σₙ 1/n · ((x − c)/R)ⁿ Σ q (R/(y − c))ⁿ,
 //!
@@ -11,8 +12,9 @@
 use num_complex::Complex64;
 use rayon::prelude::*;
 
-use super::kernel::{Effect, FACTOR};
+use super::kernel::{Effect, FACTOR, Source};
 use super::layer::Layer;
+use super::legendre::Rule;
 use super::solve::Solution;
 
 /// Distance, in radii of a box, from which a panel's nodes enter the series.
@@ -26,9 +28,9 @@ const FEW_PLACES: usize = 128;
 
 /// The circle that holds a panel or a box.
 #[derive(Clone, Copy, Debug)]
-struct Circle {
-    centre: Complex64,
-    radius: f64,
+pub(super) struct Circle {
+    pub centre: Complex64,
+    pub radius: f64,
 }
 
 /// A point charge of the sum.
@@ -61,12 +63,12 @@ impl Solution {
         places: &[Complex64],
         sums: &mut [f64],
     ) {
-        let circles = self.panel_circles();
+        let zones = self.near_zones();
         let mut boxes = Vec::new();
         divide(places, (0..places.len()).collect(), &mut boxes);
         let parts: Vec<Vec<f64>> = boxes
             .par_iter()
-            .map(|members| self.values_in_box(layer, poles, &circles, places, members))
+            .map(|members| self.values_in_box(layer, poles, &zones, places, members))
             .collect();
         for (members, values) in boxes.iter().zip(parts) {
             for (index, value) in members.iter().zip(values) {
@@ -77,10 +79,10 @@ impl Solution {
         }
     }
 
-    fn panel_circles(&self) -> Vec<Circle> {
+    fn near_zones(&self) -> Vec<NearZone> {
         let sources = self.system.sources.iter();
         sources
-            .map(|source| circle_of(&source.nodes, 1.1))
+            .map(|source| NearZone::of(source, &self.system.mesh.rule))
             .collect()
     }
 
@@ -88,7 +90,7 @@ impl Solution {
         &self,
         layer: &Layer,
         poles: &[RimmedPole],
-        circles: &[Circle],
+        zones: &[NearZone],
         places: &[Complex64],
         members: &[usize],
     ) -> Vec<f64> {
@@ -96,44 +98,14 @@ impl Solution {
             .iter()
             .filter_map(|index| places.get(*index).copied())
             .collect();
-        let here = circle_of(&places, 1.0);
-        let rule = &self.system.mesh.rule;
-        let mut series = Series::new(here);
-        let mut near = Vec::new();
-        let blocks = layer.densities.chunks(rule.order());
-        for ((source, circle), block) in self.system.sources.iter().zip(circles).zip(blocks) {
-            if series.is_far(circle) {
-                let nodes = source.nodes.iter().zip(&rule.weights).zip(block);
-                for ((node, weight), density) in nodes {
-                    series.add(Charge {
-                        at: *node,
-                        factor: FACTOR * weight * density,
-                    });
-                }
-            } else {
-                near.push((source, block));
-            }
-        }
-        let mut near_poles = Vec::new();
-        for pole in poles {
-            let circle = Circle {
-                centre: pole.at,
-                radius: pole.rim_m,
-            };
-            if series.is_far(&circle) {
-                series.add(Charge {
-                    at: pole.at,
-                    factor: FACTOR * pole.strength,
-                });
-            } else {
-                near_poles.push(pole);
-            }
-        }
+        let mut series = Series::new(circle_of(&places, 1.0));
+        let near = self.split_panels(layer, zones, &places, &mut series);
+        let near_poles = split_poles(poles, &mut series);
         let mut effect = Effect::NONE;
         let value = |x: &Complex64| {
             let mut sum = series.value(*x) + self.smooth_value(layer, *x);
             for (source, block) in &near {
-                source.at(rule, *x, &mut effect);
+                source.at(&self.system.mesh.rule, *x, &mut effect);
                 let parts = effect.values.iter().zip(*block);
                 sum += parts.map(|(value, density)| value * density).sum::<f64>();
             }
@@ -145,6 +117,108 @@ impl Solution {
         };
         places.iter().map(value).collect()
     }
+
+    /// Enters the panels far from all places into a series; returns the others.
+    fn split_panels<'a>(
+        &'a self,
+        layer: &'a Layer,
+        zones: &[NearZone],
+        places: &[Complex64],
+        series: &mut Series,
+    ) -> Vec<(&'a Source, &'a [f64])> {
+        let rule = &self.system.mesh.rule;
+        let mut near = Vec::new();
+        let mut panels = self.system.sources.iter().zip(zones);
+        let mut blocks = layer.densities.chunks(rule.order());
+        let stretches = self.system.mesh.stretches.iter().zip(&self.system.hubs);
+        for ((stretch, hub), at_hub) in stretches.zip(&layer.at_hubs) {
+            let count = stretch.panels.len();
+            let here = panels.by_ref().take(count).zip(blocks.by_ref().take(count));
+            match hub.as_ref().filter(|hub| series.is_far(&hub.near_zone())) {
+                Some(hub) => {
+                    series.add_nodes(&hub.source, &self.system.hub_rule, at_hub);
+                    here.for_each(drop);
+                }
+                None => {
+                    for ((source, zone), block) in here {
+                        match zone.seen_from(source, rule, series, places) {
+                            Seen::AsPoints => series.add_nodes(source, rule, block),
+                            Seen::AsFinePoints => series.add_fine_nodes(source, rule, block),
+                            Seen::Near => near.push((source, block)),
+                        }
+                    }
+                }
+            }
+        }
+        near
+    }
+}
+
+/// How the places of a box see a panel.
+enum Seen {
+    /// As its nodes.
+    AsPoints,
+    /// As the nodes of the finer rule.
+    AsFinePoints,
+    /// Place by place.
+    Near,
+}
+
+/// Where places do not see a panel's nodes as points.
+enum NearZone {
+    /// Within the first circle; nor those of the finer rule within the second.
+    Circles([Circle; 2]),
+    /// Somewhere around the panel, whose nodes lie in this circle.
+    Unknown(Circle),
+}
+
+impl NearZone {
+    fn of(source: &Source, rule: &Rule) -> Self {
+        match source.near_circles(rule) {
+            Some((centre, radii)) => Self::Circles(radii.map(|radius| Circle { centre, radius })),
+            None => Self::Unknown(circle_of(&source.nodes, 1.1)),
+        }
+    }
+
+    /// How a box's places see the panel, where the series around it takes it.
+    fn seen_from(
+        &self,
+        source: &Source,
+        rule: &Rule,
+        series: &Series,
+        places: &[Complex64],
+    ) -> Seen {
+        match self {
+            Self::Circles([points, _]) if series.is_far(points) => Seen::AsPoints,
+            Self::Circles([_, fine]) if series.is_far(fine) => Seen::AsFinePoints,
+            Self::Unknown(circle)
+                if series.is_far(circle) && places.iter().all(|x| source.is_far_from(rule, *x)) =>
+            {
+                Seen::AsPoints
+            }
+            _ => Seen::Near,
+        }
+    }
+}
+
+/// Enters the poles far from a box into its series; returns the others.
+fn split_poles<'a>(poles: &'a [RimmedPole], series: &mut Series) -> Vec<&'a RimmedPole> {
+    let mut near = Vec::new();
+    for pole in poles {
+        let circle = Circle {
+            centre: pole.at,
+            radius: pole.rim_m,
+        };
+        if series.is_far(&circle) {
+            series.add(Charge {
+                at: pole.at,
+                factor: FACTOR * pole.strength,
+            });
+        } else {
+            near.push(pole);
+        }
+    }
+    near
 }
 
 /// A Taylor series of far charges around the centre of a box.
@@ -161,9 +235,33 @@ impl Series {
         }
     }
 
+    /// Whether all of a circle is far from the box, and all of the box outside it.
     fn is_far(&self, circle: &Circle) -> bool {
         let distance = (circle.centre - self.circle.centre).norm() - circle.radius;
         distance > FAR * self.circle.radius && distance > 0.0
+    }
+
+    /// Adds the nodes of a panel's finer rule as points.
+    fn add_fine_nodes(&mut self, source: &Source, rule: &Rule, densities: &[f64]) {
+        for (node, weights) in source.fine_nodes.iter().zip(&rule.fine_weights) {
+            let parts = weights.iter().zip(densities);
+            let charge: f64 = parts.map(|(weight, density)| weight * density).sum();
+            self.add(Charge {
+                at: *node,
+                factor: FACTOR * charge,
+            });
+        }
+    }
+
+    /// Adds a panel's nodes as points.
+    fn add_nodes(&mut self, source: &Source, rule: &Rule, densities: &[f64]) {
+        let nodes = source.nodes.iter().zip(&rule.weights).zip(densities);
+        for ((node, weight), density) in nodes {
+            self.add(Charge {
+                at: *node,
+                factor: FACTOR * weight * density,
+            });
+        }
     }
 
     fn add(&mut self, charge: Charge) {

@@ -7,6 +7,7 @@
 
 use num_complex::Complex64;
 
+use super::batch::Circle;
 use super::kernel::Source;
 use super::legendre::Rule;
 use super::mesh::Stretch;
@@ -62,6 +63,14 @@ impl Hub {
     /// Whether a place sees the side as these charges.
     pub fn is_far(&self, x: Complex64) -> bool {
         (x - self.centre).norm_sqr() >= self.far_squared
+    }
+
+    /// The circle outside which it is far.
+    pub fn near_zone(&self) -> Circle {
+        Circle {
+            centre: self.centre,
+            radius: self.far_squared.sqrt(),
+        }
     }
 
     /// For each node of the side, the density that it makes at each node here.

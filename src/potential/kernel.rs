@@ -7,14 +7,14 @@
 //! > ln|x − y| = Σ ln|ωⱼ u(x)^(1/m) − w| + ln|a − c x| − ln|c u + d|,
 //!
 //! summed over the m roots ωⱼ of one. Where all the roots are far from the
-//! panel its nodes count as points; near it the density's polynomial is
-//! integrated in closed form, so that nothing is lost right up to the panel.
+//! panel its nodes count as points, nearer those of a finer rule; beside it the
+//! density's polynomial is integrated in closed form, so that nothing is lost right up to the panel.
 
 use std::f64::consts::{FRAC_1_PI, TAU};
 
 use num_complex::Complex64;
 
-use super::legendre::{MOST_NODES, Rule, ellipse};
+use super::legendre::{FINE_FAR, MOST_NODES, Rule, ellipse};
 use super::panel::{Panel, Place};
 use super::region::Condition;
 
@@ -27,6 +27,8 @@ pub(super) struct Source {
     pub panel: Panel,
     /// Its nodes.
     pub nodes: Vec<Complex64>,
+    /// The nodes of the finer rule.
+    pub fine_nodes: Vec<Complex64>,
     /// ln|c u + d| − m ln h at each node.
     offsets: Vec<f64>,
     /// The m roots of one.
@@ -64,6 +66,9 @@ impl Source {
         Self {
             panel: *panel,
             nodes: parameters.iter().map(|&u| panel.curve.at(u)).collect(),
+            fine_nodes: (rule.fine_nodes.iter())
+                .map(|&t| panel.curve.at(panel.u(t)))
+                .collect(),
             offsets: parameters.iter().map(offset).collect(),
             roots: (0..panel.power).map(root).collect(),
             far_parameter: (panel.middle + far_radius * panel.half).powf(power),
@@ -103,29 +108,66 @@ impl Source {
             return;
         }
         let root = self.panel.root(u);
-        if self.is_far(rule, root) {
+        let nearest = self.nearest(rule, root);
+        if nearest >= rule.far {
             self.as_points(rule, x, effect);
+        } else if nearest >= FINE_FAR {
+            self.as_fine_points(rule, x, effect);
         } else {
             self.as_polynomials(rule, x, u, root, effect);
         }
     }
 
-    /// Whether a place sees the nodes as points.
-    pub fn is_far(&self, rule: &Rule, root: Complex64) -> bool {
-        let principal = self.local(root);
-        let norm = principal.norm_sqr();
-        if norm >= self.far_radius * self.far_radius || !norm.is_finite() {
-            return true;
+    /// The centre of circles outside which places see the nodes as points, and
+    /// those of the finer rule, with their radii; none where the side is not
+    /// straight between two places.
+    pub fn near_circles(&self, rule: &Rule) -> Option<(Complex64, [f64; 2])> {
+        let (panel, curve) = (&self.panel, &self.panel.curve);
+        if curve.c().norm() > 0.0 {
+            return None;
         }
-        let is_far = |turn: &Complex64| ellipse(self.local(root * turn)) >= rule.far;
-        self.roots.iter().all(is_far)
+        let length = (curve.at(1.0) - curve.at(0.0)).norm();
+        // An ellipse of ρ lies within a circle of half of ρ + 1/ρ.
+        let reaches = [rule.far, FINE_FAR].map(|rho| 0.5 * (rho + 1.0 / rho) * panel.half);
+        let circles = if panel.power == 1 {
+            (curve.at(panel.middle), reaches.map(|reach| reach * length))
+        } else {
+            let power = panel.power.cast_signed();
+            let parameters = reaches.map(|reach| (panel.middle + reach).powi(power));
+            (
+                curve.at(0.0),
+                parameters.map(|parameter| parameter * length),
+            )
+        };
+        Some(circles)
+    }
+
+    /// Whether a place anywhere in the region sees the nodes as points.
+    pub fn is_far_from(&self, rule: &Rule, x: Complex64) -> bool {
+        let u = self.panel.curve.parameter(x);
+        u.norm_sqr() >= self.far_parameter * self.far_parameter
+            || self.nearest(rule, self.panel.root(u)) >= rule.far
+    }
+
+    /// The least ρ of a place's roots, or some number beyond the rule's far one.
+    fn nearest(&self, rule: &Rule, root: Complex64) -> f64 {
+        let norm = self.local(root).norm_sqr();
+        if norm >= self.far_radius * self.far_radius || !norm.is_finite() {
+            return rule.far;
+        }
+        let turned = self
+            .roots
+            .iter()
+            .map(|turn| ellipse(self.local(root * turn)));
+        turned.fold(rule.far, f64::min)
     }
 
     fn local(&self, root: Complex64) -> Complex64 {
         (root - self.panel.middle) / self.panel.half
     }
 
-    fn as_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
+    /// The effect of its nodes as points.
+    pub fn as_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
         let slots = effect.values.iter_mut().zip(&mut effect.slopes);
         for ((node, weight), (value, slope)) in self.nodes.iter().zip(&rule.weights).zip(slots) {
             let distance = x - node;
@@ -133,6 +175,23 @@ impl Source {
             let factor = FACTOR * weight;
             *value = factor * 0.5 * squared.ln();
             *slope = distance.conj() * (factor / squared);
+        }
+    }
+
+    fn as_fine_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
+        *effect = Effect::NONE;
+        for (node, weights) in self.fine_nodes.iter().zip(&rule.fine_weights) {
+            let distance = x - node;
+            let squared = distance.norm_sqr();
+            let (log, inverse) = (
+                FACTOR * 0.5 * squared.ln(),
+                FACTOR * distance.conj() / squared,
+            );
+            let slots = effect.values.iter_mut().zip(&mut effect.slopes);
+            for (weight, (value, slope)) in weights.iter().zip(slots) {
+                *value += weight * log;
+                *slope += weight * inverse;
+            }
         }
     }
 

@@ -22,6 +22,14 @@ pub(super) const MOST_NODES: usize = 16;
 /// unknowns with others.
 const FEW: usize = 4;
 
+/// Number of nodes of the finer rule.
+const FINE: usize = 24;
+
+/// A place whose ρ exceeds this sees the finer rule's nodes as points: a density of
+/// degree 15 times a logarithm is integrated to 2.4⁻³³ ≈ 3e-13, one of degree 9 to
+/// 2e-15.
+pub(super) const FINE_FAR: f64 = 2.4;
+
 /// A Gauss rule with the tables that panels of its order share.
 #[derive(Clone, Debug)]
 pub(super) struct Rule {
@@ -37,6 +45,10 @@ pub(super) struct Rule {
     pub few_checks: Vec<f64>,
     /// A place whose ρ exceeds this sees the nodes as points, to 1e-15.
     pub far: f64,
+    /// Nodes of a rule of [`FINE`] nodes, for places nearer than that.
+    pub fine_nodes: Vec<f64>,
+    /// For each of them, what a density of one at each node weighs there.
+    pub fine_weights: Vec<Vec<f64>>,
 }
 
 impl Rule {
@@ -49,8 +61,16 @@ impl Rule {
                 .map(|(n, p)| (n as f64 + 0.5) * w * p)
                 .collect::<Vec<_>>()
         });
-        let coefficients = coefficients.collect();
+        let coefficients: Vec<Vec<f64>> = coefficients.collect();
+        let (fine_nodes, weights_there) = gauss(FINE);
+        let fine_weights = fine_nodes.iter().zip(weights_there).map(|(&t, weight)| {
+            let polynomials = polynomials(t, order);
+            let rows = coefficients.iter();
+            rows.map(|row| weight * dot(row, &polynomials)).collect()
+        });
         Self {
+            fine_weights: fine_weights.collect(),
+            fine_nodes,
             checks: between(&nodes),
             few_checks: between(&gauss(FEW).0),
             coefficients,
