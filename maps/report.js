@@ -171,6 +171,9 @@
         }
       });
     }
+    // On a narrow screen the map's middle comes first.
+    const strip = svg.parentElement;
+    strip.scrollLeft = (strip.scrollWidth - strip.clientWidth) / 2;
     figure.classList.add("live");
     figure.querySelector(".controls").hidden = false;
     readout.hidden = false;

@@ -5,7 +5,7 @@
     <UserStyle>
       <Name>river_reaches</Name>
       <Title>What river reaches give</Title>
-      <Abstract>Reaches that give to the wells drawn through, reaches that take broken; labelled with the inflow.</Abstract>
+      <Abstract>Reaches that give to the wells drawn through, reaches that take broken; labelled with the river. SLD 1.0.0 cannot round a number, so the inflow is left to the properties.</Abstract>
       <FeatureTypeStyle>
         <Rule>
           <Name>takes</Name>
@@ -25,7 +25,7 @@
           </LineSymbolizer>
           <TextSymbolizer>
             <Label>
-              <ogc:PropertyName>inflow_m3_per_d</ogc:PropertyName>
+              <ogc:PropertyName>name</ogc:PropertyName>
             </Label>
             <Font>
               <CssParameter name="font-family">DejaVu Sans</CssParameter>
@@ -67,7 +67,7 @@
           </LineSymbolizer>
           <TextSymbolizer>
             <Label>
-              <ogc:PropertyName>inflow_m3_per_d</ogc:PropertyName>
+              <ogc:PropertyName>name</ogc:PropertyName>
             </Label>
             <Font>
               <CssParameter name="font-family">DejaVu Sans</CssParameter>

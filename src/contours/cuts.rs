@@ -7,10 +7,12 @@
 //! exactly two cuts, and no two such segments can cross, whatever the field
 //! does between nodes.
 //!
-//! A node within a thousandth of the interval (at most 0.1 mm) of a level
-//! counts as lying on it. It is put on the side where most of its neighbours
-//! are: a river whose stage is a level would else be traced by a contour that
-//! weaves with the last digit.
+//! A node of the outline within a thousandth of the interval (at most 0.1 mm)
+//! of a level counts as lying on it. It is put on the side where most of its
+//! neighbours are: a river whose stage is a level would else be traced by a
+//! contour that weaves with the last digit. Nodes inside are taken at their
+//! values: beside a river drawdowns are small far and wide, and the line
+//! between fall and rise would stray there.
 
 use std::collections::BTreeMap;
 
@@ -317,23 +319,20 @@ fn tolerance(levels: &[f64]) -> Result<f64, ContourError> {
     Ok(tolerance)
 }
 
-/// How many levels lie at or below each node; nodes on a level are put where
-/// most of their neighbours are.
+/// How many levels lie at or below each node; nodes of the outline on a level
+/// are put where most of their neighbours are.
 fn classify(mesh: &Mesh, values: &[f64], levels: &[f64], tolerance: f64) -> Vec<u32> {
-    let class = |value: &f64| levels.partition_point(|level| level - tolerance <= *value) as u32;
+    let class = |value: &f64| levels.partition_point(|level| level <= value) as u32;
     let mut classes: Vec<u32> = values.par_iter().map(class).collect();
     let mut undecided = BTreeMap::new();
-    for node in mesh.special.iter().flat_map(|triangle| triangle.nodes) {
-        let (Some(&class), Some(&value)) = (classes.get(node as usize), values.get(node as usize))
-        else {
+    for node in mesh.outline.iter().flat_map(|piece| [piece.from, piece.to]) {
+        let Some(&value) = values.get(node as usize) else {
             continue;
         };
-        let Some(level) = class.checked_sub(1) else {
-            continue;
-        };
-        let reached = levels.get(level as usize);
-        if reached.is_some_and(|reached| value <= reached + tolerance) {
-            undecided.insert(node, level);
+        let next = levels.partition_point(|level| level + tolerance < value);
+        let reached = levels.get(next);
+        if reached.is_some_and(|level| level - tolerance <= value) {
+            undecided.insert(node, next as u32);
         }
     }
     // A corner of a river has neighbours on the river alone: it follows them

@@ -36,7 +36,7 @@ use std::ops::Range;
 use num_complex::Complex64;
 
 use crate::outline::{Axis, Kind, Outline, Shape};
-use crate::site::Site;
+use crate::site::{Flux, Site};
 use chi::chi;
 
 /// Waves that have faded to e^(−40) are left out.
@@ -193,8 +193,8 @@ impl Recharge {
     /// What the reader should know of it.
     pub fn note(&self) -> String {
         format!(
-            "The head before pumping includes the recharge of {} m/d, which the rivers take up.",
-            self.flux_m_d
+            "The head before pumping includes the recharge of {}, which the rivers take up.",
+            Flux::from_si(self.flux_m_d)
         )
     }
 }

@@ -167,7 +167,8 @@ impl<K: PairKernel> WithSimd for Superposition<'_, K> {
             fill(self.kernel, points, self.reference, &mut columns);
             let mut totals = [0.0; BLOCK];
             let groups = S::as_mut_simd_f64s(&mut totals).0;
-            for (index, total) in groups.iter_mut().enumerate() {
+            let filled = points.len().div_ceil(S::F64_LANES);
+            for (index, total) in groups.iter_mut().take(filled).enumerate() {
                 let terms = group::<S, K>(simd, &columns, index);
                 let mut sum = Lanes::splat(simd, 0.0);
                 for (strength, prepared) in self.prepared {

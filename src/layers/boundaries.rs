@@ -2,7 +2,7 @@
 //! aquifer within the map and as far as the plan draws them, with the water they give to the wells.
 //!
 //! One feature a river or barrier, its parts joined; where its parts lie
-//! apart they are several features, each with the whole inflow.
+//! apart they are several features, each with its own inflow.
 
 use super::Planned;
 use super::layer::Layer;
@@ -18,26 +18,74 @@ pub fn layer(planned: &Planned<'_>) -> Layer {
             EdgeKind::River { .. } => "river",
             EdgeKind::Barrier => "barrier",
         };
-        for line in lines(planned, finding.edge) {
+        let parts = parts(planned, finding.edge);
+        let is_whole = parts.len() == 1;
+        for part in parts {
+            let inflow_m3_d = if is_whole {
+                finding.inflow_m3_d()
+            } else {
+                part.inflow_m3_d(planned)
+            };
             let properties = Properties::new(planned.units())
                 .with("name", edge.name.as_str())
                 .with("kind", kind)
-                .rate("inflow", finding.inflow_m3_d());
-            layer.add_line(line, properties);
+                .rate("inflow", inflow_m3_d);
+            layer.add_line(part.line, properties);
         }
     }
     layer
 }
 
-/// The course of an edge within the map: once where two aquifers share it,
-/// in one line where its parts join. An edge that bounds no aquifer is drawn
-/// as the plan gives it.
+/// A part of an edge, in one line.
+struct Part {
+    line: Vec<Point>,
+    pieces: Vec<PieceAt>,
+}
+
+/// Where a piece of an outline stands: its aquifer, side and number there.
+#[derive(Clone, Copy)]
+struct PieceAt {
+    field: usize,
+    side: usize,
+    piece: usize,
+}
+
+impl Part {
+    /// Goes on with another part that begins where this one ends.
+    fn extend(&mut self, mut next: Self, is_reversed: bool) {
+        if is_reversed {
+            next.line.reverse();
+        }
+        self.line.extend(next.line.into_iter().skip(1));
+        self.pieces.extend(next.pieces);
+    }
+
+    /// What it gives to the wells of all its aquifers, m³/d.
+    fn inflow_m3_d(&self, planned: &Planned<'_>) -> f64 {
+        let given = |at: &PieceAt| {
+            let field = planned.solution.fields().get(at.field)?;
+            let piece = field.outline().sides.get(at.side)?.get(at.piece)?;
+            Some(field.inflow_through_m3_d(at.side, &piece.along))
+        };
+        self.pieces.iter().filter_map(given).sum()
+    }
+}
+
+/// The course of an edge within the map, a line a part.
 pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
-    let mut lines: Vec<Vec<Point>> = Vec::new();
+    let parts = parts(planned, edge).into_iter();
+    parts.map(|part| part.line).collect()
+}
+
+/// The parts of an edge within the map: once where two aquifers share it,
+/// in one line where its pieces join. An edge that bounds no aquifer is drawn
+/// as the plan gives it.
+fn parts(planned: &Planned<'_>, edge: usize) -> Vec<Part> {
+    let mut parts: Vec<Part> = Vec::new();
     let mut bounds = false;
     let extent = extent_with(planned, edge);
-    for field in planned.solution.fields() {
-        let outline = field.outline();
+    for (field, solved) in planned.solution.fields().iter().enumerate() {
+        let outline = solved.outline();
         for (side, pieces) in outline.sides.iter().enumerate() {
             let of_edge = pieces
                 .iter()
@@ -45,23 +93,37 @@ pub fn lines(planned: &Planned<'_>, edge: usize) -> Vec<Vec<Point>> {
                 .filter(|(_, piece)| piece.edge == edge);
             for (piece, _) in of_edge {
                 bounds = true;
-                for line in outline.piece_lines(side, piece, extent) {
-                    if line.len() > 1 && !lines.iter().any(|known| same_course(known, &line)) {
-                        lines.push(line);
-                    }
-                }
+                let at = PieceAt { field, side, piece };
+                add(&mut parts, at, outline.piece_lines(side, piece, extent));
             }
         }
     }
     if bounds {
-        joined(lines)
-    } else {
-        planned
-            .solution
-            .site()
-            .edges
-            .get(edge)
-            .map_or(vec![], as_given)
+        return joined(parts);
+    }
+    let given = planned.solution.site().edges.get(edge).map(as_given);
+    let whole = |line| Part {
+        line,
+        pieces: Vec::new(),
+    };
+    given.into_iter().flatten().map(whole).collect()
+}
+
+/// Adds the course of a piece, which the extent may cut into several lines:
+/// its water counts with the first.
+fn add(parts: &mut Vec<Part>, at: PieceAt, lines: Vec<Vec<Point>>) {
+    let mut pieces = vec![at];
+    for line in lines.into_iter().filter(|line| line.len() > 1) {
+        let known = parts
+            .iter_mut()
+            .find(|known| same_course(&known.line, &line));
+        match known {
+            Some(known) => known.pieces.append(&mut pieces),
+            None => parts.push(Part {
+                line,
+                pieces: std::mem::take(&mut pieces),
+            }),
+        }
     }
 }
 
@@ -91,41 +153,34 @@ fn as_given(edge: &Edge) -> Vec<Vec<Point>> {
     }
 }
 
-/// Lines whose ends meet, made one.
-fn joined(mut lines: Vec<Vec<Point>>) -> Vec<Vec<Point>> {
+/// Parts whose ends meet, made one.
+fn joined(mut parts: Vec<Part>) -> Vec<Part> {
     let mut done = Vec::new();
-    while !lines.is_empty() {
-        let mut line = lines.remove(0);
-        while let Some((next, reversed)) = successor(&line, &lines) {
-            let mut more = lines.remove(next);
-            if reversed {
-                more.reverse();
+    while !parts.is_empty() {
+        let mut part = parts.remove(0);
+        for from_its_beginning in [false, true] {
+            if from_its_beginning {
+                part.line.reverse();
             }
-            line.extend(more.into_iter().skip(1));
-        }
-        line.reverse();
-        while let Some((next, reversed)) = successor(&line, &lines) {
-            let mut more = lines.remove(next);
-            if reversed {
-                more.reverse();
+            while let Some((next, is_reversed)) = successor(&part.line, &parts) {
+                part.extend(parts.remove(next), is_reversed);
             }
-            line.extend(more.into_iter().skip(1));
         }
-        done.push(line);
+        done.push(part);
     }
     done
 }
 
-/// The line that begins, or reversed ends, where this one ends.
-fn successor(line: &[Point], lines: &[Vec<Point>]) -> Option<(usize, bool)> {
+/// The part that begins, or reversed ends, where a line ends.
+fn successor(line: &[Point], parts: &[Part]) -> Option<(usize, bool)> {
     let end = *line.last()?;
     if line.first().is_some_and(|&first| near(first, end)) {
         return None;
     }
-    lines.iter().enumerate().find_map(|(index, other)| {
-        if near(*other.first()?, end) {
+    parts.iter().enumerate().find_map(|(index, other)| {
+        if near(*other.line.first()?, end) {
             Some((index, false))
-        } else if near(*other.last()?, end) {
+        } else if near(*other.line.last()?, end) {
             Some((index, true))
         } else {
             None

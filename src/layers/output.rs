@@ -143,7 +143,7 @@ pub const OUTPUTS: &[Output] = &[
             Property::new(
                 "inflow",
                 Q::Rate,
-                "what all of it gives to the wells; negative: takes",
+                "what it gives to the wells, as far as this line goes; negative: takes",
             ),
         ],
         content: Content::Features(Kind::Lines, |p| Ok(boundaries::layer(p))),

@@ -14,8 +14,8 @@ impl Outline {
     /// barriers alone close the aquifer. Of an open general outline the solver
     /// knows more.
     pub(crate) fn check_drainage(&self, site: &Site) -> Result<(), OutlineError> {
-        let metres_a_day = site.aquifer.recharge.si();
-        if metres_a_day == 0.0 || self.drains() {
+        let recharge = site.aquifer.recharge;
+        if recharge.si() == 0.0 || self.drains() {
             return Ok(());
         }
         let well = self.wells.first().map_or(
@@ -26,10 +26,10 @@ impl Outline {
             |well| names::well(site, *well),
         );
         Err(if self.is_closed() {
-            OutlineError::RechargeWithoutRiver { metres_a_day, well }
+            OutlineError::RechargeWithoutRiver { recharge, well }
         } else {
             OutlineError::RechargeWithoutEnd {
-                metres_a_day,
+                recharge,
                 well,
                 shape: self.shape.name(),
             }

@@ -2,7 +2,7 @@
 
 use thiserror::Error;
 
-use crate::site::{Refusal, Subject};
+use crate::site::{Flux, Refusal, Subject};
 
 /// A part of the plan with the words people know it by.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -53,11 +53,11 @@ pub enum OutlineError {
     },
     /// Recharge that would have to flow without end.
     #[error(
-        "no steady state: the {shape} around {well} has a recharge of {metres_a_day} m/d, and recharge over an unbounded area cannot drain"
+        "no steady state: the {shape} around {well} has a recharge of {recharge}, and recharge over an unbounded area cannot drain"
     )]
     RechargeWithoutEnd {
         /// The recharge.
-        metres_a_day: f64,
+        recharge: Flux,
         /// A well that stands in the aquifer.
         well: Named,
         /// The shape's name.
@@ -65,11 +65,11 @@ pub enum OutlineError {
     },
     /// Recharge within barriers.
     #[error(
-        "{well} stands in an aquifer that barriers close on all sides, with a recharge of {metres_a_day} m/d that cannot drain"
+        "{well} stands in an aquifer that barriers close on all sides, with a recharge of {recharge} that cannot drain"
     )]
     RechargeWithoutRiver {
         /// The recharge.
-        metres_a_day: f64,
+        recharge: Flux,
         /// A well that stands in the aquifer.
         well: Named,
     },

@@ -3,9 +3,10 @@
 
 use serde::Serialize;
 
+use super::flags::capitalised;
 use crate::findings::{FlagCode, Oddity, oddities};
 use crate::layers::Planned;
-use crate::layers::words::Words;
+use crate::layers::words::{Words, listed};
 use crate::site::{EdgeKind, Point};
 
 /// Wells that a sentence names, at most.
@@ -30,8 +31,10 @@ pub fn assumptions(planned: &Planned<'_>) -> Vec<Assumption> {
         confined(planned, &words),
         homogeneous(planned),
         steady(planned, &words),
-        rivers(planned, &words),
     ];
+    all.extend(penetration(planned, &words));
+    all.extend(clogged_banks(planned, &words));
+    all.extend(recharge(planned));
     all.extend(edges(planned, &words));
     all.push(map(planned, &words));
     all.extend(slips(planned, &words));
@@ -112,40 +115,107 @@ fn steady(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
     }
 }
 
-fn rivers(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
-    let site = planned.solution.site();
-    let found = planned.findings.boundaries.iter().zip(&site.edges);
-    let clear: Vec<String> = found
-        .filter(|(finding, edge)| {
-            let is_clear = matches!(
-                edge.kind,
-                EdgeKind::River {
-                    bank_resistance: None,
-                    ..
-                }
-            );
-            is_clear && finding.inflow_m3_d() > 0.0
-        })
-        .take(MOST_NAMES)
-        .map(|(finding, _)| words.edge(finding.edge))
-        .collect();
-    let mut doubts = Vec::new();
-    if !clear.is_empty() {
-        doubts.push(format!(
-            "No bank resistance is given for {}: a silted bed, or one that cuts into the aquifer only partly, gives less water, and drawdowns are then larger.",
-            clear.join(", ")
-        ));
+/// Rivers and barriers that bound an aquifer with a well, as far as there are
+/// any.
+fn penetration(planned: &Planned<'_>, words: &Words<'_>) -> Option<Assumption> {
+    let edges = &planned.solution.site().edges;
+    let bounding = || {
+        let found = planned.findings.boundaries.iter();
+        found.filter(|finding| finding.bounds_an_aquifer)
+    };
+    let is_river = |edge: usize| {
+        let kind = edges.get(edge).map(|edge| &edge.kind);
+        matches!(kind, Some(EdgeKind::River { .. }))
+    };
+    let rivers = bounding().any(|finding| is_river(finding.edge));
+    let barriers = bounding().any(|finding| !is_river(finding.edge));
+    let of_rivers = "Rivers hold their stage whatever the wells take, down to the aquifer’s base";
+    let of_barriers = "barriers let nothing through, from the aquifer’s roof to its base";
+    let (title, text) = match (rivers, barriers) {
+        (true, true) => (
+            "Rivers and barriers penetrate fully",
+            format!("{of_rivers}; {of_barriers}."),
+        ),
+        (true, false) => ("Rivers penetrate fully", format!("{of_rivers}.")),
+        (false, true) => (
+            "Barriers penetrate fully",
+            format!("{}.", capitalised(of_barriers)),
+        ),
+        (false, false) => return None,
+    };
+    let clear = bounding().filter(|finding| {
+        let resistance = bank_resistance(planned, finding.edge);
+        is_river(finding.edge) && resistance.is_none() && finding.inflow_m3_d() > 0.0
+    });
+    let clear = named(clear.map(|finding| words.edge(finding.edge)));
+    let doubts = clear.map(|clear| {
+        format!(
+            "No bank resistance is given for {clear}: a silted bed, or one that cuts into the aquifer only partly, gives less water, and drawdowns are then larger."
+        )
+    });
+    Some(Assumption {
+        title,
+        text,
+        doubts: doubts.into_iter().collect(),
+    })
+}
+
+/// The resistance of a river's clogged bank, days.
+fn bank_resistance(planned: &Planned<'_>, edge: usize) -> Option<f64> {
+    match planned.solution.site().edges.get(edge)?.kind {
+        EdgeKind::River {
+            bank_resistance: Some(days),
+            ..
+        } => Some(days.si()).filter(|days| *days > 0.0),
+        _ => None,
     }
-    Assumption {
-        title: "Rivers and barriers penetrate fully",
-        text: "Rivers hold their stage whatever the wells take, down to the aquifer’s base; barriers let nothing through.".into(),
-        doubts,
+}
+
+/// Banks that the plan calls clogged.
+fn clogged_banks(planned: &Planned<'_>, words: &Words<'_>) -> Option<Assumption> {
+    let found = planned.findings.boundaries.iter();
+    let clogged = found.filter(|finding| finding.bounds_an_aquifer);
+    let clogged = clogged.filter_map(|finding| {
+        let days = bank_resistance(planned, finding.edge)?;
+        Some(format!("{} ({days} days)", words.edge(finding.edge)))
+    });
+    let clogged = named(clogged)?;
+    Some(Assumption {
+        title: "Clogged banks",
+        text: "A clogged bank is a skin of one resistance all along its river; water passes it in proportion to the fall of head across it.".into(),
+        doubts: vec![format!(
+            "Stated for {clogged}: floods scour a bank and low water silts it up, so that its resistance changes with the seasons; a pumping test beside the river tells it."
+        )],
+    })
+}
+
+/// Recharge that the plan states.
+fn recharge(planned: &Planned<'_>) -> Option<Assumption> {
+    let recharge = planned.solution.site().aquifer.recharge;
+    (recharge.si() != 0.0).then(|| Assumption {
+        title: "Even recharge",
+        text: "Recharge is the same everywhere and all the time, whether the wells run or not.".into(),
+        doubts: vec![format!(
+            "The plan gives {} all the year round. Where it falls short in a dry year, every head is lower.",
+            planned.plan.units.beside(&recharge.to_string())
+        )],
+    })
+}
+
+/// "a, b and 3 more"; none where there is nothing to name.
+fn named(names: impl Iterator<Item = String>) -> Option<String> {
+    let all: Vec<String> = names.collect();
+    let more = all.len().saturating_sub(MOST_NAMES);
+    let mut told: Vec<String> = all.into_iter().take(MOST_NAMES).collect();
+    if more > 0 {
+        told.push(format!("{more} more"));
     }
+    (!told.is_empty()).then(|| listed(&told))
 }
 
 /// Edges that go on beyond what the plan draws.
 fn edges(planned: &Planned<'_>, words: &Words<'_>) -> Option<Assumption> {
-    let endless: Vec<String> = planned
+    let endless = planned
         .findings
         .boundaries
         .iter()
@@ -160,15 +230,13 @@ fn edges(planned: &Planned<'_>, words: &Words<'_>) -> Option<Assumption> {
                         })
                 })
         })
-        .take(MOST_NAMES)
-        .map(|boundary| words.edge(boundary.edge))
-        .collect();
-    (!endless.is_empty()).then(|| Assumption {
+        .map(|boundary| words.edge(boundary.edge));
+    let endless = named(endless)?;
+    Some(Assumption {
         title: "Edges go on straight",
         text: "Free ends of rivers and barriers go on straight beyond what the plan draws.".into(),
         doubts: vec![format!(
-            "So do {}: look at a map whether the ground agrees for some kilometres.",
-            endless.join(", ")
+            "Carried on so: {endless}. Look at a map whether the ground agrees for some kilometres."
         )],
     })
 }
@@ -182,32 +250,22 @@ fn map(planned: &Planned<'_>, words: &Words<'_>) -> Assumption {
         low.x.min(low.y).min(high.x).min(high.y)
     };
     let site = planned.solution.site();
-    let near: Vec<String> = site
+    let near = site
         .wells
         .iter()
         .enumerate()
         .filter(|(_, well)| depth_m(well.at) < rim_m)
-        .map(|(index, _)| words.well(index))
-        .collect();
-    let mut doubts = Vec::new();
-    if !near.is_empty() {
-        let more = near.len().saturating_sub(MOST_NAMES);
-        let named: Vec<String> = near.into_iter().take(MOST_NAMES).collect();
-        let more = if more > 0 {
-            format!(" and {more} more")
-        } else {
-            String::new()
-        };
-        doubts.push(format!(
-            "At or beyond the map’s rim: {}{more}. The map cuts their cones off; ask for a larger extent.",
-            named.join(", ")
-        ));
-    }
+        .map(|(index, _)| words.well(index));
+    let doubts = named(near).map(|near| {
+        format!(
+            "At or beyond the map’s rim: {near}. The map cuts their cones off; ask for a larger extent."
+        )
+    });
     Assumption {
         title: "What the map shows",
         text: "Flags about the roof look at the map alone; distances are those of the plan’s grid."
             .into(),
-        doubts,
+        doubts: doubts.into_iter().collect(),
     }
 }
 

@@ -64,3 +64,25 @@ quantity!(
     WellLoss,
     "d²/m⁵"
 );
+
+impl std::fmt::Display for Flux {
+    /// "0.0002295 m/d": four figures, more than any recharge is known to.
+    fn fmt(&self, formatter: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        let rounded = format!("{:.3e}", self.0);
+        let shown = rounded.parse::<f64>().unwrap_or(self.0);
+        write!(formatter, "{shown} m/d")
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// 3.3 in/yr by hand: 3.3 · 0.0254 / 365.25 = 0.000229486653 m/d.
+    #[test]
+    fn a_flux_is_told_with_four_figures() {
+        let flux = Flux::from_si(3.3 * 0.0254 / 365.25);
+        assert_eq!(flux.to_string(), "0.0002295 m/d");
+        assert_eq!(Flux::from_si(0.0005).to_string(), "0.0005 m/d");
+    }
+}

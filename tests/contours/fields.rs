@@ -96,6 +96,35 @@ fn a_river_whose_stage_is_a_level_is_not_traced_by_a_contour() {
     );
 }
 
+/// Beside a river drawdowns are small far and wide: here below 0.1 mm up to
+/// some metres inland, where the line must still be found. Its true place
+/// follows from the formula by one step of Newton's along the river.
+#[test]
+fn the_line_between_fall_and_rise_keeps_its_place_up_to_the_river() {
+    let (falls, rises) = (bump(250.0, 0.0, 0.2), bump(260.0, 330.0, 0.2));
+    let (pump, inject) = (beside_river(falls, 0.13), beside_river(rises, -0.075));
+    let formula = move |p: Point| pump(p) + inject(p);
+    let region = rectangle(0.0, -200.0, 600.0, 800.0, 6.0);
+    let levels = [-0.5, -0.25, 0.0, 0.25, 0.5];
+    let drawn = draw(&region, &[falls, rises], &Formula(&formula), Some(&levels));
+    check(&region, &drawn, &formula);
+    let zero = drawn.lines.iter().filter(|line| line.level == 0.0);
+    let inland = zero.flat_map(|line| &line.points).filter(|p| p.x > 1e-3);
+    let near: Vec<f64> = inland
+        .filter(|p| p.x < 60.0)
+        .map(|&p| {
+            let step_m = nalgebra::Vector2::new(0.0, 0.5);
+            let slope = formula(p + step_m) - formula(p - step_m);
+            (formula(p) / slope).abs()
+        })
+        .collect();
+    assert!(near.len() > 10, "{}", near.len());
+    // Along an edge of the mesh the formula is nearly a parabola that is zero
+    // at the river too: the chord misses its other root by a part of the edge.
+    let farthest_m = near.iter().copied().fold(0.0, f64::max);
+    assert!(farthest_m < 0.25 * 6.0, "{farthest_m} m");
+}
+
 #[test]
 fn levels_that_hit_nodes_exactly_leave_lines_and_bands_sound() {
     let region = rectangle(-50.0, -50.0, 50.0, 50.0, 10.0);

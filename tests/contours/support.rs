@@ -160,7 +160,10 @@ pub fn crossings(lines: &[ContourLine]) -> usize {
             let (n, a, count, p, q) = segments[i];
             let (m, b, _, r, s) = segments[j];
             let neighbours = n == m && (a.abs_diff(b) <= 1 || a.abs_diff(b) == count - 1);
+            // Of segments in one line, one above the other, no turn tells.
+            let apart = p.y.max(q.y) < r.y.min(s.y) || r.y.max(s.y) < p.y.min(q.y);
             if !neighbours
+                && !apart
                 && turns(p, q, r) * turns(p, q, s) <= 0.0
                 && turns(r, s, p) * turns(r, s, q) <= 0.0
             {

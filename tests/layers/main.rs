@@ -7,6 +7,7 @@
     reason = "a test that meets something unexpected should fail"
 )]
 
+mod boundaries;
 mod flow;
 mod geopackage;
 mod support;

@@ -9,6 +9,7 @@
 )]
 
 mod contents;
+mod general;
 mod large;
 mod names;
 mod soundness;

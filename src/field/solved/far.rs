@@ -111,9 +111,9 @@ impl Undrained {
         Refusal {
             subject: Subject::Aquifer(Some("recharge")),
             what: format!(
-                "the {} goes on to infinity and has a recharge of {} m/d",
+                "the {} goes on to infinity and has a recharge of {}",
                 outline.shape.name(),
-                site.aquifer.recharge.si()
+                site.aquifer.recharge
             ),
             why: Some(
                 "far away, recharge drains only between two parallel edges of which one is a river"

@@ -6,9 +6,11 @@ use super::Theme;
 use super::canvas::{Canvas, INK, PAPER, escaped};
 use super::labels::Taken;
 use super::symbols::{
-    ROCK, State, WATER, band_colour, band_share, largest_radius, neighbour_symbol, well_symbol,
+    ROCK, SILT, State, WATER, band_colour, band_share, largest_radius, neighbour_symbol,
+    well_symbol,
 };
 use crate::layers::{Planned, Units};
+use crate::site::{Edge, EdgeKind};
 
 /// Height of a line of the legend, pixels.
 const LINE: f64 = 21.0;
@@ -101,7 +103,7 @@ pub fn legend(canvas: &Canvas, planned: &Planned<'_>, theme: Theme) -> Legend {
         height: 14.0,
     };
     symbols_key(&mut legend, planned);
-    edges_key(&mut legend);
+    edges_key(&mut legend, planned);
     let ending = planned.units().length_ending();
     let line = |text: &str, legend: &mut Legend| {
         let symbol = format!("<path d=\"M0 0H26\" stroke=\"{INK}\" stroke-width=\"0.8\"/>");
@@ -146,13 +148,18 @@ fn symbols_key(legend: &mut Legend, planned: &Planned<'_>) {
 }
 
 /// Rivers and barriers.
-fn edges_key(legend: &mut Legend) {
-    legend.entry(
-        &format!(
-            "<path d=\"M0 0H26\" stroke=\"{WATER}\" stroke-width=\"7\"/><path d=\"M0 0H26\" stroke=\"{PAPER}\" stroke-width=\"3\"/>"
-        ),
-        "river (fixed head)",
+fn edges_key(legend: &mut Legend, planned: &Planned<'_>) {
+    let water = format!(
+        "<path d=\"M0 0H26\" stroke=\"{WATER}\" stroke-width=\"7\"/><path d=\"M0 0H26\" stroke=\"{PAPER}\" stroke-width=\"3\"/>"
     );
+    legend.entry(&water, "river (fixed head)");
+    let is_clogged = |edge: &Edge| matches!(&edge.kind, EdgeKind::River { bank_resistance, .. } if bank_resistance.is_some());
+    if planned.solution.site().edges.iter().any(is_clogged) {
+        legend.entry(
+            &format!("{water}<path d=\"M0 0H26\" stroke=\"{WATER}\" {SILT}/>"),
+            "river with a clogged bank",
+        );
+    }
     legend.entry(
         &format!("<path d=\"M0 3H26M3 3l3 -7M11 3l3 -7M19 3l3 -7\" fill=\"none\" stroke=\"{ROCK}\" stroke-width=\"2\"/>"),
         "barrier (no flow)",

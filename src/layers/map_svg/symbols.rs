@@ -93,6 +93,9 @@ pub fn contours(canvas: &mut Canvas, lines: &[ContourLine], levels_m: &[f64]) {
     }
 }
 
+/// What a river's symbol has between its two lines where its bank is clogged.
+pub const SILT: &str = "stroke-width=\"3\" stroke-dasharray=\"2.5 3\"";
+
 /// Rivers as double lines, barriers with teeth on their far side.
 pub fn edges(canvas: &mut Canvas, planned: &Planned<'_>) {
     let site = planned.solution.site();
@@ -100,13 +103,20 @@ pub fn edges(canvas: &mut Canvas, planned: &Planned<'_>) {
         for line in boundaries::lines(planned, index) {
             let path = canvas.path(&line, false);
             match edge.kind {
-                EdgeKind::River { .. } => {
+                EdgeKind::River {
+                    bank_resistance, ..
+                } => {
                     canvas.add(&format!(
                         "<path d=\"{path}\" fill=\"none\" stroke=\"{WATER}\" stroke-width=\"7\"/>"
                     ));
                     canvas.add(&format!(
                         "<path d=\"{path}\" fill=\"none\" stroke=\"{PAPER}\" stroke-width=\"3\"/>"
                     ));
+                    if bank_resistance.is_some() {
+                        canvas.add(&format!(
+                            "<path d=\"{path}\" fill=\"none\" stroke=\"{WATER}\" {SILT}/>"
+                        ));
+                    }
                 }
                 EdgeKind::Barrier => {
                     let teeth = teeth(canvas, planned, &line);

@@ -46,7 +46,10 @@ impl UnitSystem {
     fn in_brackets(self, digits: &str, dimension: Dimension, si: f64) -> String {
         let own = value(digits).map(|metric| self.of_si(dimension, metric * si));
         own.map_or_else(String::new, |own| {
-            let figures = digits
+            // Zeros right after the point tell nothing of how well it is known.
+            let after_zeros = digits.strip_prefix("0.0");
+            let telling = after_zeros.map_or(digits, |rest| rest.trim_start_matches('0'));
+            let figures = telling
                 .chars()
                 .filter(char::is_ascii_digit)
                 .count()
@@ -88,6 +91,10 @@ mod tests {
         assert_eq!(
             us("pump 1000.000 m³/d but"),
             "pump 1000.000 m³/d (183.4528 gpm) but"
+        );
+        assert_eq!(
+            us("recharge of 0.0002295 m/d,"),
+            "recharge of 0.0002295 m/d (3.300 in/yr),"
         );
         assert_eq!(us("river m and 3 wells"), "river m and 3 wells");
     }

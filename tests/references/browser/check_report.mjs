@@ -169,6 +169,14 @@ async function checkPrint(page) {
   }
 }
 
+// On a phone the middle of each map is seen first.
+async function checkPhone(page) {
+  const off = await page.evaluate(() => [...document.querySelectorAll(".sheet .scroll")].map((strip) => {
+    return Math.abs(strip.scrollLeft - (strip.scrollWidth - strip.clientWidth) / 2);
+  }));
+  hold(off.every((pixels) => pixels < 2), `the maps are scrolled ${off} px off their middles`);
+}
+
 async function checkWithoutScript(browser) {
   const page = await openedPage(browser, { javaScriptEnabled: false, viewport: { width: 1280, height: 800 } });
   hold(!(await page.locator(".controls").first().isVisible()), "controls without a script to serve them");
@@ -202,6 +210,7 @@ try {
       }
       await checkPrint(page);
     }
+    if (width === 360) await checkPhone(page);
     hold((await page.evaluate(() => window.hit)) === undefined, "a name ran as a script");
     await page.context().close();
   }

@@ -191,6 +191,19 @@ def check_boundaries(plan, document, grid, metres, faults):
                 faults.expect(off <= NEAR_M, f"boundaries: {edge['name']} is {off:.3f} m off its line")
 
 
+def check_inflows(document, folder, unit, faults):
+    """What the parts of the rivers give adds up to what the findings say."""
+    findings = json.loads((folder / "findings.json").read_text(encoding="utf-8"))
+    key = f"inflow_{unit}"
+    for found in findings["boundaries"]:
+        parts = [f["properties"][key] for f in document["features"] if f["properties"]["name"] == found["name"]]
+        if not parts:
+            continue
+        # To the rates' own rounding, and a part of the whole in a general outline.
+        near = 1e-9 + 1e-3 * abs(found[key])
+        faults.expect(abs(sum(parts) - found[key]) <= near, f"boundaries: {found['name']}: {parts} is not {found[key]}")
+
+
 def check_names(plan, folder, documents, faults):
     """Names come back from tables and layers as they were."""
     for key in ("well", "neighbour"):
@@ -247,6 +260,7 @@ def main():
         placed = {well["name"]: well["at"] for well in plan.get("well", []) if "at" in well}
         check_wells(plan, documents["wells"], grid, metres, faults)
         check_boundaries(plan, documents["boundaries"], grid, metres, faults)
+        check_inflows(documents["boundaries"], folder, units["q"], faults)
         check_names(plan, folder, documents, faults)
         check_flow(documents["flow"], faults)
         packages.check(folder / "results.gpkg", documents, wanted, crs, placed, NEAR_M / metres, faults)

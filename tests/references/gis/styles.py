@@ -62,12 +62,21 @@ def check(path, properties, features, faults):
     for mark in root.iter(SLD + "WellKnownName"):
         expect(mark.text in MARKS, f"no mark is called {mark.text}")
     check_classes(root, expect)
+    check_labels(root, features, expect)
     for feature in features:
         drawn = sum(fits(rule, feature["properties"]) for rule in root.iter(SLD + "Rule"))
         expect(drawn > 0, f"no rule draws {feature['properties']}")
         if path.stem == "drawdown_bands":
             # Its own band's rule, and the one that draws every limit.
             expect(drawn == 2, f"{drawn} rules draw {feature['properties']}")
+
+
+def check_labels(root, features, expect):
+    """A label is a name or a round number: a GIS shows all digits of others."""
+    names = {name.text for name in root.iterfind(f".//{SLD}Label/{OGC}PropertyName")}
+    for name in names:
+        for value in (feature["properties"][name] for feature in features):
+            expect(isinstance(value, str) or len(f"{value}") <= 9, f"a label of {value}")
 
 
 def fits(rule, properties):
