@@ -165,7 +165,7 @@ impl<'a> Parts<'a> {
                 return highest_m / (1.0 - share);
             }
             for (omega, missed) in omega.iter_mut().zip(missed) {
-                *omega = omega.max(2.0 * missed);
+                *omega = omega.max(4.0 * missed);
             }
         }
         f64::INFINITY

@@ -27,9 +27,6 @@ const STRONG_CUTS: &[f64] = &[0.175, 0.09, 0.045];
 /// and here beside others.
 const WEAK_CUTS: &[f64] = &[0.12, 0.04];
 
-/// By what factor the panels at its corners are to do better than one does.
-const SPAN_DIGITS: f64 = 1e3;
-
 /// Largest m.
 const HIGHEST_POWER: u32 = 8;
 
@@ -166,8 +163,8 @@ pub(super) fn cut_beside_strong_corners(region: &Region, uncut: Vec<Panel>) -> V
 }
 
 /// A straight side cut so that polynomials on its panels resolve the powers of
-/// the distances from its corners.
-pub(super) fn cut_for_span(region: &Region, side: Panel) -> Vec<Panel> {
+/// the distances from its corners, by a factor better than one panel does.
+pub(super) fn cut_toward_corners(region: &Region, side: Panel, gain: f64) -> Vec<Panel> {
     let mut panels = Vec::new();
     let mut end = Vec::new();
     for (side, panels) in [(side, &mut panels), (side.turned(region), &mut end)] {
@@ -189,7 +186,7 @@ pub(super) fn cut_for_span(region: &Region, side: Panel) -> Vec<Panel> {
                 if is_whole(exponent, bent.power) {
                     panels.push(bent);
                 } else {
-                    grade(bent, levels(SPAN_DIGITS, exponent, bent.power), panels);
+                    grade(bent, levels(gain, exponent, bent.power), panels);
                 }
             }
             None => panels.push(corner),

@@ -2,11 +2,18 @@
 
 use num_complex::Complex64;
 
-use super::cut::{cut, cut_beside_strong_corners, cut_for_span, cut_near_poles};
+use super::cut::{cut, cut_beside_strong_corners, cut_near_poles, cut_toward_corners};
 use super::legendre::Rule;
-use super::panel::{Panel, Place, Reach, SMALLEST};
+use super::panel::{Panel, Place, SMALLEST};
 use super::region::{Condition, Region};
 use super::span::Span;
+
+/// How much better than one panel those at the corners of a side are to do whose
+/// density is made of few functions, and cannot be cut any more;
+const SPAN_GAIN: f64 = 1e5;
+
+/// and those of a side whose nodes are free.
+const FREE_GAIN: f64 = 1e3;
 
 /// The panels of one side, and what their density is made of.
 #[derive(Clone, Debug)]
@@ -21,7 +28,7 @@ impl Stretch {
     /// A side as first solved: made of few functions where it can be and neither a
     /// pole nor a corner of other sides is near; otherwise cut until all of these
     /// are well off its panels, and where its own corners ask for it.
-    fn new(region: &Region, side: usize, poles: &[Complex64], rule: &Rule) -> Self {
+    fn new(region: &Region, side: usize, poles: &[Complex64], rule: &Rule, target_m: f64) -> Self {
         let Some(curve) = region.sides().get(side).map(|side| side.curve) else {
             return Self {
                 panels: Vec::new(),
@@ -41,11 +48,12 @@ impl Stretch {
                 span: None,
             };
         }
-        let panels = cut_for_span(region, whole).into_iter();
+        let gain = if is_off_poles { SPAN_GAIN } else { FREE_GAIN };
+        let panels = cut_toward_corners(region, whole, gain).into_iter();
         let panels: Vec<_> = panels
             .flat_map(|panel| cut_near_poles(panel, poles))
             .collect();
-        let span = is_off_poles.then(|| Span::new(region, side, &panels, rule));
+        let span = is_off_poles.then(|| Span::new(region, side, &panels, rule, target_m));
         Self { panels, span }
     }
 
@@ -62,8 +70,7 @@ impl Stretch {
     fn refined(&self, region: &Region, excess: &[f64]) -> Option<Self> {
         let is_over = |(panel, excess): (&Panel, &f64)| *excess > 1.0 && panel.half > SMALLEST;
         let are_over: Vec<bool> = self.panels.iter().zip(excess).map(is_over).collect();
-        let is_freed = self.span.is_some() && excess.iter().any(|excess| *excess > 0.0);
-        if !is_freed && !are_over.contains(&true) {
+        if !are_over.contains(&true) {
             return None;
         }
         let mut panels = Vec::with_capacity(2 * self.panels.len());
@@ -86,13 +93,13 @@ pub(super) struct Mesh {
 }
 
 impl Mesh {
-    /// The first mesh of a region.
-    pub fn new(region: &Region, poles: &[Complex64], order: usize) -> Self {
+    /// The first mesh of a region, for errors of the head up to a target.
+    pub fn new(region: &Region, poles: &[Complex64], order: usize, target_m: f64) -> Self {
         let rule = Rule::new(order);
         let sides = 0..region.sides().len();
         Self {
             stretches: sides
-                .map(|side| Stretch::new(region, side, poles, &rule))
+                .map(|side| Stretch::new(region, side, poles, &rule, target_m))
                 .collect(),
             rule,
         }
@@ -107,11 +114,6 @@ impl Mesh {
     pub fn unknowns(&self) -> usize {
         let stretches = self.stretches.iter();
         stretches.map(|stretch| stretch.unknowns(&self.rule)).sum()
-    }
-
-    /// Where each panel is.
-    pub fn reaches(&self) -> Vec<Reach> {
-        self.panels().map(Reach::of).collect()
     }
 
     /// A density at a place that its panel, or its side of few functions, can

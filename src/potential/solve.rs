@@ -33,8 +33,8 @@ const FIRST_AIM: f64 = 0.25;
 const SMALL_SHARE: f64 = 0.02;
 
 /// Where all panels keep their aim and the bound is still too large, the aim is
-/// lowered to no less than this share.
-const LEAST_STEP: f64 = 1e-2;
+/// lowered to no less than this share of the target.
+const LEAST_AIM: f64 = 1e-4;
 
 /// Refinement ends after so many rounds.
 const MOST_ROUNDS: usize = 14;
@@ -129,7 +129,7 @@ impl Solution {
         let mut best = Attempt::on(
             &region,
             &posed,
-            Mesh::new(&region, &poles, order_for(&region)),
+            Mesh::new(&region, &poles, order_for(&region), target_m),
             target_m,
         );
         let mut latest: Option<Attempt> = None;
@@ -137,12 +137,11 @@ impl Solution {
         let mut rounds = 1;
         while best.measure.bound_m > target_m && rounds < MOST_ROUNDS {
             let from = latest.as_ref().unwrap_or(&best);
-            let excess = from.measure.excess(aim_m);
-            if excess.iter().all(|&excess| excess == 0.0) {
-                let missed = (target_m / from.measure.bound_m).max(LEAST_STEP);
-                aim_m *= FIRST_AIM.min(0.5 * missed);
+            let mut excess = from.measure.excess(aim_m);
+            while excess.iter().all(|&excess| excess == 0.0) && aim_m > LEAST_AIM * target_m {
+                aim_m *= FIRST_AIM;
+                excess = from.measure.excess(aim_m);
             }
-            let excess = from.measure.excess(aim_m);
             let finer = from.system.mesh.refined(&region, &excess);
             let Some(finer) = finer.filter(|mesh| mesh.unknowns() <= MOST_UNKNOWNS) else {
                 break;
@@ -281,8 +280,7 @@ pub(super) fn highest(values: impl Iterator<Item = f64>) -> f64 {
 }
 
 impl Measure {
-    /// For each panel by what factor it misses its aim; zero where its part keeps
-    /// it.
+    /// For each panel by what factor it misses its aim; zero where it keeps it.
     fn excess(&self, aim_m: f64) -> Vec<f64> {
         // φ is about what all parts let through together: those that let most
         // through are refined, until the others make up no more than the aim, or
@@ -295,13 +293,17 @@ impl Measure {
             sum_m <= rest_m
         });
         let small_m = highest(small.copied());
-        let each_m = aim_m / self.of_parts_m.len().max(2) as f64;
+        let each_m = small_m.max(aim_m / self.of_parts_m.len().max(2) as f64);
         let slopes_m = self.slopes_m.iter().zip(&self.amounts_m);
         let panels = self.heads_m.iter().zip(slopes_m);
         let excess = |(head_m, (slope_m, amount_m)): (&f64, (&f64, &f64))| {
-            let of_head = Some(head_m / aim_m).filter(|excess| *excess > 1.0);
-            let of_slope = Some(slope_m / each_m).filter(|_| *amount_m > small_m);
-            highest([of_head, of_slope].into_iter().flatten())
+            let of_slope = if *amount_m > small_m {
+                slope_m / each_m
+            } else {
+                0.0
+            };
+            let excess = (head_m / aim_m).max(of_slope);
+            if excess > 1.0 { excess } else { 0.0 }
         };
         panels.map(excess).collect()
     }

@@ -19,14 +19,50 @@ use super::legendre::{Rule, polynomials};
 use super::panel::{Panel, Place};
 use super::region::{Condition, Region};
 
-/// Highest degree of the polynomials.
-const DEGREE: usize = 5;
+/// How many functions a span is to hold.
+#[derive(Clone, Copy, Debug)]
+struct Wealth {
+    /// Highest degree of the polynomials.
+    degree: usize,
+    /// Powers of r below this are kept; higher ones are smooth enough.
+    highest_power: f64,
+    /// Functions nearer than this to the span of others are left out.
+    negligible: f64,
+}
 
-/// Powers of r below this are kept; higher ones are smooth enough.
-const HIGHEST_POWER: f64 = 3.3;
+/// For heads to a few 1e-5 m.
+const LEAN: Wealth = Wealth {
+    degree: 4,
+    highest_power: 2.5,
+    negligible: 1e-5,
+};
 
-/// Functions nearer than this to the span of others are left out.
-const NEGLIGIBLE: f64 = 1e-6;
+/// For heads to a few 1e-7 m.
+const PLAIN: Wealth = Wealth {
+    degree: 5,
+    highest_power: 3.3,
+    negligible: 1e-6,
+};
+
+/// For slopes, whose errors add up along many sides.
+const RICH: Wealth = Wealth {
+    degree: 7,
+    highest_power: 4.5,
+    negligible: 1e-8,
+};
+
+/// Lean spans do for heads to this, metres.
+const LEAN_TARGET_M: f64 = 3e-5;
+
+impl Wealth {
+    fn of(condition: Condition, target_m: f64) -> Self {
+        match condition {
+            Condition::Head if target_m >= LEAN_TARGET_M => LEAN,
+            Condition::Head => PLAIN,
+            Condition::Flux | Condition::Clogged { .. } => RICH,
+        }
+    }
+}
 
 /// A basis of the densities of one side.
 #[derive(Clone, Debug)]
@@ -55,56 +91,34 @@ impl Span {
         plain && is_straight
     }
 
-    /// The span of a side that it suits, on panels that resolve it.
-    pub fn new(region: &Region, side: usize, panels: &[Panel], rule: &Rule) -> Self {
-        let corners = [region.before(side), side].map(|joint| corner_powers(region, joint));
-        let profile_powers = [region.before(side), side].map(|joint| profile_power(region, joint));
-        let nodes: Vec<_> = panels
-            .iter()
-            .flat_map(|panel| {
-                rule.nodes
-                    .iter()
-                    .map(|&t| (panel.ends_at(t), panel.u_slope(t)))
-            })
-            .collect();
-        let mut functions: Vec<Vec<f64>> = (0..=DEGREE)
-            .map(|degree| {
-                let at = |([u, _], slope): &([f64; 2], f64)| {
-                    let values = polynomials(2.0 * u - 1.0, DEGREE + 1);
-                    values.get(degree).copied().unwrap_or_default() * slope
-                };
-                nodes.iter().map(at).collect()
-            })
-            .collect();
-        for (end, powers) in corners.iter().enumerate() {
-            functions.extend(powers.iter().map(|power| {
-                let at = |(ends, slope): &([f64; 2], f64)| {
-                    let distance = if end == 0 { ends[0] } else { ends[1] };
-                    distance.powf(power - 1.0) * slope
-                };
-                nodes.iter().map(at).collect()
-            }));
-        }
-        let roots: Vec<f64> = rule.weights.iter().map(|weight| weight.sqrt()).collect();
-        let scale = |function: &mut Vec<f64>| {
-            let values = function.iter_mut().zip(roots.iter().cycle());
+    /// The span of a side that it suits, on panels that resolve it, for errors of
+    /// the head up to a target.
+    pub fn new(region: &Region, side: usize, panels: &[Panel], rule: &Rule, target_m: f64) -> Self {
+        let side_here = region.sides().get(side);
+        let condition = side_here.map_or(Condition::Flux, |side| side.condition);
+        let wealth = Wealth::of(condition, target_m);
+        let joints = [region.before(side), side];
+        let powers = joints.map(|joint| corner_powers(region, joint, wealth));
+        let roots = rule.weights.iter().map(|weight| weight.sqrt());
+        let roots: Vec<f64> = roots.cycle().take(panels.len() * rule.order()).collect();
+        let mut functions = functions(panels, rule, wealth, &powers);
+        for function in &mut functions {
+            let values = function.iter_mut().zip(&roots);
             values.for_each(|(value, root)| *value *= root);
-        };
-        functions.iter_mut().for_each(scale);
-        let basis = orthonormal(functions, NEGLIGIBLE);
-        let count = basis.len();
-        let at_nodes: Vec<Vec<f64>> = (0..nodes.len())
+        }
+        let basis = orthonormal(functions, wealth.negligible);
+        let at_nodes: Vec<Vec<f64>> = (0..roots.len())
             .map(|node| basis.iter().filter_map(|f| f.get(node).copied()).collect())
             .collect();
         let values = at_nodes
             .iter()
-            .zip(roots.iter().cycle())
+            .zip(&roots)
             .flat_map(|(row, root)| row.iter().map(move |value| value / root))
             .collect();
         Self {
-            rows: most_different(at_nodes, count),
+            rows: most_different(at_nodes, basis.len()),
             values,
-            profile_powers,
+            profile_powers: joints.map(|joint| profile_power(region, joint)),
         }
     }
 
@@ -129,6 +143,39 @@ impl Span {
     }
 }
 
+/// Polynomials and powers of the distance from the start and from the end, as
+/// densities at each node.
+fn functions(
+    panels: &[Panel],
+    rule: &Rule,
+    wealth: Wealth,
+    powers: &[Vec<f64>; 2],
+) -> Vec<Vec<f64>> {
+    let nodes: Vec<_> = panels
+        .iter()
+        .flat_map(|panel| rule.nodes.iter().map(move |&t| (panel, t)))
+        .map(|(panel, t)| (panel.ends_at(t), panel.u_slope(t)))
+        .collect();
+    let polynomial = |degree: usize| {
+        let at = |([u, _], slope): &([f64; 2], f64)| {
+            let values = polynomials(2.0 * u - 1.0, degree + 1);
+            values.last().copied().unwrap_or_default() * slope
+        };
+        nodes.iter().map(at).collect()
+    };
+    let [from_start, from_end] = powers;
+    let from_start = from_start.iter().map(|power| {
+        let at = |([distance, _], slope): &([f64; 2], f64)| distance.powf(power - 1.0) * slope;
+        nodes.iter().map(at).collect()
+    });
+    let from_end = from_end.iter().map(|power| {
+        let at = |([_, distance], slope): &([f64; 2], f64)| distance.powf(power - 1.0) * slope;
+        nodes.iter().map(at).collect()
+    });
+    let polynomials = (0..=wealth.degree).map(polynomial);
+    polynomials.chain(from_start).chain(from_end).collect()
+}
+
 /// The power of r that stands for a constant on a panel beside a corner.
 fn profile_power(region: &Region, joint: usize) -> Option<f64> {
     let exponent = region.joint(joint)?.exponent;
@@ -138,7 +185,7 @@ fn profile_power(region: &Region, joint: usize) -> Option<f64> {
 }
 
 /// The powers of the distance from a corner, not whole, that fields go as there.
-fn corner_powers(region: &Region, joint: usize) -> Vec<f64> {
+fn corner_powers(region: &Region, joint: usize, wealth: Wealth) -> Vec<f64> {
     let Some(joint_here) = region.joint(joint) else {
         return Vec::new();
     };
@@ -150,7 +197,7 @@ fn corner_powers(region: &Region, joint: usize) -> Vec<f64> {
     let series = |base: f64, shift: f64| {
         (1..16)
             .map(move |j| base * (f64::from(j) - shift))
-            .take_while(|power| *power < HIGHEST_POWER)
+            .take_while(|power| *power < wealth.highest_power)
     };
     let mut powers: Vec<f64> = series(inside, shift).chain(series(outside, 0.0)).collect();
     powers.retain(|power| (power - power.round()).abs() > 1e-9);
