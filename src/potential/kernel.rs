@@ -29,6 +29,9 @@ pub(super) struct Source {
     pub nodes: Vec<Complex64>,
     /// The nodes of the finer rule.
     pub fine_nodes: Vec<Complex64>,
+    /// What the finer rule misses, for each node: that of −ln|c u + d|, which the
+    /// places have no part in, counts as the coarser rule has it.
+    fine_misses: Vec<f64>,
     /// ln|c u + d| − m ln h at each node.
     offsets: Vec<f64>,
     /// The m roots of one.
@@ -69,6 +72,7 @@ impl Source {
             fine_nodes: (rule.fine_nodes.iter())
                 .map(|&t| panel.curve.at(panel.u(t)))
                 .collect(),
+            fine_misses: fine_misses(panel, rule),
             offsets: parameters.iter().map(offset).collect(),
             roots: (0..panel.power).map(root).collect(),
             far_parameter: (panel.middle + far_radius * panel.half).powf(power),
@@ -180,6 +184,9 @@ impl Source {
 
     fn as_fine_points(&self, rule: &Rule, x: Complex64, effect: &mut Effect) {
         *effect = Effect::NONE;
+        for (value, miss) in effect.values.iter_mut().zip(&self.fine_misses) {
+            *value = FACTOR * miss;
+        }
         for (node, weights) in self.fine_nodes.iter().zip(&rule.fine_weights) {
             let distance = x - node;
             let squared = distance.norm_sqr();
@@ -305,6 +312,20 @@ impl Source {
             }
         }
     }
+}
+
+/// For each node, by how much its rule exceeds the finer one for −ln|c u + d|.
+fn fine_misses(panel: &Panel, rule: &Rule) -> Vec<f64> {
+    let below_log = |t: &f64| panel.curve.below(panel.u(*t)).norm().ln();
+    let mut misses: Vec<f64> = (rule.nodes.iter().zip(&rule.weights))
+        .map(|(t, weight)| -weight * below_log(t))
+        .collect();
+    for (t, weights) in rule.fine_nodes.iter().zip(&rule.fine_weights) {
+        let log = below_log(t);
+        let slots = misses.iter_mut().zip(weights);
+        slots.for_each(|(miss, weight)| *miss += weight * log);
+    }
+    misses
 }
 
 /// What of an effect is wanted.
