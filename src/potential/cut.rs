@@ -4,7 +4,7 @@ use num_complex::Complex64;
 
 use super::legendre::ellipse;
 use super::panel::{Panel, SMALLEST};
-use super::region::Region;
+use super::region::{LOGARITHMIC, Region};
 
 /// A panel that touches a corner gives it this share of itself when it is cut.
 const CORNER_SHARE: f64 = 0.25;
@@ -32,6 +32,13 @@ const HIGHEST_POWER: u32 = 8;
 
 /// Cuts a panel where it is singular, or in two.
 pub(super) fn cut(region: &Region, panel: Panel, excess: f64, panels: &mut Vec<Panel>) {
+    if panel.power > 1 && panel.reaches_end() {
+        // Bent toward its own corner it cannot follow the other one.
+        let (near, far) = panel.unbent_halves();
+        panels.push(near);
+        cut(region, far, excess, panels);
+        return;
+    }
     let turned = panel.turned(region);
     match exponents(region, &panel) {
         (None, None) => halve(panel, excess, panels),
@@ -67,11 +74,12 @@ fn bend(panel: Panel, exponent: f64, excess: f64, panels: &mut Vec<Panel>) {
     }
 }
 
-/// λ of the corners that a panel touches, first and last, where singular.
+/// λ of the corners that a panel touches, first and last; that of a logarithm
+/// where the sides go straight on, for the head may have a kink there.
 fn exponents(region: &Region, panel: &Panel) -> (Option<f64>, Option<f64>) {
     let exponent = |corner: usize, touches: bool| {
         let joint = region.joint(corner).filter(|_| touches)?;
-        Some(joint.exponent).filter(|exponent| exponent.is_finite())
+        Some(joint.exponent.min(LOGARITHMIC))
     };
     let end = panel.turned(region).corner;
     (
@@ -168,7 +176,8 @@ pub(super) fn cut_toward_corners(region: &Region, side: Panel, gain: f64) -> Vec
     let mut panels = Vec::new();
     let mut end = Vec::new();
     for (side, panels) in [(side, &mut panels), (side.turned(region), &mut end)] {
-        let exponent = exponents(region, &side.part(0.0, 0.5)).0;
+        let exponent = region.joint(side.corner).map(|joint| joint.exponent);
+        let exponent = exponent.filter(|exponent| exponent.is_finite());
         let cuts = match exponent {
             Some(exponent) if exponent < STRONG => STRONG_CUTS,
             Some(_) => WEAK_CUTS,

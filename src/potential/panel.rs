@@ -205,6 +205,19 @@ impl Panel {
         self.power == 1 && self.to() >= 1.0 - 0.25 * SMALLEST
     }
 
+    /// Whether it reaches the end of its side that u is not counted from.
+    pub fn reaches_end(&self) -> bool {
+        self.to() >= 1.0 - 0.25 * SMALLEST
+    }
+
+    /// Its half beside its corner, and the other one with u = w.
+    pub fn unbent_halves(&self) -> (Self, Self) {
+        let [near, far] = self.halves();
+        let from = far.u(-1.0);
+        let far = Self { power: 1, ..far }.part(from, 1.0);
+        (near, far)
+    }
+
     /// The same place counted from the other end of the side; `power` is 1.
     pub fn turned(&self, region: &Region) -> Self {
         Self {

@@ -6,6 +6,9 @@ use num_complex::Complex64;
 
 use super::curve::Curve;
 
+/// λ where fields go as r ln r, for one: close to it, but no whole number.
+pub(super) const LOGARITHMIC: f64 = 0.98;
+
 /// What holds on a side for a harmonic function u; n points out of the region.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Condition {
@@ -210,13 +213,13 @@ fn joint(sides: &[Side], index: usize, next: usize) -> Joint {
         let follows = sides.get(next).map_or(side.arrives, |side| side.leaves);
         (next, PI - (follows / side.arrives).arg())
     };
-    let same_kind = sides
+    let other = sides
         .get(next)
-        .is_some_and(|other| side.condition == other.condition);
+        .map_or(side.condition, |next| next.condition);
     Joint {
         next,
         angle_rad,
-        exponent: exponent(angle_rad, same_kind),
+        exponent: exponent(angle_rad, side.condition, other),
     }
 }
 
@@ -235,12 +238,21 @@ fn next_at_infinity(sides: &[Side], side: &Side) -> Option<(usize, f64)> {
         .min_by(|one, other| one.1.total_cmp(&other.1))
 }
 
-/// λ of the layer's potential at a corner, seen from both of its sides.
-fn exponent(angle_rad: f64, same_kind: bool) -> f64 {
+/// λ of the layer's potential at a corner, seen from both of its sides. Close to
+/// a corner a clogged side acts as one of flux; where skins differ, fields go as
+/// r ln r beside.
+fn exponent(angle_rad: f64, one: Condition, other: Condition) -> f64 {
     let wider = angle_rad.max(TAU - angle_rad);
-    if same_kind && (wider - PI).abs() < 1e-9 {
+    if one == other && (wider - PI).abs() < 1e-9 {
         return f64::INFINITY;
     }
-    let half = if same_kind { 1.0 } else { 0.5 };
-    half * PI / wider
+    let is_head = |condition| condition == Condition::Head;
+    let share = if is_head(one) != is_head(other) {
+        0.5
+    } else if one != other {
+        LOGARITHMIC
+    } else {
+        1.0
+    };
+    share * PI / wider
 }

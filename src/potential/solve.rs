@@ -37,7 +37,7 @@ const SMALL_SHARE: f64 = 0.02;
 const LEAST_AIM: f64 = 1e-4;
 
 /// Refinement ends after so many rounds.
-const MOST_ROUNDS: usize = 14;
+const MOST_ROUNDS: usize = 24;
 
 /// Most unknowns: 8 · 18,000² bytes are 2.6 GB.
 const MOST_UNKNOWNS: usize = 18_000;
