@@ -28,7 +28,7 @@ const SMALLEST: f64 = 1e-4;
 const MOST_LIFTS: usize = 5;
 
 /// Where φ misses a larger share of ω, ω was too rough and is lifted.
-const LARGEST_SHARE: f64 = 0.7;
+const LARGEST_SHARE: f64 = 0.4;
 
 /// A panel, or a side of few functions: what has one number of ω.
 struct Part {
@@ -113,6 +113,22 @@ impl<'a> Parts<'a> {
             part.map_or(0.0, |(part, slope)| part.size * slope)
         };
         self.of_panels.iter().map(of_part).collect()
+    }
+
+    /// The residual of each panel as a share of the largest of its part.
+    pub fn shares(&self, of_panels: &[f64]) -> Vec<f64> {
+        let mut largest = vec![f64::MIN_POSITIVE; self.parts.len()];
+        for (part, residual) in self.of_panels.iter().zip(of_panels) {
+            if let Some(slot) = largest.get_mut(*part) {
+                *slot = residual.max(*slot);
+            }
+        }
+        let share = |(part, residual): (&usize, &f64)| {
+            let share = residual / largest.get(*part).copied().unwrap_or(f64::INFINITY);
+            // Infinite over infinite: no smaller than any other.
+            if share.is_nan() { 1.0 } else { share }
+        };
+        self.of_panels.iter().zip(of_panels).map(share).collect()
     }
 
     /// What given slopes let through each part on a flux side, in halves, the

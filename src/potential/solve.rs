@@ -32,9 +32,16 @@ const FIRST_AIM: f64 = 0.25;
 /// refined before the others.
 const SMALL_SHARE: f64 = 0.02;
 
+/// Where the bound is known, the parts that are not refined may make up this share
+/// of the target.
+const REST_SHARE: f64 = 0.4;
+
 /// Where all panels keep their aim and the bound is still too large, the aim is
 /// lowered to no less than this share of the target.
 const LEAST_AIM: f64 = 1e-4;
+
+/// Nodes of a panel.
+const ORDER: usize = 10;
 
 /// Refinement ends after so many rounds.
 const MOST_ROUNDS: usize = 24;
@@ -64,9 +71,10 @@ struct Attempt {
 
 impl Attempt {
     fn on(region: &Region, posed: &[Posed], mesh: Mesh, target_m: f64) -> Self {
-        let system = System::new(region, mesh);
+        let mut system = System::new(region, mesh);
         let densities = solve(region, posed, &system);
         let measure = measure(region, posed, &system, &densities, target_m);
+        system.forget_factors();
         Self {
             system,
             densities,
@@ -87,10 +95,12 @@ impl Attempt {
         64.0 * f64::EPSILON * charges.sum::<f64>()
     }
 
-    /// The side with the panel that misses its aim by most.
+    /// The side that misses most, in head or in the water that it lets through.
     fn hardest_side(&self) -> Option<usize> {
-        let excess = self.measure.excess(1.0);
-        let panels = self.system.mesh.panels().zip(excess);
+        let measure = &self.measure;
+        let misses = measure.heads_m.iter().zip(&measure.amounts_m);
+        let misses = misses.map(|(head_m, amount_m)| head_m.max(*amount_m));
+        let panels = self.system.mesh.panels().zip(misses);
         panels
             .max_by(|(_, one), (_, other)| one.total_cmp(other))
             .map(|(panel, _)| panel.side)
@@ -101,8 +111,8 @@ impl Attempt {
 struct Measure {
     /// For each panel the largest residual in head; zero off head sides.
     heads_m: Vec<f64>,
-    /// For each panel the largest residual in slope; zero on head sides.
-    slopes_m: Vec<f64>,
+    /// For each panel its residual in slope as a share of the largest of its part.
+    slope_shares: Vec<f64>,
     /// For each panel the water that the residuals in slope let through its part;
     /// zero on head sides.
     amounts_m: Vec<f64>,
@@ -129,7 +139,7 @@ impl Solution {
         let mut best = Attempt::on(
             &region,
             &posed,
-            Mesh::new(&region, &poles, order_for(&region), target_m),
+            Mesh::new(&region, &poles, ORDER, target_m),
             target_m,
         );
         let mut latest: Option<Attempt> = None;
@@ -137,10 +147,10 @@ impl Solution {
         let mut rounds = 1;
         while best.measure.bound_m > target_m && rounds < MOST_ROUNDS {
             let from = latest.as_ref().unwrap_or(&best);
-            let mut excess = from.measure.excess(aim_m);
+            let mut excess = from.measure.excess(aim_m, target_m);
             while excess.iter().all(|&excess| excess == 0.0) && aim_m > LEAST_AIM * target_m {
                 aim_m *= FIRST_AIM;
-                excess = from.measure.excess(aim_m);
+                excess = from.measure.excess(aim_m, target_m);
             }
             let finer = from.system.mesh.refined(&region, &excess);
             let Some(finer) = finer.filter(|mesh| mesh.unknowns() <= MOST_UNKNOWNS) else {
@@ -196,11 +206,6 @@ impl Solution {
     }
 }
 
-/// Fewer nodes to a panel where there are many sides, each with little to tell.
-fn order_for(region: &Region) -> usize {
-    if region.sides().len() > 60 { 8 } else { 10 }
-}
-
 fn solve(region: &Region, posed: &[Posed], system: &System) -> Densities {
     let charges: Vec<f64> = posed.iter().map(|problem| -problem.charge()).collect();
     system.solve(&asked_by(region, posed), &charges)
@@ -242,7 +247,7 @@ fn measure(
     };
     Measure {
         heads_m,
-        slopes_m,
+        slope_shares: parts.shares(&slopes_m),
         amounts_m,
         of_parts_m: parts.sorted_amounts(&slopes),
         bound_m,
@@ -281,12 +286,16 @@ pub(super) fn highest(values: impl Iterator<Item = f64>) -> f64 {
 
 impl Measure {
     /// For each panel by what factor it misses its aim; zero where it keeps it.
-    fn excess(&self, aim_m: f64) -> Vec<f64> {
+    fn excess(&self, aim_m: f64, target_m: f64) -> Vec<f64> {
         // φ is about what all parts let through together: those that let most
         // through are refined, until the others make up no more than the aim, or
-        // first a small share.
+        // no more of the bound than the target leaves them; at first, a small share.
         let all_m: f64 = self.of_parts_m.iter().sum();
-        let rest_m = aim_m.max(SMALL_SHARE * all_m);
+        let rest_m = if self.bound_m.is_finite() {
+            aim_m.min(all_m * REST_SHARE * target_m / self.bound_m)
+        } else {
+            aim_m.max(SMALL_SHARE * all_m)
+        };
         let mut sum_m = 0.0;
         let small = self.of_parts_m.iter().take_while(|amount_m| {
             sum_m += **amount_m;
@@ -294,11 +303,11 @@ impl Measure {
         });
         let small_m = highest(small.copied());
         let each_m = small_m.max(aim_m / self.of_parts_m.len().max(2) as f64);
-        let slopes_m = self.slopes_m.iter().zip(&self.amounts_m);
-        let panels = self.heads_m.iter().zip(slopes_m);
-        let excess = |(head_m, (slope_m, amount_m)): (&f64, (&f64, &f64))| {
+        let slopes = self.slope_shares.iter().zip(&self.amounts_m);
+        let panels = self.heads_m.iter().zip(slopes);
+        let excess = |(head_m, (share, amount_m)): (&f64, (&f64, &f64))| {
             let of_slope = if *amount_m > small_m {
-                slope_m / each_m
+                share * amount_m / each_m
             } else {
                 0.0
             };

@@ -169,6 +169,11 @@ impl System {
         densities
     }
 
+    /// Gives back the memory of the factors; nothing can be solved for after.
+    pub fn forget_factors(&mut self) {
+        self.factors = Vec::new();
+    }
+
     fn back_substitute(&self, right: MatMut<'_, f64>) {
         let size = self.size();
         let factors = MatRef::from_column_major_slice(&self.factors, size, size);
