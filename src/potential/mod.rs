@@ -1,6 +1,7 @@
 //! Harmonic functions in regions of any outline, with a proven bound on their
 //! error.
 
+mod assembly;
 mod batch;
 mod comparison;
 mod curve;
