@@ -48,7 +48,7 @@ def main():
     parser.add_argument("--sizes", nargs="+", type=float, default=[0.4, 0.2, 0.1],
                         help="growth of triangles with the distance from corners, coarse to fine")
     arguments = parser.parse_args()
-    plan = plans.read(arguments.plan)
+    plan = plans.read(pathlib.Path(arguments.plan))
     places, heads = known_heads(arguments.heads) if arguments.heads else (neighbours(arguments.plan), None)
     runs = []
     for size in arguments.sizes:
