@@ -2,7 +2,7 @@
 //!
 //! A map of 1000 × 1000 nodes with 20 wells, on one thread and on all cores;
 //! beside them the floor, one vectorised logarithm a node and well, and the
-//! same half-plane sum in numpy (`half_plane_numpy.py`), run in this session.
+//! same half-plane sum in numpy (`half_plane_numpy.py`), run along with it.
 //!
 //! Run: `cargo bench --bench kernels`. After criterion's own report it prints a
 //! table in Markdown. PYTHON names an interpreter that has numpy.
