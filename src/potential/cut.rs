@@ -18,7 +18,7 @@ const STRONG: f64 = 0.85;
 /// A smooth panel that misses its aim by more is cut in four.
 const QUARTERS: f64 = 100.0;
 
-/// A side whose density is made of few functions is cut here, from each end,
+/// A straight side is cut here, from each end,
 const MIDDLE_CUT: f64 = 0.35;
 
 /// and here beside strong corners,

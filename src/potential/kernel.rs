@@ -8,7 +8,8 @@
 //!
 //! summed over the m roots ωⱼ of one. Where all the roots are far from the
 //! panel its nodes count as points, nearer those of a finer rule; beside it the
-//! density's polynomial is integrated in closed form, so that nothing is lost right up to the panel.
+//! density's polynomial is integrated in closed form, so that nothing is lost right
+//! up to the panel.
 
 use std::f64::consts::{FRAC_1_PI, TAU};
 

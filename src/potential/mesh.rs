@@ -39,19 +39,18 @@ impl Stretch {
         let poles: Vec<_> = (poles.iter().copied())
             .chain(region.other_corners(side))
             .collect();
-        let poles = poles.as_slice();
-        let is_off_poles = cut_near_poles(whole, poles).len() == 1;
+        let off_poles = cut_near_poles(whole, &poles);
         if !Span::suits(region, side) {
-            let uncut = cut_near_poles(whole, poles);
             return Self {
-                panels: cut_beside_strong_corners(region, uncut),
+                panels: cut_beside_strong_corners(region, off_poles),
                 span: None,
             };
         }
+        let is_off_poles = off_poles.len() == 1;
         let gain = if is_off_poles { SPAN_GAIN } else { FREE_GAIN };
         let panels = cut_toward_corners(region, whole, gain).into_iter();
         let panels: Vec<_> = panels
-            .flat_map(|panel| cut_near_poles(panel, poles))
+            .flat_map(|panel| cut_near_poles(panel, &poles))
             .collect();
         let span = is_off_poles.then(|| Span::new(region, side, &panels, rule, target_m));
         Self { panels, span }

@@ -22,7 +22,9 @@ use super::region::Region;
 use super::system::{Densities, System, asked_by};
 
 /// Residuals between two checks exceed the larger of both at most by this: a
-/// parabola through three checks of a Legendre polynomial stays within 1.3.
+/// parabola through three checks of a Legendre polynomial stays within 1.3. Sides of
+/// few functions have fewer checks on each panel, but more than twice as many as
+/// unknowns.
 pub(super) const BETWEEN_CHECKS: f64 = 1.5;
 
 /// Share of the target that a panel's residual is to stay below.

@@ -5,7 +5,8 @@
 //! r^(jπ/α), or r^((j − ½)π/α) where head meets flux; those outside, which take
 //! up the same boundary values, as r^(jπ/(2π − α)), j = 1, 2, …. The density is
 //! the difference of their slopes and has one power less. With some polynomials
-//! the first of these powers span what the side needs; so a dozen unknowns do for a side that takes fifty nodes to integrate.
+//! the first of these powers span what the side needs; so a dozen or two unknowns do
+//! for a side that takes a hundred nodes to integrate.
 //!
 //! The functions are made orthonormal at the nodes, and those that others make
 //! up to a small part are left out. As many nodes ask the side's condition,
@@ -163,15 +164,15 @@ fn functions(
         };
         nodes.iter().map(at).collect()
     };
+    let power_of = |distance: fn(&[f64; 2]) -> f64, power: &f64| {
+        let at = |(ends, slope): &([f64; 2], f64)| distance(ends).powf(power - 1.0) * slope;
+        nodes.iter().map(at).collect()
+    };
     let [from_start, from_end] = powers;
-    let from_start = from_start.iter().map(|power| {
-        let at = |([distance, _], slope): &([f64; 2], f64)| distance.powf(power - 1.0) * slope;
-        nodes.iter().map(at).collect()
-    });
-    let from_end = from_end.iter().map(|power| {
-        let at = |([_, distance], slope): &([f64; 2], f64)| distance.powf(power - 1.0) * slope;
-        nodes.iter().map(at).collect()
-    });
+    let from_start = from_start
+        .iter()
+        .map(|power| power_of(|ends| ends[0], power));
+    let from_end = from_end.iter().map(|power| power_of(|ends| ends[1], power));
     let polynomials = (0..=wealth.degree).map(polynomial);
     polynomials.chain(from_start).chain(from_end).collect()
 }
